@@ -9,6 +9,10 @@ export const problemSchema = z.object({
   what: z.string(),
   where: z.string(),
   mend: z.string(),
+  /** HDU counted from 0, where the fault lies in one. */
+  extension: z.number().int().min(0).optional(),
+  /** Row counted from 1, where the fault lies in one. */
+  row: z.number().int().min(1).optional(),
 });
 export type Problem = z.infer<typeof problemSchema>;
 

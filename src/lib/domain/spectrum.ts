@@ -22,6 +22,8 @@ export interface RawFrame {
   midExposureJulianDateUtc: number | null;
   /** Geocentric ITRS position of the telescope, metres (FITS OBSGEO-X, -Y, -Z). */
   observatoryMetres: [number, number, number] | null;
+  /** True where the file gave no wavelength unit and ångström was read into it. */
+  wavelengthUnitAssumed?: boolean;
 }
 
 /** What one spectrum in a file says, in its own units and frame, in the file's own pixel order. */

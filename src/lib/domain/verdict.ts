@@ -1,0 +1,33 @@
+import { z } from 'zod';
+import { confidenceSchema } from './confidence';
+import { flagSchema } from './flag';
+
+export const VERDICT_KINDS = ['candidate', 'by hand', 'no redshift'] as const;
+export const verdictKindSchema = z.enum(VERDICT_KINDS);
+export type VerdictKind = z.infer<typeof verdictKindSchema>;
+
+const comment = z.string().trim().max(4000).default('');
+const flags = z.array(flagSchema).max(12).default([]);
+const redshift = z.coerce.number().min(-0.01).max(20);
+
+/** What a scientist decides on a spectrum. `candidate` is the place in the measurement's list, from 0. */
+export const verdictInputSchema = z.discriminatedUnion('kind', [
+  z.object({
+    kind: z.literal('candidate'),
+    candidate: z.coerce.number().int().min(0).max(31),
+    confidence: confidenceSchema.exclude(['none']),
+    flags,
+    comment,
+  }),
+  z.object({
+    kind: z.literal('by hand'),
+    redshift,
+    /** Known once the redshift was snapped to a fit. */
+    redshiftError: z.coerce.number().positive().max(1).nullable().default(null),
+    confidence: confidenceSchema.exclude(['none']),
+    flags,
+    comment,
+  }),
+  z.object({ kind: z.literal('no redshift'), flags, comment }),
+]);
+export type VerdictInput = z.infer<typeof verdictInputSchema>;

@@ -1,0 +1,19 @@
+import type { Handle } from '@sveltejs/kit';
+import { answerRefusal } from '$lib/api/problem-details';
+import { Refusal } from '$lib/domain/refusal';
+
+/** Ordinary bodies; spectra come through routes that stream and count for themselves. */
+const ORDINARY_BODY_BYTES = 1024 * 1024;
+const STREAMED = /^\/api\/v1\/nights\/[^/]+\/files$/;
+
+/** Refuses bodies over 1 MiB, and bodies of undeclared length, everywhere but on the upload routes. */
+export const capBody: Handle = ({ event, resolve }) => {
+  const { request, url } = event;
+  if (STREAMED.test(url.pathname) || !request.body) return resolve(event);
+  const declared = request.headers.get('content-length');
+  if (declared !== null && Number(declared) <= ORDINARY_BODY_BYTES) return resolve(event);
+  return answerRefusal(
+    new Refusal('too-large', 'A body here may have at most 1 MiB, and its length must be declared.', 'Send less.'),
+    url.pathname,
+  );
+};

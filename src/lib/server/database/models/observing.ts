@@ -1,0 +1,145 @@
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type Sequelize,
+} from 'sequelize';
+import type { Instrument as InstrumentDescription } from '$lib/domain/instrument';
+import type { Problem } from '$lib/domain/problem';
+import { idColumn } from './columns';
+
+export class InstrumentVersion extends Model<
+  InferAttributes<InstrumentVersion>,
+  InferCreationAttributes<InstrumentVersion>
+> {
+  declare id: string;
+  declare programmeId: string;
+  declare name: string;
+  declare version: number;
+  declare description: InstrumentDescription;
+}
+
+export class Night extends Model<InferAttributes<Night>, InferCreationAttributes<Night>> {
+  declare id: string;
+  declare programmeId: string;
+  declare instrumentId: string | null;
+  declare civilDate: string;
+  declare notes: string;
+  declare revision: CreationOptional<number>;
+  declare createdBy: string;
+  declare createdAt: CreationOptional<Date>;
+}
+
+export class SpectrumFile extends Model<InferAttributes<SpectrumFile>, InferCreationAttributes<SpectrumFile>> {
+  declare id: string;
+  declare programmeId: string;
+  declare sha256: string;
+  declare sizeBytes: number;
+  declare originalName: string;
+  declare instrumentId: string | null;
+  declare state: CreationOptional<'waiting' | 'read' | 'failed'>;
+  declare problems: Problem[];
+  declare tries: CreationOptional<number>;
+}
+
+export class NightFile extends Model<InferAttributes<NightFile>, InferCreationAttributes<NightFile>> {
+  declare nightId: string;
+  declare fileId: string;
+  declare name: string;
+}
+
+export class Target extends Model<InferAttributes<Target>, InferCreationAttributes<Target>> {
+  declare id: string;
+  declare programmeId: string;
+  declare name: string;
+  declare raDegrees: number | null;
+  declare decDegrees: number | null;
+  declare zone: number | null;
+}
+
+export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, InferCreationAttributes<SpectrumRecord>> {
+  declare id: string;
+  declare fileId: string;
+  declare targetId: string | null;
+  declare extension: number;
+  declare rowNumber: number;
+  declare name: string | null;
+  declare raDegrees: number | null;
+  declare decDegrees: number | null;
+  declare exposureSeconds: number | null;
+  declare pixelCount: number;
+  declare wavelengthMin: number;
+  declare wavelengthMax: number;
+  declare medianSignalToNoise: number | null;
+  declare header: Record<string, string | number | boolean>;
+  declare state: CreationOptional<'waiting' | 'measured' | 'failed'>;
+  declare problem: CreationOptional<Problem | null>;
+  declare tries: CreationOptional<number>;
+}
+
+export function defineObserving(sequelize: Sequelize): void {
+  const { STRING, TEXT, DATE, DATEONLY, DOUBLE, BIGINT, INTEGER, TINYINT, UUID, CHAR, JSON } = DataTypes;
+  InstrumentVersion.init(
+    { id: idColumn, programmeId: UUID, name: STRING(200), version: INTEGER, description: JSON },
+    { sequelize, tableName: 'instruments' },
+  );
+  Night.init(
+    {
+      id: idColumn,
+      programmeId: UUID,
+      instrumentId: UUID,
+      civilDate: DATEONLY,
+      notes: TEXT,
+      revision: BIGINT,
+      createdBy: UUID,
+      createdAt: DATE(6),
+    },
+    { sequelize, tableName: 'nights' },
+  );
+  SpectrumFile.init(
+    {
+      id: idColumn,
+      programmeId: UUID,
+      sha256: CHAR(64),
+      sizeBytes: BIGINT,
+      originalName: STRING(255),
+      instrumentId: UUID,
+      state: STRING(10),
+      problems: JSON,
+      tries: TINYINT,
+    },
+    { sequelize, tableName: 'files' },
+  );
+  NightFile.init(
+    { nightId: { type: UUID, primaryKey: true }, fileId: { type: UUID, primaryKey: true }, name: STRING(255) },
+    { sequelize, tableName: 'night_files' },
+  );
+  Target.init(
+    { id: idColumn, programmeId: UUID, name: STRING(200), raDegrees: DOUBLE, decDegrees: DOUBLE, zone: INTEGER },
+    { sequelize, tableName: 'targets' },
+  );
+  SpectrumRecord.init(
+    {
+      id: idColumn,
+      fileId: UUID,
+      targetId: UUID,
+      extension: INTEGER,
+      rowNumber: INTEGER,
+      name: STRING(200),
+      raDegrees: DOUBLE,
+      decDegrees: DOUBLE,
+      exposureSeconds: DOUBLE,
+      pixelCount: INTEGER,
+      wavelengthMin: DOUBLE,
+      wavelengthMax: DOUBLE,
+      medianSignalToNoise: DOUBLE,
+      header: JSON,
+      state: STRING(10),
+      problem: JSON,
+      tries: TINYINT,
+    },
+    { sequelize, tableName: 'spectra' },
+  );
+}
