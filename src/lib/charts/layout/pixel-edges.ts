@@ -1,0 +1,51 @@
+/**
+ * Where each pixel is drawn from and to: halfway to its neighbours, but never further than half the smaller of its two
+ * steps (times 1.01), so that a gap between detectors stays empty instead of being bridged by wide pixels.
+ * One pixel alone, or none, gets no width.
+ */
+export function pixelEdges(wavelength: Float64Array): { left: Float64Array; right: Float64Array } {
+  const count = wavelength.length;
+  const left = Float64Array.from(wavelength);
+  const right = Float64Array.from(wavelength);
+  if (count < 2) return { left, right };
+  for (let i = 0; i < count; i++) {
+    const before = i > 0 ? wavelength[i] - wavelength[i - 1] : Infinity;
+    const after = i < count - 1 ? wavelength[i + 1] - wavelength[i] : Infinity;
+    const most = Math.min(before, after) * 1.01;
+    left[i] -= Math.min(before, most) / 2;
+    right[i] += Math.min(after, most) / 2;
+  }
+  return { left, right };
+}
+
+/** First and one past the last pixel whose centres lie in [from, to], by bisection; empty where there are none. */
+export function pixelRange(wavelength: Float64Array, from: number, to: number): [number, number] {
+  return [firstAtLeast(wavelength, from), firstAbove(wavelength, to)];
+}
+
+/** The pixel whose centre is nearest; -1 without pixels. */
+export function nearestPixel(wavelength: Float64Array, place: number): number {
+  if (wavelength.length === 0) return -1;
+  const at = Math.min(wavelength.length - 1, firstAtLeast(wavelength, place));
+  return at > 0 && place - wavelength[at - 1] < wavelength[at] - place ? at - 1 : at;
+}
+
+function firstAtLeast(values: Float64Array, bound: number): number {
+  let [low, high] = [0, values.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (values[middle] < bound) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
+function firstAbove(values: Float64Array, bound: number): number {
+  let [low, high] = [0, values.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (values[middle] <= bound) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
