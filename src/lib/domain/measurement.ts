@@ -91,6 +91,5 @@ export type Measurement = z.infer<typeof measurementSchema>;
 
 /** One object of the output of `measure`: a measurement and where it came from, or an error. */
 export type MeasureOutput = { source: string; extension: number; row: number; name: string | null } & (
-  | Measurement
-  | { error: string }
+  Measurement | { error: string }
 );

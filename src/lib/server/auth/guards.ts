@@ -60,4 +60,3 @@ export function guardedAction<E extends RequestEvent, R>(access: Access, action:
     }
   });
 }
-

@@ -54,7 +54,11 @@ export function permit(actor: Actor | null, permission: Permission, programmeId:
   if (actor.scopes && !actor.scopes.has(scope)) {
     throw new Refusal('forbidden', `This token lacks the scope "${scope}".`, 'Make a token with that scope.');
   }
-  throw new Refusal('forbidden', `This needs the role ${roles.join(' or ')} in the programme.`, 'Ask a curator for it.');
+  throw new Refusal(
+    'forbidden',
+    `This needs the role ${roles.join(' or ')} in the programme.`,
+    'Ask a curator for it.',
+  );
 }
 
 /** Ids of the programmes in which the actor may do this. */

@@ -43,7 +43,10 @@ function sessions(): Lucia {
     const { port } = new URL(config().ORIGIN);
     lucia = new Lucia(adapter, {
       sessionExpiresIn: new TimeSpan(14, 'd'),
-      sessionCookie: { name: `__Host-farglow${port && `-${port}`}`, attributes: { sameSite: 'lax', secure: true, path: '/' } },
+      sessionCookie: {
+        name: `__Host-farglow${port && `-${port}`}`,
+        attributes: { sameSite: 'lax', secure: true, path: '/' },
+      },
     });
   }
   return lucia;

@@ -24,7 +24,9 @@ function migrator(sequelize: Sequelize): Umzug<Sequelize> {
           `CREATE TABLE IF NOT EXISTS migrations (name VARCHAR(100) NOT NULL PRIMARY KEY,
             applied_at DATETIME(6) NOT NULL DEFAULT UTC_TIMESTAMP(6)) ENGINE=InnoDB`,
         );
-        const rows = await sequelize.query<{ name: string }>('SELECT name FROM migrations', { type: QueryTypes.SELECT });
+        const rows = await sequelize.query<{ name: string }>('SELECT name FROM migrations', {
+          type: QueryTypes.SELECT,
+        });
         return rows.map((row) => row.name);
       },
       async logMigration({ name }) {
@@ -44,7 +46,8 @@ export async function migrate(): Promise<string[]> {
   return sequelize.transaction(async (transaction) => {
     const take = { type: QueryTypes.SELECT, transaction } as const;
     const [lock] = await sequelize.query<{ held: number }>("SELECT GET_LOCK('farglow-migrate', 120) AS held", take);
-    if (lock.held !== 1) throw new Error('Another process has been migrating for two minutes; try again when it is done.');
+    if (lock.held !== 1)
+      throw new Error('Another process has been migrating for two minutes; try again when it is done.');
     try {
       const applied = await migrator(sequelize).up();
       for (const { name } of applied) log.info({ migration: name }, 'migration applied');

@@ -17,7 +17,11 @@ export const refuseCrossSite: Handle = ({ event, resolve }) => {
     // Writes without any cookie on the API have nobody to borrow from: the guard answers 401 for them.
     if (request.headers.has('cookie') || !url.pathname.startsWith('/api/')) {
       return answerRefusal(
-        new Refusal('forbidden', `A write must come from ${config().ORIGIN}.`, 'Open Farglow at that address, or use a bearer token.'),
+        new Refusal(
+          'forbidden',
+          `A write must come from ${config().ORIGIN}.`,
+          'Open Farglow at that address, or use a bearer token.',
+        ),
         url.pathname,
       );
     }

@@ -1,0 +1,46 @@
+import type { Confidence } from './confidence';
+import type { Flag } from './flag';
+import type { Problem } from './problem';
+
+/** A whole picture of a night at one revision; sent as it is by the API and by server-sent events. */
+export interface NightSnapshot {
+  id: string;
+  civilDate: string;
+  notes: string;
+  revision: number;
+  programme: { id: string; slug: string; name: string; isDemo: boolean };
+  files: { total: number; waiting: number; read: number; failed: number };
+  spectra: { total: number; waiting: number; measured: number; failed: number };
+  confidence: Record<Confidence, number>;
+  /** True when nothing of the night waits for a worker. */
+  done: boolean;
+  problems: (Problem & { file: string; fileId: string })[];
+  maySubmit: boolean;
+  mayJudge: boolean;
+}
+
+/** One row of a night's table: the keys of `measure`, and where the spectrum came from. */
+export interface NightMeasurement {
+  spectrum: string;
+  source: string;
+  extension: number;
+  row: number;
+  name: string | null;
+  ra: number | null;
+  dec: number | null;
+  state: 'waiting' | 'measured' | 'failed';
+  medianSignalToNoise: number | null;
+  redshift: number | null;
+  redshiftError: number | null;
+  redshiftErrorMeasured: number | null;
+  redshiftSystemic: number | null;
+  secondRedshift: number | null;
+  probability: number | null;
+  confidence: Confidence | null;
+  objectClass: string | null;
+  fluxUnit: string | null;
+  flags: Flag[];
+  noiseFactor: number | null;
+  strongestLine: { line: string; signalToNoise: number } | null;
+  verdict: { redshift: number | null; confidence: string | null; by: string } | null;
+}

@@ -1,0 +1,73 @@
+import { QueryTypes } from 'sequelize';
+import type { Confidence } from '$lib/domain/confidence';
+import type { NightSnapshot } from '$lib/domain/night';
+import type { Problem } from '$lib/domain/problem';
+import { database } from '../connection';
+import { Programme } from '../models/people';
+
+type Counts = Pick<NightSnapshot, 'files' | 'spectra' | 'confidence'>;
+
+const select = { type: QueryTypes.SELECT } as const;
+const parsed = <T>(value: T | string): T => (typeof value === 'string' ? (JSON.parse(value) as T) : value);
+
+/** Latest measurement of a spectrum, by the order of identifiers. */
+export const LATEST_MEASUREMENT = `m.id = (SELECT MAX(x.id) FROM measurements x WHERE x.spectrum_id = s.id)`;
+
+export async function countNight(nightId: string): Promise<Counts> {
+  const replacements = { nightId };
+  const [files, spectra, words] = await Promise.all([
+    database().query<{ state: 'waiting' | 'read' | 'failed'; n: number | string }>(
+      `SELECT f.state, COUNT(*) AS n FROM night_files nf JOIN files f ON f.id = nf.file_id
+        WHERE nf.night_id = :nightId GROUP BY f.state`,
+      { replacements, ...select },
+    ),
+    database().query<{ state: 'waiting' | 'measured' | 'failed'; n: number | string }>(
+      `SELECT s.state, COUNT(*) AS n FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
+        WHERE nf.night_id = :nightId GROUP BY s.state`,
+      { replacements, ...select },
+    ),
+    database().query<{ confidence: Confidence; n: number | string }>(
+      `SELECT m.confidence, COUNT(*) AS n FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
+        JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+        WHERE nf.night_id = :nightId GROUP BY m.confidence`,
+      { replacements, ...select },
+    ),
+  ]);
+  const counts: Counts = {
+    files: { total: 0, waiting: 0, read: 0, failed: 0 },
+    spectra: { total: 0, waiting: 0, measured: 0, failed: 0 },
+    confidence: { secure: 0, probable: 0, ambiguous: 0, none: 0 },
+  };
+  for (const { state, n } of files) {
+    counts.files[state] = Number(n);
+    counts.files.total += Number(n);
+  }
+  for (const { state, n } of spectra) {
+    counts.spectra[state] = Number(n);
+    counts.spectra.total += Number(n);
+  }
+  for (const { confidence, n } of words) counts.confidence[confidence] = Number(n);
+  return counts;
+}
+
+/** What is wrong in a night's files and spectra, in the order of their arrival, at most 1,000. */
+export async function nightProblems(nightId: string): Promise<NightSnapshot['problems']> {
+  const rows = await database().query<{ fileId: string; file: string; problems: string | Problem[] }>(
+    `SELECT f.id AS fileId, nf.name AS file, f.problems FROM night_files nf JOIN files f ON f.id = nf.file_id
+      WHERE nf.night_id = :nightId AND JSON_LENGTH(f.problems) > 0
+     UNION ALL
+     SELECT f.id, nf.name, JSON_ARRAY(JSON_EXTRACT(s.problem, '$')) FROM night_files nf JOIN files f ON f.id = nf.file_id
+      JOIN spectra s ON s.file_id = f.id WHERE nf.night_id = :nightId AND s.state = 'failed'
+     LIMIT 1000`,
+    { replacements: { nightId }, ...select },
+  );
+  return rows.flatMap(({ fileId, file, problems }) =>
+    parsed<Problem[]>(problems).map((problem) => ({ ...problem, file, fileId })),
+  );
+}
+
+export async function programmeOfNight(programmeId: string): Promise<NightSnapshot['programme']> {
+  const programme = await Programme.findByPk(programmeId, { rejectOnEmpty: true });
+  const { id, slug, name, isDemo } = programme;
+  return { id, slug, name, isDemo: !!isDemo };
+}

@@ -1,0 +1,87 @@
+import { Readable } from 'node:stream';
+import type { ReadableStream as NodeReadableStream } from 'node:stream/web';
+import busboy from 'busboy';
+import { Refusal } from '$lib/domain/refusal';
+import type { Actor } from '../auth/permissions';
+import { admitToNight, receiveFile, type ReceivedFile } from './receive-file';
+
+/** More parts than this in one request are refused; a night may have any number of requests. */
+const FILES_PER_REQUEST = 5_000;
+
+export interface Upload {
+  files: ReceivedFile[];
+  /** Parts that were not taken, each with its reason; the others were. */
+  refused: { name: string; what: string; mend: string }[];
+}
+
+/**
+ * Streams the parts of a multipart body to storage, one after another. A part that is refused loses no other; where
+ * every part is, the first refusal is thrown, so that the whole answer is a 4xx.
+ */
+export async function receiveUpload(actor: Actor | null, nightId: string, request: Request): Promise<Upload> {
+  await admitToNight(actor, nightId);
+  const contentType = request.headers.get('content-type') ?? '';
+  if (!/^multipart\/form-data/i.test(contentType) || !request.body) {
+    throw new Refusal('unsupported', 'Files come as multipart/form-data.', 'Use a form, or curl -F file=@NAME.');
+  }
+  const body = Readable.fromWeb(request.body as unknown as NodeReadableStream);
+  const upload: Upload = { files: [], refused: [] };
+  let first: Refusal | undefined;
+
+  const take = async (name: string, stream: Readable) => {
+    try {
+      upload.files.push(await receiveFile(actor, nightId, { name, stream }));
+    } catch (error) {
+      if (!(error instanceof Refusal)) throw error;
+      first ??= error;
+      upload.refused.push({ name, what: error.what, mend: error.mend });
+    } finally {
+      stream.resume();
+    }
+  };
+
+  await parts(body, contentType, take);
+  if (upload.files.length === 0) {
+    throw first ?? new Refusal('invalid', 'The body has no file.', 'Send at least one part with a filename.', 'file');
+  }
+  return upload;
+}
+
+/** Calls `take` for each file part in turn; the body waits while one is written, so memory stays small. */
+function parts(
+  body: Readable,
+  contentType: string,
+  take: (name: string, stream: Readable) => Promise<void>,
+): Promise<void> {
+  return new Promise((resolve, reject) => {
+    let parser: ReturnType<typeof busboy>;
+    try {
+      const limits = { files: FILES_PER_REQUEST, fields: 100, parts: FILES_PER_REQUEST + 100 };
+      parser = busboy({ headers: { 'content-type': contentType }, limits, defParamCharset: 'utf8' });
+    } catch {
+      reject(new Refusal('unsupported', 'The multipart header has no boundary.', 'Let the client write it.'));
+      return;
+    }
+    let queue = Promise.resolve();
+    const fail = (error: unknown) => {
+      body.unpipe(parser);
+      body.resume();
+      reject(error);
+    };
+    parser.on('file', (_field, stream, { filename }) => {
+      queue = queue.then(() => take(filename ?? 'unnamed', stream));
+      queue.catch(fail);
+    });
+    parser.on('filesLimit', () =>
+      fail(new Refusal('too-large', `One request may bring ${FILES_PER_REQUEST} files.`, 'Send the rest in another.')),
+    );
+    parser.on('error', () =>
+      fail(new Refusal('invalid', 'The multipart body is broken or ends early.', 'Send it again.')),
+    );
+    parser.on('close', () => queue.then(resolve, reject));
+    body.on('error', () =>
+      fail(new Refusal('invalid', 'The connection broke before the body was whole.', 'Send it again.')),
+    );
+    body.pipe(parser);
+  });
+}

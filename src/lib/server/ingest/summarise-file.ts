@@ -1,0 +1,46 @@
+import { InputProblem, type Problem } from '$lib/domain/problem';
+import type { Instrument } from '$lib/domain/instrument';
+import type { Spectrum } from '$lib/domain/spectrum';
+import type { FileContent } from '$lib/domain/spectrum-summary';
+import { readSpectra } from '$lib/formats/read-spectra';
+import { toSpectrum } from '$lib/science/frames/to-spectrum';
+
+/** Median of flux / sigma over usable pixels; null where there is none or the file gives no variance. */
+function medianSignalToNoise(spectrum: Spectrum): number | null {
+  if (!spectrum.varianceKnown) return null;
+  const ratios = spectrum.flux
+    .map((flux, i) => (spectrum.mask[i] === 0 ? flux / Math.sqrt(spectrum.variance[i]) : NaN))
+    .filter(Number.isFinite)
+    .sort();
+  return ratios.length ? ratios[ratios.length >> 1] : null;
+}
+
+/** Reads a file's bytes into summaries of its spectra; what is wrong with one of them loses none of the others. */
+export function summariseFile(bytes: Uint8Array, fileName: string, instrument?: Instrument): FileContent {
+  const { spectra: raws, problems: found } = readSpectra(bytes, fileName, instrument);
+  const problems: Problem[] = [...found];
+  const spectra: FileContent['spectra'] = [];
+  for (const raw of raws) {
+    try {
+      const spectrum = toSpectrum(raw, instrument);
+      spectra.push({
+        extension: raw.extension,
+        row: raw.row,
+        name: raw.name,
+        raDegrees: raw.raDegrees,
+        decDegrees: raw.decDegrees,
+        exposureSeconds: raw.exposureSeconds,
+        pixelCount: spectrum.wavelength.length,
+        wavelengthMin: spectrum.wavelength[0],
+        wavelengthMax: spectrum.wavelength[spectrum.wavelength.length - 1],
+        medianSignalToNoise: medianSignalToNoise(spectrum),
+        header: raw.header,
+        warnings: [...raw.warnings, ...spectrum.warnings],
+      });
+    } catch (error) {
+      if (!(error instanceof InputProblem)) throw error;
+      problems.push(error.problem);
+    }
+  }
+  return { spectra, problems };
+}

@@ -1,0 +1,42 @@
+import type { Instrument } from '$lib/domain/instrument';
+import { InputProblem } from '$lib/domain/problem';
+import type { RawSpectrum } from '$lib/domain/spectrum';
+import { readSpectra } from '$lib/formats/read-spectra';
+import { withDerived } from '$lib/science/derive/with-derived';
+import { toSpectrum } from '$lib/science/frames/to-spectrum';
+import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
+import type { MeasureResult } from './measure-spectra';
+
+/** Measures the named rows of a file's bytes; an input at fault gives its problem in its place. */
+export function measureRows(
+  bytes: Uint8Array,
+  fileName: string,
+  rows: { extension: number; row: number }[],
+  instrument?: Instrument,
+): MeasureResult[] {
+  const { spectra } = readSpectra(bytes, fileName, instrument);
+  return rows.map(({ extension, row }) => {
+    try {
+      return { measurement: measureRaw(findRow(spectra, extension, row, fileName), instrument) };
+    } catch (error) {
+      if (error instanceof InputProblem) return { problem: error.problem };
+      throw error;
+    }
+  });
+}
+
+function measureRaw(raw: RawSpectrum, instrument?: Instrument) {
+  const spectrum = toSpectrum(raw, instrument);
+  return withDerived(measureSpectrum(spectrum), spectrum);
+}
+
+function findRow(spectra: RawSpectrum[], extension: number, row: number, fileName: string): RawSpectrum {
+  const raw = spectra.find((candidate) => candidate.extension === extension && candidate.row === row);
+  if (raw) return raw;
+  throw new InputProblem({
+    code: 'row-missing',
+    what: `HDU ${extension}, row ${row} is no longer read as a spectrum.`,
+    where: fileName,
+    mend: 'Submit the file again.',
+  });
+}

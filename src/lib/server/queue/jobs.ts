@@ -1,0 +1,12 @@
+import { z } from 'zod';
+
+/** Every job: its name and the schema of its payload, ids only. The worker has one handler for each. */
+export const JOBS = {
+  ingest: z.object({ fileId: z.uuid() }),
+  measure: z.object({ spectrumIds: z.array(z.uuid()).min(1) }),
+} as const;
+
+export type JobName = keyof typeof JOBS;
+export type JobPayload<N extends JobName> = z.infer<(typeof JOBS)[N]>;
+
+export const JOB_NAMES = Object.keys(JOBS) as JobName[];

@@ -1,0 +1,79 @@
+import { createHash, randomUUID } from 'node:crypto';
+import { access, constants, mkdir, open, readFile, rename, rm } from 'node:fs/promises';
+import { dirname, join } from 'node:path';
+import type { Readable } from 'node:stream';
+import { Refusal } from '$lib/domain/refusal';
+import type { Storage } from './storage';
+
+/** Objects as files `objects/ab/cd/<sha-256>` of one folder. */
+export class FolderStorage implements Storage {
+  constructor(private readonly folder: string) {}
+
+  private path(sha256: string): string {
+    if (!/^[0-9a-f]{64}$/.test(sha256)) throw new Error(`not a SHA-256: ${sha256}`);
+    return join(this.folder, 'objects', sha256.slice(0, 2), sha256.slice(2, 4), sha256);
+  }
+
+  async put(stream: Readable, maxBytes: number): Promise<{ sha256: string; sizeBytes: number }> {
+    const incoming = join(this.folder, 'incoming');
+    await mkdir(incoming, { recursive: true });
+    const temporary = join(incoming, randomUUID());
+    const hash = createHash('sha256');
+    let sizeBytes = 0;
+    const file = await open(temporary, 'wx', 0o640);
+    try {
+      try {
+        for await (const chunk of stream as AsyncIterable<Buffer>) {
+          sizeBytes += chunk.length;
+          if (sizeBytes > maxBytes) {
+            throw new Refusal(
+              'too-large',
+              `The file is larger than the ${Math.floor(maxBytes / 1024 / 1024)} MiB allowed.`,
+              'Split it, or ask an administrator to raise MAX_FILE_BYTES.',
+            );
+          }
+          hash.update(chunk);
+          await file.writeFile(chunk);
+        }
+        await file.sync();
+      } finally {
+        await file.close();
+      }
+      const sha256 = hash.digest('hex');
+      const path = this.path(sha256);
+      await mkdir(dirname(path), { recursive: true });
+      // Same name means same bytes: a second writer replaces the file by its equal, atomically.
+      await rename(temporary, path);
+      await syncFolder(dirname(path));
+      return { sha256, sizeBytes };
+    } catch (error) {
+      await rm(temporary, { force: true });
+      throw error;
+    }
+  }
+
+  async read(sha256: string): Promise<Uint8Array> {
+    return readFile(this.path(sha256));
+  }
+
+  async has(sha256: string): Promise<boolean> {
+    return access(this.path(sha256)).then(
+      () => true,
+      () => false,
+    );
+  }
+
+  async check(): Promise<void> {
+    await mkdir(this.folder, { recursive: true });
+    await access(this.folder, constants.W_OK);
+  }
+}
+
+async function syncFolder(folder: string): Promise<void> {
+  const handle = await open(folder, 'r');
+  try {
+    await handle.sync();
+  } finally {
+    await handle.close();
+  }
+}
