@@ -31,11 +31,12 @@ export function keptSecret(dataDir, name) {
   return readFileSync(path, 'utf8').trim();
 }
 
-function launch(command, args, logPath) {
+function launch(command, args, logPath, input) {
   const out = openSync(logPath, 'a');
   // A group of its own: Ctrl-C in the terminal reaches us alone, and we stop the servers in order.
-  const child = spawn(command, args, { stdio: ['ignore', out, out], detached: true });
+  const child = spawn(command, args, { stdio: [input === undefined ? 'ignore' : 'pipe', out, out], detached: true });
   closeSync(out);
+  child.stdin?.end(input);
   child.failure = new Promise((resolve) => {
     child.once('error', (error) => resolve(error.message));
     child.once('exit', (code, signal) => resolve(`ended with ${signal ?? code}`));
@@ -75,7 +76,13 @@ async function startMariadb(dataDir, logDir, socketDir) {
   }
   const port = await freePort();
   const socket = join(socketDir, 'mariadb.sock');
-  const server = ['--no-defaults', `--datadir=${dir}`, `--socket=${socket}`, '--bind-address=127.0.0.1', `--port=${port}`];
+  const server = [
+    '--no-defaults',
+    `--datadir=${dir}`,
+    `--socket=${socket}`,
+    '--bind-address=127.0.0.1',
+    `--port=${port}`,
+  ];
   const tuning = ['--innodb-buffer-pool-size=256M', '--max-connections=200', '--character-set-server=utf8mb4'];
   const pid = [`--pid-file=${join(socketDir, 'mariadb.pid')}`, '--skip-name-resolve', '--max-allowed-packet=64M'];
   const child = launch('mariadbd', [...server, ...tuning, ...pid, ...asRoot], logPath);
@@ -101,9 +108,17 @@ async function startRedis(dataDir, logDir) {
   const password = keptSecret(dataDir, 'redis');
   const port = await freePort();
   const logPath = join(logDir, 'redis.log');
-  const address = ['--bind', '127.0.0.1', '--port', String(port), '--requirepass', password];
-  const keeping = ['--dir', dir, '--appendonly', 'yes', '--maxmemory-policy', 'noeviction', '--daemonize', 'no'];
-  const child = launch('redis-server', [...address, ...keeping], logPath);
+  // By standard input, so that the password stands in no list of processes.
+  const settings = [
+    'bind 127.0.0.1',
+    `port ${port}`,
+    `requirepass ${password}`,
+    `dir "${dir}"`,
+    'appendonly yes',
+    'maxmemory-policy noeviction',
+    'daemonize no',
+  ];
+  const child = launch('redis-server', ['-'], logPath, settings.join('\n'));
   await until('Redis', child, logPath, () =>
     run('redis-cli', ['-p', String(port), 'ping'], { env: { ...process.env, REDISCLI_AUTH: password } }).then(
       ({ stdout }) => stdout.includes('PONG'),

@@ -15,7 +15,8 @@ const headers: Handle = async ({ event, resolve }) => {
   response.headers.set('referrer-policy', 'same-origin');
   response.headers.set('x-frame-options', 'DENY');
   response.headers.set('cross-origin-opener-policy', 'same-origin');
-  if (event.locals.actor && !response.headers.has('cache-control')) response.headers.set('cache-control', 'private, no-cache');
+  if (event.locals.actor && !response.headers.has('cache-control'))
+    response.headers.set('cache-control', 'private, no-cache');
   return response;
 };
 

@@ -3,16 +3,7 @@ const lib = '^src/lib/';
 const server = `${lib}server/`;
 const usecases = ['ingest', 'measure', 'review', 'release', 'query', 'accounts', 'programmes'];
 const infrastructure = ['database', 'queue', 'auth', 'storage', 'mail', 'identifiers', 'audit', 'config', 'log'];
-const science = [
-  'constants',
-  'cosmology',
-  'frames',
-  'simulate',
-  'measure',
-  'derive',
-  'review',
-  'release',
-];
+const science = ['constants', 'cosmology', 'frames', 'simulate', 'measure', 'derive', 'review', 'release'];
 const inLib = (...names) => `${lib}(?:${names.join('|')})/`;
 const inServer = (names) => `${server}(?:${names.join('|')})/`;
 const tests = '\\.test\\.ts$';
@@ -29,14 +20,22 @@ const packagesOnly = (name, from, allowed) => ({
   name,
   severity: 'error',
   from: { path: from, pathNot: tests },
-  to: { path: allowed.length ? '(?:node_modules/)' : 'node_modules/', pathNot: allowed.map((p) => `node_modules/${p}/`).join('|') || '^$' },
+  to: {
+    path: allowed.length ? '(?:node_modules/)' : 'node_modules/',
+    pathNot: allowed.map((p) => `node_modules/${p}/`).join('|') || '^$',
+  },
 });
 
 /** @type {import('dependency-cruiser').IConfiguration} */
 module.exports = {
   forbidden: [
     { name: 'no-cycles', severity: 'error', from: {}, to: { circular: true } },
-    { name: 'nothing-imports-tests', severity: 'error', from: { pathNot: `^tests/|${tests}` }, to: { path: `^tests/|${tests}` } },
+    {
+      name: 'nothing-imports-tests',
+      severity: 'error',
+      from: { pathNot: `^tests/|${tests}` },
+      to: { path: `^tests/|${tests}` },
+    },
     {
       name: 'every-import-resolves',
       severity: 'error',
@@ -49,7 +48,11 @@ module.exports = {
     only('formats', inLib('formats'), inLib('domain', 'api', 'formats')),
     only('adql', inLib('adql'), inLib('domain', 'api', 'adql')),
     ...science.map((name, i) =>
-      only(`science-${name}`, `${lib}science/${name}/`, `${lib}(?:domain|science/(?:${science.slice(0, i + 1).join('|')}))/`),
+      only(
+        `science-${name}`,
+        `${lib}science/${name}/`,
+        `${lib}(?:domain|science/(?:${science.slice(0, i + 1).join('|')}))/`,
+      ),
     ),
     {
       name: 'science-is-pure',
@@ -80,7 +83,11 @@ module.exports = {
     },
     only('worker', '^worker/', `^worker/|${inLib('server', 'science', 'formats', 'domain', 'api')}`),
     only('commands', inLib('commands'), inLib('commands', 'server', 'science', 'formats', 'domain', 'api')),
-    only('browser-parts', inLib('charts', 'keys', 'ui'), inLib('charts', 'keys', 'ui', 'domain', 'api', 'science', 'formats')),
+    only(
+      'browser-parts',
+      inLib('charts', 'keys', 'ui'),
+      inLib('charts', 'keys', 'ui', 'domain', 'api', 'science', 'formats'),
+    ),
     only(
       'pages',
       '^src/routes/.*(?:\\.svelte|\\+page\\.ts|\\+layout\\.ts|\\.svelte\\.ts)$',
