@@ -1,0 +1,66 @@
+/**
+ * Rest wavelengths the simulator puts lines at, vacuum ångström. Kept apart from the engine's line list on purpose, so that an error
+ * there shows as a bias here. Computed from NIST ASD energy levels (as in tests/reference/data/rest-wavelengths.json); hydrogen
+ * H-alpha to H-delta are the emission centroids usually tabulated (air 6562.80, 4861.325, 4340.46, 4101.73); [S III], Fe II and the Paschen
+ * lines beyond delta are from memory of the NIST ASD.
+ */
+export const EMISSION_WAVELENGTHS = {
+  'Lyman-alpha 1216': 1215.67,
+  'N V 1239': 1238.821,
+  'N V 1243': 1242.804,
+  'O I 1304': 1304.46,
+  'Si IV 1394': 1393.755,
+  'Si IV 1403': 1402.77,
+  'C IV 1548': 1548.187,
+  'C IV 1551': 1550.772,
+  'He II 1640': 1640.42,
+  'O III] 1666': 1666.15,
+  'Al III 1857': 1857.4,
+  'Si III] 1892': 1892.03,
+  '[C III] 1907': 1906.683,
+  'C III] 1909': 1908.734,
+  'Mg II 2796': 2796.352,
+  'Mg II 2804': 2803.531,
+  '[Ne V] 3347': 3346.783,
+  '[Ne V] 3427': 3426.864,
+  '[O II] 3727': 3727.092,
+  '[O II] 3730': 3729.875,
+  'H-eta 3836': 3836.479,
+  '[Ne III] 3870': 3869.861,
+  'H-zeta 3890': 3890.158,
+  '[Ne III] 3969': 3968.594,
+  'H-epsilon 3971': 3971.202,
+  'H-delta 4103': 4102.89,
+  'H-gamma 4342': 4341.68,
+  '[O III] 4364': 4364.436,
+  'He I 4473': 4472.729,
+  'He II 4687': 4686.866,
+  'H-beta 4863': 4862.68,
+  '[O III] 4960': 4960.295,
+  '[O III] 5008': 5008.24,
+  '[N I] 5201': 5201.0,
+  'He I 5877': 5877.243,
+  '[O I] 6302': 6302.046,
+  '[O I] 6366': 6365.536,
+  '[N II] 6550': 6549.861,
+  'H-alpha 6565': 6564.61,
+  '[N II] 6585': 6585.273,
+  'He I 6680': 6679.996,
+  '[S II] 6718': 6718.295,
+  '[S II] 6733': 6732.674,
+  'He I 7067': 7067.125,
+  '[Ar III] 7138': 7137.759,
+  '[O II] 7322': 7322.006,
+  '[O II] 7333': 7332.755,
+  '[S III] 9071': 9071.1,
+  '[S III] 9533': 9533.2,
+  'Paschen-delta 10052': 10052.12,
+  'He I 10833': 10833.31,
+  'Paschen-gamma 10941': 10941.08,
+  'Paschen-beta 12822': 12821.58,
+  'Paschen-alpha 18756': 18756.1,
+} as const;
+
+export type EmissionName = keyof typeof EMISSION_WAVELENGTHS;
+/** Strength of lines relative to H-beta or another stated line. */
+export type Strengths = Partial<Record<EmissionName, number>>;
