@@ -85,6 +85,16 @@ describe('fluxUnitPieces', () => {
   ])('sets %s as %s', (unit, text) => {
     expect(fluxUnitText(unit)).toBe(text);
   });
+  it("joins an axis's power of ten with the unit's own", () => {
+    const text = (unit: string | null, exponent: number) =>
+      fluxUnitPieces(unit, exponent)
+        .map((piece) => piece.text)
+        .join('');
+    expect(text('1e-17 erg', 2)).toBe('10\u221215 erg');
+    expect(text('1e-17 erg', 17)).toBe('erg');
+    expect(text('erg', -18)).toBe('10\u221218 erg');
+    expect(text(null, 6)).toBe('106');
+  });
   it('marks exponents as raised', () => {
     expect(fluxUnitPieces('Jy s-1')).toEqual([
       { text: 'Jy', raised: false },
