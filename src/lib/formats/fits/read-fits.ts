@@ -1,0 +1,78 @@
+import type { Instrument } from '$lib/domain/instrument';
+import type { Problem } from '$lib/domain/problem';
+import type { RawSpectrum } from '$lib/domain/spectrum';
+import type { Table } from '../columns/table';
+import { tableSpectra } from '../columns/table-spectra';
+import { collectProblem, problemAt } from '../place';
+import { imageSpectra } from './image-spectra';
+import { readHdus, type Hdu } from './read-hdus';
+import { readTable } from './read-table';
+
+function isWanted(hdu: Hdu, instrument?: Instrument): boolean {
+  const wanted = instrument?.columns?.extension;
+  if (wanted === undefined) return true;
+  if (typeof wanted === 'number') return hdu.extension === wanted;
+  return hdu.name.toLowerCase() === wanted.toLowerCase();
+}
+
+function compressed(hdu: Hdu, file: string): Problem {
+  const tool = hdu.kind === 'compressed image' ? 'image' : 'table';
+  return problemAt(
+    { file, extension: hdu.extension },
+    'fits-tile-compressed',
+    `This ${tool} is tile-compressed, a form that is not read here.`,
+    'Unpack it first (any FITS library writes it back without compression); gzip of the whole file is read.',
+  ).problem;
+}
+
+/**
+ * Reads every spectrum of a FITS file (FITS 4.0): image HDUs and tables. Faults of one HDU or row are added to
+ * `problems`; HDUs that hold no spectra are passed over when others do, and explained when none does.
+ */
+export function readFits(
+  bytes: Uint8Array,
+  file: string,
+  instrument: Instrument | undefined,
+  problems: Problem[],
+): RawSpectrum[] {
+  const hdus = readHdus(bytes, file, problems);
+  const wanted = hdus.filter((hdu) => isWanted(hdu, instrument));
+  const notSpectra: Problem[] = [];
+  const tables: Table[] = [];
+  const spectra: RawSpectrum[] = [];
+  for (const hdu of wanted) {
+    if (hdu.kind === 'compressed image' || hdu.kind === 'compressed table') notSpectra.push(compressed(hdu, file));
+    if (hdu.kind !== 'binary table' && hdu.kind !== 'ascii table') continue;
+    const table = collectProblem(problems, () => readTable(hdu, file));
+    if (!table) continue;
+    tables.push(table);
+    const read = collectProblem(problems, () => tableSpectra(table, file, instrument, problems));
+    if (read) spectra.push(...read.spectra);
+    if (read?.notSpectra) notSpectra.push(read.notSpectra);
+  }
+  // An error or mask image stands beside the one that the description names, so images are filtered by their flux only.
+  const images = imageSpectra(hdus, tables, file, instrument, problems);
+  spectra.push(...images.spectra.filter((spectrum) => wanted.some((hdu) => hdu.extension === spectrum.extension)));
+  notSpectra.push(...images.notSpectra);
+  spectra.sort((a, b) => a.extension - b.extension || a.row - b.row);
+  if (spectra.length === 0 && problems.length === 0) problems.push(...notSpectra);
+  if (spectra.length === 0 && problems.length === 0) problems.push(nothingThere(hdus, wanted, file, instrument));
+  return spectra;
+}
+
+function nothingThere(hdus: Hdu[], wanted: Hdu[], file: string, instrument?: Instrument): Problem {
+  if (wanted.length === 0) {
+    return problemAt(
+      { file },
+      'extension-missing',
+      `There is no HDU '${String(instrument?.columns?.extension)}'; the file has ${hdus.map((hdu) => hdu.name || hdu.extension).join(', ')}.`,
+      'Correct `columns.extension` in the instrument description.',
+    ).problem;
+  }
+  return problemAt(
+    { file },
+    'fits-without-spectra',
+    'None of its HDUs holds a spectrum.',
+    'Hand in 1-D spectra as images or tables.',
+  ).problem;
+}
