@@ -36,7 +36,7 @@ export async function measureSpectra(spectrumIds: string[], jobId: string, measu
       if (tries > TRIES) throw new Error('set aside after three tries');
       const measured = await measure(
         file,
-        group.map(({ extension, rowNumber }) => ({ extension, row: rowNumber })),
+        group.map(({ extension, rowIndex }) => ({ extension, row: rowIndex })),
       );
       group.forEach(({ id }, i) => results.set(id, measured[i]));
     } catch (error) {

@@ -64,7 +64,7 @@ export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, Infer
   declare fileId: string;
   declare targetId: string | null;
   declare extension: number;
-  declare rowNumber: number;
+  declare rowIndex: number;
   declare name: string | null;
   declare raDegrees: number | null;
   declare decDegrees: number | null;
@@ -126,7 +126,7 @@ export function defineObserving(sequelize: Sequelize): void {
       fileId: UUID,
       targetId: UUID,
       extension: INTEGER,
-      rowNumber: INTEGER,
+      rowIndex: INTEGER,
       name: STRING(200),
       raDegrees: DOUBLE,
       decDegrees: DOUBLE,

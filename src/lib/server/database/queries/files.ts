@@ -72,13 +72,13 @@ export async function storeFileContent(
     const targetId = await targetOf(file.programmeId, summary, file.originalName, transaction);
     const { extension, row, header, warnings, ...rest } = summary;
     const [spectrum] = await SpectrumRecord.findOrCreate({
-      where: { fileId: file.id, extension, rowNumber: row },
+      where: { fileId: file.id, extension, rowIndex: row },
       defaults: {
         ...rest,
         fileId: file.id,
         targetId,
         extension,
-        rowNumber: row,
+        rowIndex: row,
         header: { ...header, ...(warnings.length && { 'Farglow warnings': warnings.join('; ') }) },
       } as never,
       transaction,

@@ -11,7 +11,7 @@ export interface WaitingSpectrum {
   id: string;
   fileId: string;
   extension: number;
-  rowNumber: number;
+  rowIndex: number;
   sha256: string;
   originalName: string;
   instrument: Instrument | null;
@@ -20,10 +20,10 @@ export interface WaitingSpectrum {
 /** Of these spectra, those not measured or set aside yet, in order of file and row. */
 export async function findWaiting(ids: string[]): Promise<WaitingSpectrum[]> {
   const rows = await database().query<WaitingSpectrum>(
-    `SELECT s.id, s.file_id AS fileId, s.extension, s.row_number AS rowNumber, f.sha256, f.original_name AS originalName,
+    `SELECT s.id, s.file_id AS fileId, s.extension, s.row_index AS rowIndex, f.sha256, f.original_name AS originalName,
         i.description AS instrument
       FROM spectra s JOIN files f ON f.id = s.file_id LEFT JOIN instruments i ON i.id = f.instrument_id
-      WHERE s.id IN (:ids) AND s.state = 'waiting' ORDER BY f.id, s.extension, s.row_number`,
+      WHERE s.id IN (:ids) AND s.state = 'waiting' ORDER BY f.id, s.extension, s.row_index`,
     { replacements: { ids }, type: QueryTypes.SELECT },
   );
   return rows.map((row) => ({

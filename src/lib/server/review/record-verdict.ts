@@ -1,0 +1,57 @@
+import { Refusal } from '$lib/domain/refusal';
+import type { VerdictInput } from '$lib/domain/verdict';
+import { permit, type Actor } from '../auth/permissions';
+import { inTransaction } from '../database/in-transaction';
+import { findReviewed, type ReviewedSpectrum } from '../database/queries/reviewed-spectrum';
+import { appendVerdict, lockSpectrum, standingVerdict, type NewVerdict } from '../database/queries/verdicts';
+
+/** The redshift a verdict stands for, from the candidate it names or as set by hand. */
+function decided(input: VerdictInput, { measurement, measurementId }: ReviewedSpectrum) {
+  const common = { measurementId, flags: input.flags, comment: input.comment };
+  if (input.kind === 'no redshift') {
+    return { ...common, kind: input.kind, redshift: null, redshiftError: null, candidatePlace: null, confidence: null };
+  }
+  if (input.kind === 'by hand') {
+    const { kind, redshift, redshiftError, confidence } = input;
+    return { ...common, kind, redshift, redshiftError, candidatePlace: null, confidence };
+  }
+  const candidate = measurement.candidates[input.candidate];
+  if (!candidate) {
+    throw new Refusal(
+      'conflict',
+      'The spectrum was measured again and has no such candidate now.',
+      'Look at it again.',
+    );
+  }
+  const { redshift, redshiftError } = candidate;
+  const { kind, confidence, candidate: candidatePlace } = input;
+  return { ...common, kind, redshift, redshiftError, candidatePlace, confidence };
+}
+
+/**
+ * Appends a verdict of the asker on a spectrum. A verdict of theirs that stands is superseded, never changed. The
+ * spectrum's row is locked meanwhile, so that of two tabs at once one supersedes the other.
+ */
+export async function recordVerdict(
+  actor: Actor | null,
+  spectrumId: string,
+  input: VerdictInput,
+): Promise<{ verdictId: string }> {
+  const spectrum = await findReviewed(spectrumId);
+  if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
+  const { userId } = permit(actor, 'spectrum.judge', spectrum.programmeId);
+  if (input.flags.includes('other') && !input.comment) {
+    throw new Refusal(
+      'invalid',
+      'The flag "other" needs a comment that says what.',
+      'Write it, or take the flag off.',
+      'comment',
+    );
+  }
+  return inTransaction(async (transaction) => {
+    await lockSpectrum(spectrumId, transaction);
+    const before = await standingVerdict(spectrumId, userId, transaction);
+    const verdict: NewVerdict = { ...decided(input, spectrum), spectrumId, userId, supersedes: before?.id ?? null };
+    return { verdictId: await appendVerdict(verdict, transaction) };
+  });
+}
