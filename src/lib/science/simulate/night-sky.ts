@@ -1,17 +1,10 @@
+import { airToVacuum } from '$lib/science/frames/air-vacuum';
 import { lsfSigmaAt, pixelAt, type DetectorGrid } from './detector-grid';
 import { normalCumulative } from './normal-distribution';
 import { INFRARED_SKY_LINES_VACUUM, OPTICAL_SKY_LINES_AIR, TELLURIC_BANDS } from './night-sky-lines';
 
-/** Air to vacuum by Morton (2000, ApJS 130, 403): n from the vacuum wavelength, close enough from the air one (below 1e-4 Å). */
-function vacuumFromAir(air: number): number {
-  const s = (1e4 / air) ** 2;
-  const vacuum = air * (1 + 8.34254e-5 + 2.406147e-2 / (130 - s) + 1.5998e-4 / (38.9 - s));
-  const again = (1e4 / vacuum) ** 2;
-  return air * (1 + 8.34254e-5 + 2.406147e-2 / (130 - again) + 1.5998e-4 / (38.9 - again));
-}
-
 const SKY_LINES = [
-  ...OPTICAL_SKY_LINES_AIR.map(([air, brightness]): [number, number] => [vacuumFromAir(air), brightness]),
+  ...OPTICAL_SKY_LINES_AIR.map(([air, brightness]): [number, number] => [airToVacuum(air), brightness]),
   ...INFRARED_SKY_LINES_VACUUM.map(([vacuum, brightness]): [number, number] => [vacuum, brightness]),
 ];
 

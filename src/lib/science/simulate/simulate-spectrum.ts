@@ -2,6 +2,7 @@ import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import { MASK, type Spectrum } from '$lib/domain/spectrum';
 import { describeTruth } from './describe-truth';
 import { layOutPixels, type DetectorGrid } from './detector-grid';
+import { fillArmGaps } from './fill-arm-gaps';
 import { addCosmicRays, drawBadRuns, layBackground, skyResidual } from './detector-noise';
 import { blendFeatures, featureSignalToNoise } from './line-signal';
 import { telluricOnPixels } from './night-sky';
@@ -23,12 +24,10 @@ function brightness(object: PlacedObject, grid: DetectorGrid, variance: Float64A
   return median > 0 ? wanted / median : 0;
 }
 
-/** Edges shared by neighbouring pixels; across a gap the right-hand pixel reaches back and is marked unusable by the caller. */
-function sharedEdges(grid: DetectorGrid): Float64Array {
-  const edges = new Float64Array(grid.centre.length + 1);
-  edges[0] = grid.lower[0];
-  for (let i = 0; i < grid.centre.length; i++) edges[i + 1] = grid.upper[i];
-  return edges;
+/** Gives fillers the value of the last pixel before them. */
+function nearestKnown(values: Float64Array): Float64Array {
+  for (let i = 1; i < values.length; i++) if (Number.isNaN(values[i])) values[i] = values[i - 1];
+  return values;
 }
 
 /**
@@ -84,29 +83,25 @@ export function simulateSpectrum(recipe: Recipe, seed: number): { spectrum: Spec
   const read = noise.resampled
     ? resampleArms(declaredLsf, flux, trueVariance, background.sky, random)
     : { grid: declaredLsf, flux, variance: trueVariance, sky: background.sky };
-  const mask = new Uint16Array(read.flux.length);
-  const declared = new Float64Array(read.flux.length);
+  const { wavelength, edges, source } = fillArmGaps(read.grid);
+  const mask = new Uint16Array(source.length);
+  const pick = (values: Float64Array, missing: number) =>
+    Float64Array.from(source, (i) => (i < 0 ? missing : values[i]));
+  const declared = pick(read.variance, Infinity);
   for (let i = 0; i < mask.length; i++) {
-    declared[i] = read.variance[i] * noise.declaredErrorFactor ** 2;
-    if (!Number.isFinite(declared[i])) {
-      declared[i] = Infinity;
-      mask[i] |= MASK.noVariance;
-    }
-    if (i > 0 && read.grid.arm[i] !== read.grid.arm[i - 1]) {
-      declared[i] = Infinity;
-      mask[i] |= MASK.edge;
-    }
+    declared[i] = Number.isFinite(declared[i]) ? declared[i] * noise.declaredErrorFactor ** 2 : Infinity;
+    if (declared[i] === Infinity) mask[i] |= source[i] < 0 ? MASK.notFinite | MASK.noVariance : MASK.noVariance;
   }
   const spectrum: Spectrum = {
     name: recipe.name,
-    wavelength: read.grid.centre,
-    edges: sharedEdges(read.grid),
-    flux: read.flux,
+    wavelength,
+    edges,
+    flux: pick(read.flux, 0),
     variance: declared,
     varianceKnown: true,
-    sky: noise.skyLines > 0 ? read.sky : null,
+    sky: noise.skyLines > 0 ? pick(read.sky, Number.NaN) : null,
     mask,
-    lsfSigma: read.grid.lsfSigma,
+    lsfSigma: nearestKnown(pick(read.grid.lsfSigma, Number.NaN)),
     lsfSource: 'instrument',
     observerFactor: 1 / factor,
     barycentricKms: recipe.barycentricKms,
