@@ -68,7 +68,7 @@ module.exports = {
         `${server}(?:${[name, ...infrastructure].join('|')})/|${inLib('domain', 'api', 'formats', 'science', 'adql')}`,
       ),
     ),
-    only('infrastructure', inServer(infrastructure), `${inServer(infrastructure)}|${inLib('domain')}`),
+    only('infrastructure', inServer(infrastructure), `${inServer(infrastructure)}|${inLib('domain', 'api')}`),
     {
       name: 'only-database-sees-sequelize',
       severity: 'error',
@@ -103,6 +103,7 @@ module.exports = {
     doNotFollow: { path: 'node_modules' },
     exclude: { path: '^\\.svelte-kit|^build' },
     tsConfig: { fileName: 'tsconfig.json' },
+    webpackConfig: { fileName: 'tests/architecture/resolve.cjs' },
     tsPreCompilationDeps: true,
     extraExtensionsToScan: [],
     enhancedResolveOptions: { exportsFields: ['exports'], conditionNames: ['svelte', 'import', 'node', 'default'] },

@@ -1,4 +1,4 @@
-import { Sequelize } from 'sequelize';
+import { Sequelize, Transaction } from 'sequelize';
 import { config } from '../config/config';
 import { log } from '../log/log';
 import { defineModels } from './models/models';
@@ -16,7 +16,7 @@ export function database(): Sequelize {
     benchmark: true,
     pool: { max: config().DATABASE_POOL, min: 0, idle: 10_000, acquire: 15_000 },
     define: { timestamps: false, underscored: true, freezeTableName: true },
-    isolationLevel: Sequelize.Transaction.ISOLATION_LEVELS.READ_COMMITTED,
+    isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED,
     dialectOptions: {
       connectTimeout: 5_000,
       initSql: ["SET SESSION sql_mode = 'STRICT_ALL_TABLES,NO_ENGINE_SUBSTITUTION,ERROR_FOR_DIVISION_BY_ZERO'"],

@@ -20,7 +20,6 @@ export interface ReceivedFile {
 /** A name for people: no folders, no control characters, at most 255 characters. */
 function cleanName(name: string): string {
   const last = name.split(/[\\/]/).pop() ?? '';
-  // eslint-disable-next-line no-control-regex -- control characters are what is taken out
   return last.replace(/[\u0000-\u001f\u007f]/g, '').slice(-255) || 'unnamed';
 }
 

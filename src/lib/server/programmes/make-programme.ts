@@ -1,7 +1,7 @@
 import type { Instrument } from '$lib/domain/instrument';
 import { recordEvent } from '../audit/record-event';
 import { inTransaction } from '../database/in-transaction';
-import { insertInstrument, insertProgramme } from '../database/queries/programmes';
+import { insertInstrument, insertProgramme } from '../database/queries/new-programme';
 
 export interface NewProgramme {
   slug: string;

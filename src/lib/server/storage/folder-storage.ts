@@ -3,10 +3,10 @@ import { access, constants, mkdir, open, readFile, rename, rm } from 'node:fs/pr
 import { dirname, join } from 'node:path';
 import type { Readable } from 'node:stream';
 import { Refusal } from '$lib/domain/refusal';
-import type { Storage } from './storage';
+import type { ObjectStore } from './object-store';
 
 /** Objects as files `objects/ab/cd/<sha-256>` of one folder. */
-export class FolderStorage implements Storage {
+export class FolderStorage implements ObjectStore {
   constructor(private readonly folder: string) {}
 
   private path(sha256: string): string {

@@ -1,25 +1,11 @@
-import type { Readable } from 'node:stream';
 import { config } from '../config/config';
 import { FolderStorage } from './folder-storage';
+import type { ObjectStore } from './object-store';
 
-/** Where submitted bytes live, addressed by their SHA-256. Objects are never changed and never overwritten. */
-export interface Storage {
-  /**
-   * Takes a stream in, hashing as it goes. Resolves once the bytes are safe under their SHA-256.
-   * Rejects with a Refusal `too-large` past `maxBytes`, and leaves nothing behind then.
-   */
-  put(stream: Readable, maxBytes: number): Promise<{ sha256: string; sizeBytes: number }>;
-  /** All bytes of an object; throws if there is none. */
-  read(sha256: string): Promise<Uint8Array>;
-  has(sha256: string): Promise<boolean>;
-  /** Throws unless objects can be written now. */
-  check(): Promise<void>;
-}
-
-let storage: Storage | undefined;
+let storage: ObjectStore | undefined;
 
 /** The storage this installation is set to use. */
-export function objects(): Storage {
+export function objects(): ObjectStore {
   storage ??= new FolderStorage(config().STORAGE_DIR);
   return storage;
 }

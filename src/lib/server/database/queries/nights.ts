@@ -22,7 +22,7 @@ export async function insertNight(
   night: { programmeId: string; instrumentId: string | null; civilDate: string; notes: string; createdBy: string },
   transaction: Transaction,
 ): Promise<string> {
-  const { id } = await Night.create(night as Parameters<typeof Night.create>[0], { transaction });
+  const { id } = await Night.create(night as never, { transaction });
   return id;
 }
 

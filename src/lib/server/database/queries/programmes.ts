@@ -1,22 +1,25 @@
-import type { Transaction } from 'sequelize';
-import type { Instrument } from '$lib/domain/instrument';
+import { QueryTypes } from 'sequelize';
 import { database } from '../connection';
-import { InstrumentVersion } from '../models/observing';
-import { Programme } from '../models/people';
 
-export async function insertProgramme(
-  programme: { slug: string; name: string; isDemo: boolean },
-  transaction: Transaction,
-): Promise<string> {
-  const { id } = await Programme.create(programme as Parameters<typeof Programme.create>[0], { transaction });
-  return id;
+export interface ProgrammeMemberRow {
+  programmeId: string;
+  slug: string;
+  programmeName: string;
+  isDemo: number;
+  looks: number;
+  userId: string;
+  userName: string;
+  role: string;
 }
 
-export async function insertInstrument(
-  instrument: { programmeId: string; name: string; version: number; description: Instrument },
-  transaction: Transaction,
-): Promise<string> {
-  database();
-  const { id } = await InstrumentVersion.create(instrument as never, { transaction });
-  return id;
+/** Members of the programmes with one row a role held, by the programmes' names, then the members'. */
+export async function programmeMemberRows(programmeIds: string[]): Promise<ProgrammeMemberRow[]> {
+  if (programmeIds.length === 0) return [];
+  return database().query<ProgrammeMemberRow>(
+    `SELECT p.id AS programmeId, p.slug, p.name AS programmeName, p.is_demo AS isDemo, p.looks, u.id AS userId,
+        u.name AS userName, m.role
+      FROM programmes p JOIN programme_members m ON m.programme_id = p.id JOIN users u ON u.id = m.user_id
+      WHERE p.id IN (:programmeIds) ORDER BY p.name, p.id, u.name, u.id, m.role`,
+    { replacements: { programmeIds }, type: QueryTypes.SELECT },
+  );
 }

@@ -47,7 +47,7 @@ export async function standingVerdict(
 }
 
 export async function appendVerdict(verdict: NewVerdict, transaction: Transaction): Promise<string> {
-  const { id } = await Verdict.create(verdict as Parameters<typeof Verdict.create>[0], { transaction });
+  const { id } = await Verdict.create(verdict as never, { transaction });
   return id;
 }
 
