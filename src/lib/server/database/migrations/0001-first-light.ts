@@ -85,7 +85,7 @@ export const statements: string[] = [
   `CREATE TABLE IF NOT EXISTS releases (id ${ID}, catalogue_id UUID NOT NULL, number INT UNSIGNED NOT NULL,
     draft_id UUID NOT NULL UNIQUE, drafted_by UUID NOT NULL, frozen_by UUID NOT NULL, notes TEXT NOT NULL,
     row_count INT UNSIGNED NOT NULL, content_sha256 CHAR(64) CHARACTER SET ascii NOT NULL, engine_version VARCHAR(40) NULL,
-    frozen_at DATETIME(6) NOT NULL, UNIQUE (catalogue_id, number), FOREIGN KEY (catalogue_id) REFERENCES catalogues (id),
+    summary JSON NOT NULL, frozen_at DATETIME(6) NOT NULL, UNIQUE (catalogue_id, number), FOREIGN KEY (catalogue_id) REFERENCES catalogues (id),
     FOREIGN KEY (draft_id) REFERENCES drafts (id), FOREIGN KEY (drafted_by) REFERENCES users (id),
     FOREIGN KEY (frozen_by) REFERENCES users (id)) ${TABLE}`,
   `CREATE TABLE IF NOT EXISTS release_rows (release_id UUID NOT NULL, row_index INT UNSIGNED NOT NULL,

@@ -7,6 +7,7 @@ import {
   type Sequelize,
 } from 'sequelize';
 import type { DraftSelection } from '$lib/domain/release';
+import type { ReleaseSummary } from '$lib/domain/release-summary';
 import { idColumn } from './columns';
 
 export class Catalogue extends Model<InferAttributes<Catalogue>, InferCreationAttributes<Catalogue>> {
@@ -40,6 +41,7 @@ export class Release extends Model<InferAttributes<Release>, InferCreationAttrib
   declare rowCount: number;
   declare contentSha256: string;
   declare engineVersion: string | null;
+  declare summary: ReleaseSummary;
   declare frozenAt: Date;
 }
 
@@ -89,6 +91,7 @@ export function definePublishing(sequelize: Sequelize): void {
       rowCount: INTEGER,
       contentSha256: CHAR(64),
       engineVersion: STRING(40),
+      summary: JSON,
       frozenAt: DATE(6),
     },
     { sequelize, tableName: 'releases' },
