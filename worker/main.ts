@@ -10,7 +10,7 @@ import { closeRedis, redis, redisOptions, channel } from '$lib/server/queue/redi
 import { queueName, startRelay } from '$lib/server/queue/relay';
 import { objects } from '$lib/server/storage/storage';
 import { handlers } from './jobs/handlers';
-import { pool } from './threads/pool';
+import { pool } from './thread-pool';
 
 /** A stalled job is taken over three lost renewals after its lock: lock 15 s, looked for every 5 s. */
 const LOCK_MS = 15_000;

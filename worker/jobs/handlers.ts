@@ -1,7 +1,7 @@
 import { ingestFile } from '$lib/server/ingest/ingest-file';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
 import type { JobName, JobPayload } from '$lib/server/queue/jobs';
-import { measureOnThread, readOnThread } from '../threads/pool';
+import { measureOnThread, readOnThread } from '../thread-pool';
 
 type Handlers = { [N in JobName]: (payload: JobPayload<N>, jobId: string) => Promise<void> };
 

@@ -13,7 +13,7 @@ export function pool(): Piscina {
     const bundled = fileURLToPath(new URL('./threads/work.js', import.meta.url));
     const inDevelopment = !existsSync(bundled);
     piscina = new Piscina({
-      filename: inDevelopment ? fileURLToPath(new URL('./work.ts', import.meta.url)) : bundled,
+      filename: inDevelopment ? fileURLToPath(new URL('./threads/work.ts', import.meta.url)) : bundled,
       execArgv: inDevelopment ? ['--import', 'tsx'] : [],
       minThreads: config().WORKER_THREADS,
       maxThreads: config().WORKER_THREADS,
