@@ -1,4 +1,4 @@
-import type { Problem } from './problem';
+import type { Problem } from './input-problem';
 import type { RawSpectrum } from './spectrum';
 
 /** Fewer pixels than this hold no line and its continuum. */

@@ -1,4 +1,5 @@
-import { InputProblem, type Problem } from '$lib/domain/problem';
+import { InputProblem } from '$lib/domain/input-problem';
+import type { Problem } from '$lib/domain/input-problem';
 
 /** Where in an input something stands; `extension` counts HDUs from 0, `row` from 1. */
 export interface Place {

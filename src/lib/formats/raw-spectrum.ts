@@ -1,7 +1,7 @@
 import { checkRawSpectrum } from '$lib/domain/check-raw-spectrum';
-import { InputProblem } from '$lib/domain/problem';
+import { InputProblem } from '$lib/domain/input-problem';
 import type { Medium, RawSpectrum } from '$lib/domain/spectrum';
-import type { Wavelengths } from './axis/spectral-axis';
+import type { Wavelengths } from './axis/wavelengths';
 import type { Cards } from './cards';
 import type { Observation } from './observation/read-observation';
 import { describePlace, type Place } from './place';

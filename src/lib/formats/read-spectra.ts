@@ -1,5 +1,5 @@
 import type { Instrument } from '$lib/domain/instrument';
-import type { Problem } from '$lib/domain/problem';
+import type { Problem } from '$lib/domain/input-problem';
 import type { RawSpectrum } from '$lib/domain/spectrum';
 import { tableSpectra } from './columns/table-spectra';
 import { readFits } from './fits/read-fits';

@@ -1,18 +1,9 @@
-import type { Medium } from '$lib/domain/spectrum';
 import type { Cards } from '../cards';
 import { mediumOfType } from '../medium';
 import { problemAt, type Place } from '../place';
-import { LIGHT_SPEED, parseSpectralUnit, PLANCK, type SpectralUnit } from '../units/spectral-unit';
+import { parseSpectralUnit } from '../units/spectral-unit';
+import { plausibleAngstrom, unknownUnit, wavelengthsFromValues, type Wavelengths } from './wavelengths';
 import { isSpectralType, worldAxis } from './world-axis';
-
-/** Wavelengths of an axis or a column, as RawSpectrum holds them. */
-export interface Wavelengths {
-  values: Float64Array;
-  scaleAngstrom: number;
-  /** Medium that the quantity itself implies; null where it doesn't. */
-  medium: Medium | null;
-  unitAssumed: boolean;
-}
 
 /** A pixel axis of an image: which card names describe it, and how long it is. */
 export interface AxisCards {
@@ -54,9 +45,6 @@ export function columnAxis(column: number, length: number): AxisCards {
 }
 
 const WORDS = /^(linear|lambda|wave(length)?s?|wl|log-?(linear|lambda|wave(length)?)|)$/i;
-/** Bounds within which unitless numbers are read as ångström: shorter than these no optical spectrum is. */
-const PLAUSIBLE_ANGSTROM = [2500, 60_000];
-
 /** True where the cards describe a spectral axis, by type, by unit, or by the words of common practice. */
 export function describesSpectralAxis(cards: Cards, axis: AxisCards): boolean {
   const type = cards.own(axis.ctype) ? (cards.text(axis.ctype) ?? '') : '';
@@ -94,11 +82,6 @@ function isLog10(cards: Cards, axis: AxisCards): boolean {
   return value !== null && value > 2 && value < 6 && cards.number('COEFF0') === value;
 }
 
-function plausibleAngstrom(values: Float64Array): boolean {
-  const middle = values[values.length >> 1];
-  return middle >= PLAUSIBLE_ANGSTROM[0] && middle <= PLAUSIBLE_ANGSTROM[1];
-}
-
 /**
  * Wavelengths of a pixel axis: linear, logarithmic and non-linear axes of FITS WCS Paper III (Greisen, Calabretta,
  * Valdes and Allen 2006), and the log10 axes of common practice.
@@ -127,58 +110,4 @@ export function readSpectralAxis(cards: Cards, axis: AxisCards, place: Place): W
   if (unitText !== null && !unit) throw unknownUnit(unitText, place, axis.cunit);
   const log10 = isLog10(cards, axis) || /^log-?(linear|lambda|wave)/i.test(type);
   return wavelengthsFromValues(values, unit, log10 && !unit?.logarithm ? 'log10' : null, mediumOfType(type), place);
-}
-
-/** A wavelength unit that nobody can read. */
-export function unknownUnit(unit: string, place: Place, detail: string) {
-  return problemAt(
-    { ...place, detail },
-    'unit-unknown',
-    `'${unit.slice(0, 60)}' is not a unit of wavelength, frequency, energy or wave number.`,
-    'Use Angstrom, nm, um, m, Hz, eV or log10(Angstrom), or name the unit in the instrument description.',
-  );
-}
-
-/**
- * Turns column or axis values into wavelengths: logarithms undone, frequency, energy and wave number turned into vacuum
- * wavelength; without a unit ångström where the values can be nothing else.
- */
-export function wavelengthsFromValues(
-  values: Float64Array,
-  unit: SpectralUnit | null,
-  logarithm: 'log10' | 'ln' | 'linear' | null,
-  medium: Medium | null,
-  place: Place,
-): Wavelengths {
-  const log = logarithm === 'linear' ? null : (logarithm ?? unit?.logarithm ?? null);
-  let linear = values;
-  if (log === 'log10') linear = values.map((value) => 10 ** value);
-  else if (log === 'ln') linear = values.map((value) => Math.exp(value));
-  if (unit && unit.quantity !== 'wavelength') {
-    return {
-      values: linear.map((value) => toAngstrom(value, unit)),
-      scaleAngstrom: 1,
-      medium: 'vacuum',
-      unitAssumed: false,
-    };
-  }
-  if (unit) return { values: linear, scaleAngstrom: unit.scaleAngstrom, medium, unitAssumed: false };
-  const finite = linear.filter((value) => Number.isFinite(value) && value > 0);
-  if (finite.length > 0 && !plausibleAngstrom(finite)) {
-    throw problemAt(
-      place,
-      'unit-missing',
-      `The wavelengths have no unit, and values such as ${finite[finite.length >> 1].toPrecision(6)} do not tell which it is.`,
-      'Name the unit (Angstrom, nm, um) in the file or in the instrument description.',
-    );
-  }
-  return { values: linear, scaleAngstrom: 1, medium, unitAssumed: true };
-}
-
-function toAngstrom(value: number, unit: SpectralUnit): number {
-  const si = value * unit.si;
-  if (!(si > 0)) return Number.NaN;
-  if (unit.quantity === 'frequency') return (LIGHT_SPEED / si) * 1e10;
-  if (unit.quantity === 'energy') return ((PLANCK * LIGHT_SPEED) / si) * 1e10;
-  return 1e10 / si;
 }

@@ -4,7 +4,7 @@ import { problemAt, type Place } from '../place';
 import { LIGHT_SPEED, parseSpectralUnit, PLANCK } from '../units/spectral-unit';
 import { parseUnit } from '../units/parse-unit';
 import { unitValue } from '../units/unit';
-import { unknownUnit, type Wavelengths } from './spectral-axis';
+import { unknownUnit, type Wavelengths } from './wavelengths';
 
 const SPECTRAL_TYPES = ['WAVE', 'AWAV', 'FREQ', 'ENER', 'WAVN', 'VRAD', 'VOPT', 'ZOPT', 'VELO', 'BETA'];
 const ALGORITHM = /^-(LOG|[FWVA]2[FWVA]|TAB|GRI|GRA)$/;

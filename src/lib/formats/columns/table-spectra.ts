@@ -1,14 +1,8 @@
 import type { Instrument } from '$lib/domain/instrument';
-import type { Problem } from '$lib/domain/problem';
+import type { Problem } from '$lib/domain/input-problem';
 import type { Medium, RawSpectrum } from '$lib/domain/spectrum';
-import {
-  columnAxis,
-  describesSpectralAxis,
-  readSpectralAxis,
-  unknownUnit,
-  wavelengthsFromValues,
-  type Wavelengths,
-} from '../axis/spectral-axis';
+import { columnAxis, describesSpectralAxis, readSpectralAxis } from '../axis/spectral-axis';
+import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wavelengths';
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
 import { readObservation } from '../observation/read-observation';
 import { rowObservation } from '../observation/row-observation';

@@ -1,7 +1,8 @@
 import type { Instrument } from '$lib/domain/instrument';
-import type { Problem } from '$lib/domain/problem';
+import type { Problem } from '$lib/domain/input-problem';
 import type { RawSpectrum } from '$lib/domain/spectrum';
-import { readSpectralAxis, unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/spectral-axis';
+import { readSpectralAxis } from '../axis/spectral-axis';
+import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wavelengths';
 import { roleOfName, type Role } from '../columns/roles';
 import type { Table } from '../columns/table';
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';

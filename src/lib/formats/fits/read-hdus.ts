@@ -1,4 +1,4 @@
-import type { Problem } from '$lib/domain/problem';
+import type { Problem } from '$lib/domain/input-problem';
 import type { Cards } from '../cards';
 import { collectProblem, problemAt, type Place } from '../place';
 import { BLOCK_BYTES, readHeader } from './read-header';

@@ -1,6 +1,6 @@
 import { checkRawSpectrum } from '$lib/domain/check-raw-spectrum';
 import type { Instrument } from '$lib/domain/instrument';
-import { InputProblem } from '$lib/domain/problem';
+import { InputProblem } from '$lib/domain/input-problem';
 import { MASK, type RawSpectrum, type Spectrum } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import { airToVacuum } from './air-vacuum';
