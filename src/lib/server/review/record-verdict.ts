@@ -51,7 +51,13 @@ export async function recordVerdict(
   return inTransaction(async (transaction) => {
     await lockSpectrum(spectrumId, transaction);
     const before = await standingVerdict(spectrumId, userId, transaction);
-    const verdict: NewVerdict = { ...decided(input, spectrum), spectrumId, userId, supersedes: before?.id ?? null };
+    const verdict: NewVerdict = {
+      ...decided(input, spectrum),
+      spectrumId,
+      userId,
+      supersedes: before?.id ?? null,
+      restores: null,
+    };
     return { verdictId: await appendVerdict(verdict, transaction) };
   });
 }

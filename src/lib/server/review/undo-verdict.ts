@@ -7,12 +7,20 @@ import {
   findVerdict,
   lockSpectrum,
   standingVerdict,
-  type NewVerdict,
+  type VerdictRow,
 } from '../database/queries/verdicts';
 
+/** The verdict that stood before this one was given; null where none did. */
+async function verdictBefore(verdict: VerdictRow): Promise<VerdictRow | null> {
+  // A row that an undo wrote repeats an older one: what stood before that one is meant.
+  const given = verdict.restores ? await findVerdict(verdict.restores) : verdict;
+  const before = given?.supersedes ? await findVerdict(given.supersedes) : null;
+  return before && before.kind !== 'withdrawn' ? before : null;
+}
+
 /**
- * Takes back the asker's verdict by appending its reversal: what stood before it stands again, else nothing does.
- * Returns the spectrum it was about.
+ * Takes back the asker's verdict by appending its reversal: what stood before it stands again, else nothing does. Any
+ * number of steps can be undone one after another. Returns the spectrum it was about.
  */
 export async function undoVerdict(actor: Actor | null, verdictId: string): Promise<{ spectrumId: string }> {
   const verdict = await findVerdict(verdictId);
@@ -23,31 +31,27 @@ export async function undoVerdict(actor: Actor | null, verdictId: string): Promi
   return inTransaction(async (transaction) => {
     await lockSpectrum(spectrum.id, transaction);
     const standing = await standingVerdict(spectrum.id, userId, transaction);
-    if (standing?.id !== verdictId)
+    if (standing?.id !== verdictId) {
       throw new Refusal('conflict', 'This verdict stands no more.', 'Look at the spectrum again.');
-    const before = verdict.supersedes ? await findVerdict(verdict.supersedes) : null;
-    const { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment } = before ?? {
-      ...verdict,
-      kind: 'withdrawn' as const,
-      redshift: null,
-      redshiftError: null,
-      candidatePlace: null,
-      confidence: null,
-    };
-    const reversal: NewVerdict = {
-      spectrumId: spectrum.id,
-      userId,
-      measurementId,
-      kind,
-      redshift,
-      redshiftError,
-      candidatePlace,
-      confidence,
-      flags: before ? flags : [],
-      comment: before ? comment : '',
-      supersedes: verdictId,
-    };
-    await appendVerdict(reversal, transaction);
+    }
+    const before = await verdictBefore(verdict);
+    const common = { spectrumId: spectrum.id, userId, supersedes: verdictId };
+    if (before) {
+      const { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment } = before;
+      const said = { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment };
+      await appendVerdict({ ...common, ...said, restores: before.restores ?? before.id }, transaction);
+    } else {
+      const nothing = {
+        redshift: null,
+        redshiftError: null,
+        candidatePlace: null,
+        confidence: null,
+        flags: [],
+        comment: '',
+      };
+      const { measurementId } = verdict;
+      await appendVerdict({ ...common, ...nothing, measurementId, kind: 'withdrawn', restores: null }, transaction);
+    }
     return { spectrumId: spectrum.id };
   });
 }

@@ -75,6 +75,8 @@ export class Verdict extends Model<InferAttributes<Verdict>, InferCreationAttrib
   declare flags: Flag[];
   declare comment: string;
   declare supersedes: string | null;
+  /** The verdict that an undo brought back; this row repeats it. */
+  declare restores: string | null;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -142,6 +144,7 @@ export function defineAnswers(sequelize: Sequelize): void {
       flags: JSON,
       comment: TEXT,
       supersedes: UUID,
+      restores: UUID,
       createdAt: DATE(6),
     },
     { sequelize, tableName: 'verdicts' },

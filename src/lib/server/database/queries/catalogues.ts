@@ -27,17 +27,17 @@ export async function findCatalogue(slug: string): Promise<CatalogueRecord | nul
   return row ? { ...row, isDemo: !!row.isDemo } : null;
 }
 
-/** Writes a catalogue; false where the slug is taken. */
+/** Writes a catalogue and returns its id; null where the slug is taken. */
 export async function insertCatalogue(
   catalogue: { programmeId: string; slug: string; title: string; abstract: string; createdBy: string },
   transaction: Transaction,
-): Promise<boolean> {
-  const [, isNew] = await Catalogue.findOrCreate({
+): Promise<string | null> {
+  const [made, isNew] = await Catalogue.findOrCreate({
     where: { slug: catalogue.slug },
     defaults: catalogue as never,
     transaction,
   });
-  return isNew;
+  return isNew ? made.id : null;
 }
 
 /** Holds the catalogue's row until the transaction ends, so that drafts and release numbers are made one at a time. */

@@ -1,6 +1,7 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { DraftSelection } from '$lib/domain/release';
 import { database } from '../connection';
+import { newIdentifier } from '../identifier';
 import { Draft } from '../models/publishing';
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
@@ -52,7 +53,8 @@ export async function insertDraft(
   draft: { catalogueId: string; selection: DraftSelection; notes: string; createdBy: string },
   transaction: Transaction,
 ): Promise<string> {
-  const { id } = await Draft.create(draft as Parameters<typeof Draft.create>[0], { transaction });
+  const id = newIdentifier();
+  await Draft.create({ id, ...draft }, { transaction });
   return id;
 }
 

@@ -1,6 +1,7 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { ReleaseSummary } from '$lib/domain/release-summary';
 import { database } from '../connection';
+import { newIdentifier } from '../identifier';
 import { Release } from '../models/publishing';
 
 export interface ReleaseRecord {
@@ -56,8 +57,7 @@ export async function insertRelease(
   },
   transaction: Transaction,
 ): Promise<string> {
-  const { id } = await Release.create({ ...release, frozenAt: new Date() } as Parameters<typeof Release.create>[0], {
-    transaction,
-  });
+  const id = newIdentifier();
+  await Release.create({ id, ...release, frozenAt: new Date() }, { transaction });
   return id;
 }

@@ -51,14 +51,14 @@ export async function appendVerdict(verdict: NewVerdict, transaction: Transactio
   return id;
 }
 
-/** The newest verdict of a person that stands, on any spectrum: what undo would take back. */
+/** The verdict that a person gave last and that stands, on any spectrum: what undo would take back. */
 export async function lastVerdict(userId: string): Promise<(VerdictRow & { name: string }) | null> {
   const [row] = await database().query<VerdictRow & { name: string }>(
     `SELECT v.id, v.spectrum_id AS spectrumId, v.kind, v.redshift, v.confidence, COALESCE(s.name, f.original_name) AS name
       FROM verdicts v JOIN spectra s ON s.id = v.spectrum_id JOIN files f ON f.id = s.file_id
       WHERE v.user_id = :userId AND v.kind <> 'withdrawn'
         AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = v.id)
-      ORDER BY v.id DESC LIMIT 1`,
+      ORDER BY COALESCE(v.restores, v.id) DESC LIMIT 1`,
     { replacements: { userId }, type: QueryTypes.SELECT },
   );
   return row ?? null;
