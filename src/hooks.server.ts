@@ -1,12 +1,21 @@
 import { randomUUID } from 'node:crypto';
 import type { Handle, HandleServerError } from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
+import { building } from '$app/environment';
+import { closeConnections } from '$lib/server/auth/close-connections';
 import { authenticate } from '$lib/server/auth/handles/authenticate';
 import { capBody } from '$lib/server/auth/handles/cap-body';
 import { refuseCrossSite } from '$lib/server/auth/handles/refuse-cross-site';
+import { endFollowing } from '$lib/server/ingest/follow-night';
 import { log } from '$lib/server/log/log';
 
 const THEMES = ['light', 'dark', 'dome'] as const;
+
+if (!building) {
+  // The server waits for open event streams before it closes: they end first, then the connections.
+  for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, endFollowing);
+  process.once('sveltekit:shutdown', () => void closeConnections());
+}
 
 const headers: Handle = async ({ event, resolve }) => {
   event.locals.requestId = randomUUID();

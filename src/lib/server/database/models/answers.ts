@@ -31,6 +31,11 @@ export class MeasurementRecord extends Model<
   declare noiseFactor: number | null;
   /** Shannon entropy of the answer over candidates and rivals, bits: what a look would settle. */
   declare entropyBits: number;
+  declare objectClass: string | null;
+  declare fluxUnit: string | null;
+  declare flags: Flag[];
+  declare strongestLine: string | null;
+  declare strongestLineSignalToNoise: number | null;
   declare detail: MeasurementBody;
   declare createdAt: CreationOptional<Date>;
 }
@@ -98,6 +103,11 @@ export function defineAnswers(sequelize: Sequelize): void {
       confidence: STRING(10),
       noiseFactor: DOUBLE,
       entropyBits: DOUBLE,
+      objectClass: STRING(40),
+      fluxUnit: STRING(80),
+      flags: JSON,
+      strongestLine: STRING(40),
+      strongestLineSignalToNoise: DOUBLE,
       detail: JSON,
       createdAt: DATE(6),
     },

@@ -1,6 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Instrument } from '$lib/domain/instrument';
-import type { Measurement } from '$lib/domain/measurement';
+import type { LineFit, Measurement } from '$lib/domain/measurement';
 import type { Problem } from '$lib/domain/problem';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
@@ -55,6 +55,12 @@ export async function storeMeasurements(
   }
 }
 
+function strongestOf(lines: LineFit[]): LineFit | null {
+  const stronger = (best: LineFit | null, line: LineFit) =>
+    (line.signalToNoise ?? 0) > (best?.signalToNoise ?? 0) ? line : best;
+  return lines.reduce(stronger, null);
+}
+
 async function storeMeasurement(spectrumId: string, measurement: Measurement, transaction: Transaction): Promise<void> {
   const { engine, candidates, lines } = measurement;
   const found = await MeasurementRecord.findOne({
@@ -64,6 +70,7 @@ async function storeMeasurement(spectrumId: string, measurement: Measurement, tr
   });
   if (found) return;
   const id = newIdentifier();
+  const strongest = strongestOf(lines);
   const { redshift, redshiftError, redshiftErrorMeasured, redshiftSystemic, secondRedshift } = measurement;
   const { probability, confidence, noiseFactor } = measurement;
   await MeasurementRecord.create(
@@ -82,6 +89,11 @@ async function storeMeasurement(spectrumId: string, measurement: Measurement, tr
       confidence,
       noiseFactor,
       entropyBits: entropyBits(measurement),
+      objectClass: redshift === null ? null : (candidates[0]?.objectClass ?? null),
+      fluxUnit: measurement.fluxUnit,
+      flags: measurement.flags,
+      strongestLine: strongest?.line ?? null,
+      strongestLineSignalToNoise: strongest?.signalToNoise ?? null,
       detail: measurement,
     },
     { transaction },
