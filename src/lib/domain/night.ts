@@ -1,5 +1,6 @@
 import type { Confidence } from './confidence';
 import type { Flag } from './flag';
+import type { Measurement } from './measurement';
 import type { Problem } from './problem';
 
 /** A whole picture of a night at one revision; sent as it is by the API and by server-sent events. */
@@ -44,3 +45,9 @@ export interface NightMeasurement {
   strongestLine: { line: string; signalToNoise: number } | null;
   verdict: { redshift: number | null; confidence: string | null; by: string } | null;
 }
+
+/** What the engine said beyond the table's columns. */
+export type FullAnswer = Pick<
+  Measurement,
+  'candidates' | 'lines' | 'rivals' | 'derived' | 'reasons' | 'frame' | 'engine'
+>;

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { decodeCursor, encodeCursor } from '$lib/api/cursor';
-import type { NightMeasurement } from '$lib/domain/night';
+import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { Refusal } from '$lib/domain/refusal';
 import { may, permit, type Actor } from '../auth/permissions';
 import { findNight } from '../database/queries/nights';
@@ -9,20 +9,22 @@ import { nightMeasurementRows } from '../database/queries/night-measurements';
 export const listMeasurementsSchema = z.object({
   limit: z.coerce.number().int().min(1).max(5000).default(500),
   cursor: z.string().max(500).optional(),
+  /** `full` has every key of `measure`; `table` has those of a night's table, a tenth of the bytes. */
+  detail: z.enum(['full', 'table']).default('full'),
 });
 
 /** A page of a night's spectra with their newest measurement, in the order of submission. */
 export async function listMeasurements(
   actor: Actor | null,
   nightId: string,
-  { limit, cursor }: z.output<typeof listMeasurementsSchema>,
-): Promise<{ rows: NightMeasurement[]; next: string | null }> {
+  { limit, cursor, detail = 'full' }: z.input<typeof listMeasurementsSchema> & { limit: number },
+): Promise<{ rows: (NightMeasurement & Partial<FullAnswer>)[]; next: string | null }> {
   const night = await findNight(nightId);
   if (!night) throw new Refusal('not-found', 'There is no such night, or it belongs to a programme you are not in.');
   const { userId } = permit(actor, 'night.read', night.programmeId);
   const judges = may(actor, 'spectrum.judge', night.programmeId);
   const after = cursor ? String(decodeCursor(cursor, 1)[0]) : null;
-  const rows = await nightMeasurementRows(nightId, limit + 1, after, { userId, judges });
+  const rows = await nightMeasurementRows(nightId, limit + 1, after, { userId, judges, full: detail === 'full' });
   const page = rows.slice(0, limit);
   return { rows: page, next: rows.length > limit ? encodeCursor([page[page.length - 1].spectrum]) : null };
 }

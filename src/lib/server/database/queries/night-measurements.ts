@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import type { Flag } from '$lib/domain/flag';
-import type { NightMeasurement } from '$lib/domain/night';
+import type { Measurement } from '$lib/domain/measurement';
+import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { database } from '../connection';
 import { LATEST_MEASUREMENT } from './night-snapshot';
 import { CURRENT_VERDICT, judgedBy } from './verdicts';
@@ -12,25 +13,27 @@ type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict'> & {
   verdictRedshift: number | null;
   verdictConfidence: string | null;
   verdictBy: string | null;
+  detail: string | Measurement | null;
 };
 
 /**
  * Spectra of a night after an id, in the order of ids, with the newest measurement and the newest verdict. For a reader
- * who may judge, a verdict shows only where they gave one of their own: looks are blind.
+ * who may judge, a verdict shows only where they gave one of their own: looks are blind. `full` adds all that the engine
+ * said: candidates, lines, reasons.
  */
 export async function nightMeasurementRows(
   nightId: string,
   limit: number,
   after: string | null,
-  reader: { userId: string; judges: boolean },
-): Promise<NightMeasurement[]> {
+  reader: { userId: string; judges: boolean; full: boolean },
+): Promise<(NightMeasurement & Partial<FullAnswer>)[]> {
   const rows = await database().query<Row>(
     `SELECT s.id AS spectrum, nf.name AS source, s.extension, s.row_index AS \`row\`, s.name, s.ra_degrees AS ra,
         s.dec_degrees AS \`dec\`, s.state, s.median_signal_to_noise AS medianSignalToNoise, m.redshift,
         m.redshift_error AS redshiftError, m.redshift_error_measured AS redshiftErrorMeasured,
         m.redshift_systemic AS redshiftSystemic, m.second_redshift AS secondRedshift, m.probability, m.confidence,
         m.noise_factor AS noiseFactor, m.object_class AS objectClass, m.flags, m.flux_unit AS fluxUnit,
-        m.strongest_line AS line, m.strongest_line_signal_to_noise AS lineSignalToNoise,
+        m.strongest_line AS line, m.strongest_line_signal_to_noise AS lineSignalToNoise, ${reader.full ? 'm.detail' : 'NULL'} AS detail,
         v.redshift AS verdictRedshift, v.confidence AS verdictConfidence, u.name AS verdictBy
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
       LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
@@ -42,10 +45,13 @@ export async function nightMeasurementRows(
       type: QueryTypes.SELECT,
     },
   );
-  return rows.map(({ flags, line, lineSignalToNoise, verdictRedshift, verdictConfidence, verdictBy, ...row }) => ({
-    ...row,
-    flags: typeof flags === 'string' ? (JSON.parse(flags) as Flag[]) : (flags ?? []),
-    strongestLine: line === null ? null : { line, signalToNoise: lineSignalToNoise ?? 0 },
-    verdict: verdictBy ? { redshift: verdictRedshift, confidence: verdictConfidence, by: verdictBy } : null,
-  }));
+  return rows.map(
+    ({ detail, flags, line, lineSignalToNoise, verdictRedshift, verdictConfidence, verdictBy, ...row }) => ({
+      ...row,
+      ...(typeof detail === 'string' ? (JSON.parse(detail) as Measurement) : detail),
+      flags: typeof flags === 'string' ? (JSON.parse(flags) as Flag[]) : (flags ?? []),
+      strongestLine: line === null ? null : { line, signalToNoise: lineSignalToNoise ?? 0 },
+      verdict: verdictBy ? { redshift: verdictRedshift, confidence: verdictConfidence, by: verdictBy } : null,
+    }),
+  );
 }
