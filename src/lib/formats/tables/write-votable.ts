@@ -16,16 +16,14 @@ export interface VotableHead {
 
 /** Characters that XML 1.0 (section 2.2) has no place for become U+FFFD. */
 function escaped(text: string): string {
-  return (
-    text
-      // eslint-disable-next-line no-control-regex -- control characters are what is taken out
-      .replace(/[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]|\p{Surrogate}/gu, '\ufffd')
-      .replaceAll('&', '&amp;')
-      .replaceAll('<', '&lt;')
-      .replaceAll('>', '&gt;')
-      .replaceAll('"', '&quot;')
-      .replace(/[\t\n\r]/g, (c) => `&#${c.charCodeAt(0)};`)
-  );
+  return text
+
+    .replace(/[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]|\p{Surrogate}/gu, '\ufffd')
+    .replaceAll('&', '&amp;')
+    .replaceAll('<', '&lt;')
+    .replaceAll('>', '&gt;')
+    .replaceAll('"', '&quot;')
+    .replace(/[\t\n\r]/g, (c) => `&#${c.charCodeAt(0)};`);
 }
 
 function field({ name, datatype, unit, ucd, description }: TableColumn): string {

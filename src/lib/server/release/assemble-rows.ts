@@ -48,7 +48,9 @@ async function fluxesOf(matched: Matched[], transaction?: Transaction): Promise<
   const byPlace = new Map<number, string[]>();
   for (const { candidate } of matched) {
     if (!candidate) continue;
-    byPlace.set(candidate.place, [...(byPlace.get(candidate.place) ?? []), candidate.measurementId]);
+    const ids = byPlace.get(candidate.place);
+    if (ids) ids.push(candidate.measurementId);
+    else byPlace.set(candidate.place, [candidate.measurementId]);
   }
   const rows: LineFluxRow[] = [];
   for (const [place, ids] of byPlace) rows.push(...(await lineFluxes(ids, place, PUBLISHED_LINES, transaction)));

@@ -44,20 +44,21 @@ type PublishedFluxes = Pick<
  * @param scale of `scaleToPublished`
  */
 export function publishedFluxes(lines: ReadonlyMap<string, LineFlux>, scale: number | null): PublishedFluxes {
-  const value = (flux: number | null | undefined) => (flux == null || scale === null ? null : flux * scale);
-  const [short, long] = OXYGEN_TWO.map((name) => lines.get(name));
-  const sum = short?.flux != null && long?.flux != null ? short.flux + long.flux : null;
+  const line = (name: string): LineFlux => lines.get(name) ?? { flux: null, fluxError: null };
+  const value = (flux: number | null) => (flux === null || scale === null ? null : flux * scale);
+  const [short, long] = OXYGEN_TWO.map(line);
+  const sum = short.flux === null || long.flux === null ? null : short.flux + long.flux;
   const sumError =
-    sum !== null && short?.fluxError != null && long?.fluxError != null
-      ? Math.hypot(short.fluxError, long.fluxError)
-      : null;
+    sum === null || short.fluxError === null || long.fluxError === null
+      ? null
+      : Math.hypot(short.fluxError, long.fluxError);
   return {
-    hAlphaFlux: value(lines.get(H_ALPHA)?.flux),
-    hAlphaFluxError: value(lines.get(H_ALPHA)?.fluxError),
-    hBetaFlux: value(lines.get(H_BETA)?.flux),
-    hBetaFluxError: value(lines.get(H_BETA)?.fluxError),
-    o3Flux: value(lines.get(OXYGEN_THREE)?.flux),
-    o3FluxError: value(lines.get(OXYGEN_THREE)?.fluxError),
+    hAlphaFlux: value(line(H_ALPHA).flux),
+    hAlphaFluxError: value(line(H_ALPHA).fluxError),
+    hBetaFlux: value(line(H_BETA).flux),
+    hBetaFluxError: value(line(H_BETA).fluxError),
+    o3Flux: value(line(OXYGEN_THREE).flux),
+    o3FluxError: value(line(OXYGEN_THREE).fluxError),
     o2Flux: value(sum),
     o2FluxError: value(sumError),
     fluxUnit: scale === null ? null : LINE_FLUX_UNIT,

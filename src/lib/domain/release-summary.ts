@@ -1,0 +1,12 @@
+type Counts = Record<'secure' | 'probable' | 'ambiguous', number>;
+
+/** Figures of a release, computed once when it is frozen. */
+export interface ReleaseSummary {
+  confidence: Counts;
+  decidedBy: Record<'people' | 'engine', number>;
+  redshiftRange: [number, number] | null;
+  /** Median of c sigma_z / (1 + z), km/s; null where no row has an error. */
+  medianVelocityErrorKms: number | null;
+  /** Rows a bin of redshift: bin i begins at start + i width. */
+  histogram: { start: number; width: number; bins: Counts[] };
+}

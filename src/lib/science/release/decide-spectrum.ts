@@ -1,0 +1,98 @@
+import type { Confidence } from '$lib/domain/confidence';
+import type { DraftSelection } from '$lib/domain/release';
+import { verdictsAgree } from './verdicts-agree';
+
+/** A verdict that stands: the newest of its person, neither withdrawn nor superseded. */
+export interface StandingVerdict {
+  id: string;
+  userId: string;
+  measurementId: string | null;
+  kind: 'candidate' | 'by hand' | 'no redshift';
+  redshift: number | null;
+  redshiftError: number | null;
+  /** Place of the candidate in the measurement's list, from 0. */
+  candidatePlace: number | null;
+  confidence: Confidence | null;
+}
+
+/** A spectrum with what the engine and people say of it. */
+export interface JudgedSpectrum {
+  spectrumId: string;
+  targetId: string;
+  targetName: string;
+  ra: number | null;
+  dec: number | null;
+  measurementId: string | null;
+  redshift: number | null;
+  redshiftError: number | null;
+  probability: number | null;
+  confidence: Confidence | null;
+  /** In the order of their time. */
+  verdicts: StandingVerdict[];
+}
+
+/** What a spectrum would publish. `place` null: set by hand, no candidate chosen. */
+export interface Answer {
+  spectrum: JudgedSpectrum;
+  decidedBy: 'people' | 'engine';
+  measurementId: string | null;
+  verdictId: string | null;
+  place: number | null;
+  redshift: number;
+  redshiftError: number | null;
+  confidence: Confidence;
+}
+
+/** Why a spectrum brings no row. */
+export type KeptOut =
+  'left out' | 'open question' | 'no redshift' | 'not judged' | 'other confidence' | 'nothing measured';
+
+/**
+ * What one spectrum brings to a release: the newest standing verdict of people; where nobody has judged it and the
+ * selection takes the engine alone, the measurement; else the reason why nothing.
+ * Verdicts by different people that disagree make an open question, which brings nothing.
+ */
+export function decideSpectrum(spectrum: JudgedSpectrum, selection: DraftSelection): Answer | KeptOut {
+  if (selection.leaveOut?.includes(spectrum.targetName)) return 'left out';
+  const { verdicts } = spectrum;
+  const newest = verdicts.at(-1);
+  if (newest) {
+    if (verdicts.some((a, i) => verdicts.slice(i + 1).some((b) => !verdictsAgree(a, b)))) return 'open question';
+    return answerOfPeople(spectrum, newest, selection);
+  }
+  if (spectrum.confidence === null) return 'nothing measured';
+  if (spectrum.confidence === 'none' || spectrum.redshift === null) return 'no redshift';
+  if (!selection.engineAlone) return 'not judged';
+  if (!selection.confidence.includes(spectrum.confidence)) return 'other confidence';
+  const { measurementId, redshift, redshiftError, confidence } = spectrum;
+  return {
+    spectrum,
+    decidedBy: 'engine',
+    measurementId,
+    verdictId: null,
+    place: 0,
+    redshift,
+    redshiftError,
+    confidence,
+  };
+}
+
+function answerOfPeople(
+  spectrum: JudgedSpectrum,
+  verdict: StandingVerdict,
+  selection: DraftSelection,
+): Answer | KeptOut {
+  const { redshift, confidence } = verdict;
+  if (redshift === null || confidence === null || confidence === 'none') return 'no redshift';
+  if (!selection.confidence.includes(confidence)) return 'other confidence';
+  return {
+    spectrum,
+    decidedBy: 'people',
+    measurementId: verdict.measurementId ?? spectrum.measurementId,
+    verdictId: verdict.id,
+    place: verdict.kind === 'candidate' ? verdict.candidatePlace : null,
+    redshift,
+    redshiftError: verdict.redshiftError,
+    confidence,
+  };
+}

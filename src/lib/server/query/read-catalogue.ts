@@ -1,0 +1,35 @@
+import { Refusal } from '$lib/domain/refusal';
+import { may, type Actor } from '../auth/permissions';
+import { findCatalogue } from '../database/queries/catalogues';
+import { listReleases } from '../database/queries/releases';
+
+export interface CatalogueView {
+  slug: string;
+  title: string;
+  abstract: string;
+  programme: { name: string; isDemo: boolean };
+  /** Newest first; empty only for members of the programme. */
+  releases: { release: number; rowCount: number; frozenAt: string; contentSha256: string; url: string }[];
+}
+
+/** A catalogue and its releases: public once there is one, before that for members of its programme. */
+export async function readCatalogue(actor: Actor | null, slug: string): Promise<CatalogueView> {
+  const catalogue = await findCatalogue(slug);
+  const releases = catalogue ? await listReleases(catalogue.id) : [];
+  if (!catalogue || (releases.length === 0 && !may(actor, 'programme.read', catalogue.programmeId))) {
+    throw new Refusal('not-found', `There is no released catalogue "${slug}".`, 'See /api/v1/catalogues for those.');
+  }
+  return {
+    slug,
+    title: catalogue.title,
+    abstract: catalogue.abstract,
+    programme: { name: catalogue.programmeName, isDemo: catalogue.isDemo },
+    releases: releases.map(({ number, rowCount, frozenAt, contentSha256 }) => ({
+      release: number,
+      rowCount,
+      frozenAt: frozenAt.toISOString(),
+      contentSha256,
+      url: `/api/v1/catalogues/${slug}/releases/${number}`,
+    })),
+  };
+}
