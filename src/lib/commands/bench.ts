@@ -1,0 +1,55 @@
+import { parseArgs } from 'node:util';
+import { runAccuracy } from './bench/accuracy';
+import { runSpeed } from './bench/speed';
+
+const USAGE = `npm run bench -- accuracy [--count 13000] [--seed 1] [--flavour-count 170] [--threads N]
+                          [--sample-night FOLDER] [--out FOLDER]
+npm run bench -- speed    [--count 400] [--seed 1]
+
+accuracy  simulates spectra, measures them and prints what came out beside the bar:
+          measured figure, count, floor, goal, reached or not.
+          --sample-night scores a folder of files with a truth.csv by the same rules.
+speed     spectra per second on one core, beside a plain fit by general tools, and memory.`;
+
+function whole(text: string | undefined, usual: number, name: string): number {
+  const value = text === undefined ? usual : Number(text);
+  if (!Number.isInteger(value) || value < 0) throw new Error(`--${name} takes a whole number, not '${text}'.`);
+  return value;
+}
+
+function parse() {
+  const { values, positionals } = parseArgs({
+    allowPositionals: true,
+    options: {
+      count: { type: 'string' },
+      seed: { type: 'string' },
+      'flavour-count': { type: 'string' },
+      threads: { type: 'string' },
+      'sample-night': { type: 'string' },
+      out: { type: 'string' },
+      help: { type: 'boolean' },
+    },
+  });
+  const what = positionals[0];
+  if (!values.help && what !== 'accuracy' && what !== 'speed') throw new Error(`there is no bench '${what ?? ''}'.`);
+  return {
+    what: values.help ? 'help' : what,
+    count: whole(values.count, what === 'speed' ? 400 : 13000, 'count'),
+    seed: whole(values.seed, 1, 'seed'),
+    perFlavour: whole(values['flavour-count'], 170, 'flavour-count'),
+    threads: values.threads === undefined ? null : whole(values.threads, 1, 'threads'),
+    sampleNight: values['sample-night'] ?? null,
+    out: values.out ?? 'build/bench',
+  };
+}
+
+let options: ReturnType<typeof parse> | null = null;
+try {
+  options = parse();
+} catch (error) {
+  process.stderr.write(`bench: ${(error as Error).message}\n\n${USAGE}\n`);
+  process.exitCode = 1;
+}
+if (options?.what === 'help') process.stderr.write(`${USAGE}\n`);
+else if (options?.what === 'accuracy') await runAccuracy(options);
+else if (options?.what === 'speed') await runSpeed(options);

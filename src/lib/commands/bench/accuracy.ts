@@ -1,0 +1,137 @@
+import { mkdirSync, writeFileSync } from 'node:fs';
+import { availableParallelism } from 'node:os';
+import { join } from 'node:path';
+import { Piscina } from 'piscina';
+import { tableByClass, tableBySignal, tableOfBounds, tableOfIdentities, tableOfReliability } from './break-down';
+import type { Outcome } from './outcome';
+import { FLAVOURS, planSpectra } from './plan-spectra';
+import { layOutTable, percent, short } from './print-table';
+import { reliabilityBins, reliabilitySvg } from './reliability';
+import type { FlavourOffset } from './run-task';
+import { scoreSampleNight } from './sample-night';
+import { forecastsOf, score, type ScoreRow } from './score';
+import { median } from './statistics';
+
+export interface AccuracyOptions {
+  count: number;
+  seed: number;
+  threads: number | null;
+  perFlavour: number;
+  sampleNight: string | null;
+  out: string;
+}
+
+function flavourRows(offsets: readonly FlavourOffset[]): ScoreRow[] {
+  return FLAVOURS.map((flavour) => {
+    const all = offsets.filter((o) => o.flavour === flavour);
+    const right = all.map((o) => o.offsetKms).filter((v): v is number => v !== null);
+    const bias = median(right);
+    const reached =
+      right.length < 150 ? 'needs 150' : Math.abs(bias) <= 1 ? 'yes' : Math.abs(bias) <= 10 ? 'floor' : 'no';
+    return {
+      what: `median bias, km/s: ${flavour}`,
+      measured: bias,
+      count: right.length,
+      floor: '10',
+      goal: '1',
+      reached,
+      format: 'number',
+      note: `of ${all.length}`,
+    };
+  });
+}
+
+function printRows(rows: readonly ScoreRow[]): string {
+  return layOutTable(
+    ['', 'measured', 'count', 'floor', 'goal', 'reached', 'note'],
+    rows.map((row) => [
+      row.what,
+      row.format === 'percent' ? percent(Math.round(row.measured * row.count), row.count) : short(row.measured),
+      `${row.count}`,
+      row.floor,
+      row.goal,
+      row.reached,
+      row.note,
+    ]),
+  );
+}
+
+/** Prints every table about these outcomes. */
+function report(title: string, outcomes: readonly Outcome[], extra: readonly ScoreRow[] = []): string {
+  return [
+    `\n${title}\n`,
+    printRows([...score(outcomes), ...extra]),
+    '\nBy class (wrong: off by more than 1,000 km/s)\n',
+    tableByClass(outcomes),
+    '\nBy signal-to-noise ratio of the best feature\n',
+    tableBySignal(outcomes),
+    '\nSingle lines: true identity against the answer\n',
+    tableOfIdentities(outcomes),
+    '\nScatter over the Cramér-Rao bound\n',
+    tableOfBounds(outcomes),
+    '\nReliability of the best candidate (event: within 1,000 km/s)\n',
+    tableOfReliability(outcomes),
+    '',
+  ].join('\n');
+}
+
+/**
+ * Simulates, measures and scores; prints the tables and writes `accuracy.json` (every outcome) and `reliability.svg` into `out`.
+ *
+ * @throws where the engine throws on a spectrum: an accuracy bench must not swallow that
+ */
+export async function runAccuracy(options: AccuracyOptions): Promise<void> {
+  const { count, seed, perFlavour, sampleNight, out } = options;
+  const threads = options.threads ?? availableParallelism();
+  const pool = new Piscina({
+    filename: new URL('./bench/accuracy-thread.js', import.meta.url).href,
+    minThreads: threads,
+    maxThreads: threads,
+  });
+  const start = performance.now();
+  const tasks = planSpectra(count, seed, perFlavour);
+  const results: (Outcome | FlavourOffset)[] = [];
+  let done = 0;
+  await Promise.all(
+    tasks.map(async (task) => {
+      results.push(...((await pool.run(task, { name: 'scoreTask' })) as (Outcome | FlavourOffset)[]));
+      done++;
+      if (done % 100 === 0) process.stderr.write(`${Math.round((100 * done) / tasks.length)} %\n`);
+    }),
+  );
+  await pool.destroy();
+  // threads finish in any order; the report must not depend on it
+  const outcomes = results
+    .filter((r): r is Outcome => 'group' in r)
+    .sort((a, b) => (a.group === b.group ? a.seed - b.seed : a.group < b.group ? -1 : 1));
+  const offsets = results.filter((r): r is FlavourOffset => 'flavour' in r);
+  const seconds = (performance.now() - start) / 1000;
+
+  const title = `Accuracy on ${outcomes.length} simulated spectra, seed ${seed}, ${seconds.toFixed(0)} s on ${threads} threads`;
+  process.stdout.write(report(title, outcomes, flavourRows(offsets)));
+  mkdirSync(out, { recursive: true });
+  writeFileSync(
+    join(out, 'reliability.svg'),
+    reliabilitySvg(reliabilityBins(forecastsOf(outcomes)), 'Reliability, simulated spectra'),
+  );
+  writeFileSync(join(out, 'accuracy.json'), JSON.stringify({ count, seed, rows: score(outcomes), outcomes }));
+  process.stdout.write(`\nWritten: ${join(out, 'accuracy.json')}, ${join(out, 'reliability.svg')}\n`);
+  if (sampleNight) {
+    const { outcomes: sample, failures } = scoreSampleNight(sampleNight);
+    process.stdout.write(report(`The sample night in ${sampleNight}: ${sample.length} spectra`, sample));
+    for (const failure of failures) process.stdout.write(`not read: ${failure}\n`);
+    for (const line of describeEach(sample)) process.stdout.write(`${line}\n`);
+  }
+}
+
+/** One line for each spectrum whose answer is not right, or is claimed where there is none. */
+function describeEach(outcomes: readonly Outcome[]): string[] {
+  return outcomes
+    .filter((o) => (o.known.redshift !== null ? !o.judged.right : o.answer.redshift !== null))
+    .map((o) => {
+      const answered = o.answer.redshift === null ? 'no answer' : o.answer.redshift.toFixed(5);
+      const truth = o.known.redshift === null ? 'none' : o.known.redshift.toFixed(5);
+      const listed = o.judged.rightAnywhere ? ', listed' : '';
+      return `${o.known.artefacts[0]} ${o.answer.confidence}: ${answered}, true ${truth}${listed}, best S/N ${o.known.bestSignalToNoise}`;
+    });
+}
