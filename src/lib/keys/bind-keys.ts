@@ -1,0 +1,28 @@
+import type { CommandId, Scope } from './commands';
+import { keyOfEvent } from './key-of-event';
+import { keyChoices } from './key-choices.svelte';
+import { commandOfKey } from './resolve-key';
+import { takesKey } from './takes-key';
+
+export type KeyHandlers = Partial<Record<CommandId, () => void>>;
+
+/**
+ * An attachment that gives a page its keys while the element is on it: `{@attach bindKeys('review', { accept: … })}`.
+ * A command without a handler leaves its key to the browser.
+ */
+export function bindKeys(scope: Scope, handlers: KeyHandlers) {
+  return (): (() => void) => {
+    keyChoices.load();
+    function press(event: KeyboardEvent) {
+      const key = keyOfEvent(event);
+      if (key === null || event.defaultPrevented || takesKey(event.target as Element | null, key)) return;
+      const command = commandOfKey(key, scope, keyChoices.choices);
+      const handler = command && handlers[command];
+      if (!handler) return;
+      event.preventDefault();
+      handler();
+    }
+    document.addEventListener('keydown', press);
+    return () => document.removeEventListener('keydown', press);
+  };
+}

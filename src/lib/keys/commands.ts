@@ -1,0 +1,43 @@
+/** Where a command works: on every page, or while a spectrum is reviewed. */
+export type Scope = 'everywhere' | 'review';
+
+interface Command {
+  /** What it does, as the help sheet says it. */
+  label: string;
+  scope: Scope;
+  /** Key names as keyOfEvent gives them; the first is shown on buttons. */
+  keys: readonly string[];
+}
+
+/** Every command that has a key. The bindings, the help sheet and `aria-keyshortcuts` are all made from this table. */
+export const COMMANDS = {
+  help: { label: 'keys', scope: 'everywhere', keys: ['?'] },
+  left: { label: 'redshift 30 km/s down', scope: 'review', keys: ['ArrowLeft'] },
+  right: { label: 'redshift 30 km/s up', scope: 'review', keys: ['ArrowRight'] },
+  farLeft: { label: 'redshift 300 km/s down', scope: 'review', keys: ['Shift+ArrowLeft'] },
+  farRight: { label: 'redshift 300 km/s up', scope: 'review', keys: ['Shift+ArrowRight'] },
+  candidateUp: { label: 'candidate above', scope: 'review', keys: ['ArrowUp'] },
+  candidateDown: { label: 'candidate below', scope: 'review', keys: ['ArrowDown'] },
+  snap: { label: 'snap to the best fit near', scope: 'review', keys: ['v'] },
+  namePeak: { label: 'name the peak under the cursor', scope: 'review', keys: ['t'] },
+  zoomIn: { label: 'zoom in', scope: 'review', keys: ['+', '='] },
+  zoomOut: { label: 'zoom out', scope: 'review', keys: ['-'] },
+  whole: { label: 'all of the spectrum', scope: 'review', keys: ['0'] },
+  smooth: { label: 'smooth', scope: 'review', keys: ['m'] },
+  lines: { label: 'table of lines', scope: 'review', keys: ['l'] },
+  secure: { label: 'confidence: secure', scope: 'review', keys: ['s'] },
+  probable: { label: 'confidence: probable', scope: 'review', keys: ['p'] },
+  ambiguous: { label: 'confidence: ambiguous', scope: 'review', keys: ['a'] },
+  none: { label: 'confidence: none', scope: 'review', keys: ['n'] },
+  accept: { label: 'accept the candidate, and next', scope: 'review', keys: ['Enter'] },
+  setByHand: { label: 'set the moved redshift, and next', scope: 'review', keys: ['z'] },
+  noRedshift: { label: 'no redshift, and next', scope: 'review', keys: ['x'] },
+  undo: { label: 'undo the last verdict', scope: 'review', keys: ['u'] },
+  flags: { label: 'to the flags', scope: 'review', keys: ['f'] },
+  comment: { label: 'to the comment', scope: 'review', keys: ['c'] },
+  previous: { label: 'previous, without a verdict', scope: 'review', keys: [','] },
+  next: { label: 'next, without a verdict', scope: 'review', keys: ['.'] },
+} as const satisfies Record<string, Command>;
+
+export type CommandId = keyof typeof COMMANDS;
+export const COMMAND_IDS = Object.keys(COMMANDS) as CommandId[];
