@@ -70,7 +70,13 @@ export const ION_LINES: readonly LineEntry[] = [
   forbidden('[Ar III]', 7753.2422, {
     tiedTo: { name: '[Ar III] 7138', strongerOverThis: 4.1, source: 'NIST ASD transition probabilities (from memory)' },
   }),
-  forbidden('[S III]', 9071.11),
+  forbidden('[S III]', 9071.11, {
+    tiedTo: {
+      name: '[S III] 9533',
+      strongerOverThis: 2.47,
+      source: 'Mendoza & Zeippen (1982, MNRAS 199, 1025), from memory',
+    },
+  }),
   forbidden('[S III]', 9533.24),
   permitted('He I', 10833.3064),
 ];

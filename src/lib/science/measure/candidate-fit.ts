@@ -1,0 +1,148 @@
+import { equivalentWidthPrior } from './equivalent-width-prior';
+import { evidenceOfFamily } from './family-weight';
+import type { Feature } from './features';
+import { BROAD_COMPONENTS, CORE_COMPONENTS, type LineComponent } from './fit/components';
+import { fitErrors, type FitErrors } from './fit/fit-errors';
+import type { FitData } from './fit/fit-windows';
+import { lineByName } from '../constants/lines';
+import { jointFit, type JointFit } from './fit/joint-fit';
+import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
+import { LINE_FAMILIES, type LineFamily } from './line-families';
+import { breakLogRatio, LYMAN_COMPONENTS } from './lyman-alpha';
+import { lowerBound } from './noise';
+import type { WeighContext } from './weigh-context';
+import type { Suspect, SuspectKind } from './shortlist';
+
+/** A suspect after its joint fit. */
+export interface FittedCandidate {
+  fit: JointFit;
+  errors: FitErrors;
+  kind: SuspectKind;
+  family: LineFamily;
+  /** Log evidence against "nothing here", redshift integrated, artefacts allowed for. */
+  logEvidence: number;
+  /** Indices of the features its lines explain. */
+  explained: number[];
+  /** What the errors of the fit are multiplied by. */
+  noiseFactor: number;
+  /** Lyman-alpha alone: log ratio for the continuum break there. */
+  breakLogRatio: number;
+}
+
+const NARROW_OF_QUASARS = [
+  '[Ne V] 3427',
+  '[O II] 3727',
+  '[O II] 3730',
+  '[Ne III] 3870',
+  'H-beta 4863',
+  '[O III] 5008',
+  'H-alpha 6565',
+  '[N II] 6585',
+  '[S II] 6718',
+  '[S II] 6733',
+];
+
+const QUASAR_COMPONENTS: readonly LineComponent[] = [
+  ...CORE_COMPONENTS.filter((component) => NARROW_OF_QUASARS.includes(component.name)),
+  ...BROAD_COMPONENTS,
+];
+const NARROW_COMPONENTS = CORE_COMPONENTS.filter((component) => component.name !== 'Lyman-alpha 1216');
+
+/** Components fitted for each kind of suspect. */
+export const COMPONENTS_OF_KIND: Record<SuspectKind, readonly LineComponent[]> = {
+  narrow: NARROW_COMPONENTS,
+  broad: QUASAR_COMPONENTS,
+  lyman: LYMAN_COMPONENTS,
+};
+
+const LYMAN_ALPHA_REST = lineByName('Lyman-alpha 1216').wavelengthVacuum;
+
+/** Natural logarithm of the redshift range in ln(1+z) over which the prior is flat. */
+const LOG_REDSHIFT_RANGE = Math.log(Math.log(8.5 / 0.997));
+
+/**
+ * Fits a suspect and weighs it: the best line family's evidence at the maximum, times the width of the redshift peak
+ * over the flat prior in ln(1+z), less what artefacts would explain of the same features.
+ *
+ * @param steps Levenberg-Marquardt steps
+ */
+export function fitCandidate(context: WeighContext, suspect: Suspect, steps: number): FittedCandidate | null {
+  const sigmas: [number, number] = suspect.kind === 'broad' ? [150, suspect.sigmaKms] : [suspect.sigmaKms, 1900];
+  const data = suspect.kind === 'broad' ? withoutForest(context.data, suspect.logScale) : context.data;
+  const start = { logScale: suspect.logScale, sigmaKms: sigmas };
+  const fit = jointFit(data, COMPONENTS_OF_KIND[suspect.kind], start, steps);
+  if (!fit) return null;
+  const weighed = weighFit(context, fit, suspect.kind);
+  return weighed.logEvidence > -Infinity ? weighed : null;
+}
+
+/** Weight left to pixels in the Lyman-alpha forest. */
+const FOREST_WEIGHT = 0.1;
+
+/** A quasar's light beyond Lyman-alpha is eaten by the forest: its pixels say little of the line. */
+export function withoutForest(data: FitData, logScale: number): FitData {
+  const end = lowerBound(data.wavelength, LYMAN_ALPHA_REST * Math.exp(logScale));
+  if (end === 0 || logScale < Math.log(2.6)) return data;
+  const weight = Float64Array.from(data.weight);
+  for (let i = 0; i < end; i++) weight[i] *= FOREST_WEIGHT;
+  return { ...data, weight };
+}
+
+/** Weighs a fit; see `fitCandidate`. */
+export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind): FittedCandidate {
+  const { features, noiseFactor } = context;
+  const errors = fitErrors(fit);
+  let best = -Infinity;
+  let bestFamily: LineFamily = LINE_FAMILIES[0];
+  for (const family of LINE_FAMILIES) {
+    if (family.kind !== kind) continue;
+    const value = Math.log(family.weight) + evidenceOfFamily(fit, family, context);
+    if (value > best) {
+      best = value;
+      bestFamily = family;
+    }
+  }
+  const explained: number[] = [];
+  let artefacts = 0;
+  features.forEach((feature, index) => {
+    if (!explains(fit, feature)) return;
+    explained.push(index);
+    artefacts += feature.logArtefact;
+  });
+  const errorScale = misfitScale(fit, noiseFactor);
+  const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
+  const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
+  return {
+    fit,
+    errors,
+    kind,
+    family: bestFamily,
+    logEvidence: best + peakWidth - artefacts + broken + equivalentWidthPrior(context, fit),
+    explained,
+    noiseFactor: errorScale,
+    breakLogRatio: broken,
+  };
+}
+
+/**
+ * Scale of the errors: the measured noise factor, or the fit's own root reduced chi-square where that is larger by more
+ * than chance (two standard deviations of chi-square) allows.
+ */
+export function misfitScale(fit: JointFit, noiseFactor: number): number {
+  const reduced = fit.chiSquare / fit.degreesOfFreedom;
+  const chance = 1 + 2 * Math.sqrt(2 / fit.degreesOfFreedom);
+  return Math.max(noiseFactor, Math.sqrt(Math.max(0, reduced / chance)));
+}
+
+/** Whether a fitted line that stands out by 2.5 sigma or more lies on the feature. */
+export function explains(fit: JointFit, feature: Feature): boolean {
+  const stretch = Math.exp(fit.logScale);
+  const n = fit.components.length;
+  return fit.components.some((component, i) => {
+    if (!(fit.amplitude[i] * Math.sqrt(fit.gram[i * n + i]) > 2.5)) return false;
+    const sigma = Math.hypot(fit.sigmaKms[component.width], feature.sigmaKms, 60) / SPEED_OF_LIGHT_KMS;
+    return component.members.some(
+      (member) => Math.abs(Math.log((member.rest * stretch) / feature.wavelength)) < 2.5 * sigma,
+    );
+  });
+}

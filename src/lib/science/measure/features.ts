@@ -1,0 +1,130 @@
+import { MASK } from '$lib/domain/spectrum';
+import type { FilterBank } from './detect';
+import { spikeAdvantage } from './cosmic-rays';
+import { CONTINUUM_FAULT } from './family-weight';
+import { lowerBound } from './noise';
+import type { WorkingSpectrum } from './working-spectrum';
+
+/** A bump that stands out, whatever made it. */
+export interface Feature {
+  /** Observed wavelength, vacuum barycentric ångström. */
+  wavelength: number;
+  logWavelength: number;
+  significance: number;
+  /** Index of the filter that sees it best. */
+  filter: number;
+  sigmaKms: number;
+  /** Lies on a strong sky line or telluric band. */
+  nearSky: boolean;
+  /** Lies at the edge of a gap or of the data. */
+  nearEdge: boolean;
+  /** Log odds that something that is no line made it, against one resolution element without any feature. */
+  logArtefact: number;
+}
+
+/** How often something that is no line makes a feature, per resolution element: clean sky, bad sky, edge, spikes. */
+const ARTEFACT_RATE = { clean: 1e-5, sky: 6e-4, edge: 4e-4, spike: 1e-4 } as const;
+
+/**
+ * Local maxima of significance over all widths of a bank.
+ *
+ * @param threshold least significance
+ * @returns features in decreasing significance, apart by at least their own width
+ */
+export function findFeatures(
+  working: WorkingSpectrum,
+  residual: Float64Array,
+  continuum: Float64Array,
+  bank: FilterBank,
+  threshold: number,
+): Feature[] {
+  const { count, start, step, filters } = bank;
+  const best = new Float64Array(count);
+  const which = new Uint8Array(count);
+  filters.forEach((filter, f) => {
+    for (let k = 0; k < count; k++) {
+      if (filter.significance[k] > best[k]) {
+        best[k] = filter.significance[k];
+        which[k] = f;
+      }
+    }
+  });
+  const maxima: number[] = [];
+  for (let k = 1; k < count - 1; k++) {
+    if (best[k] >= threshold && best[k] >= best[k - 1] && best[k] > best[k + 1]) maxima.push(k);
+  }
+  maxima.sort((a, b) => best[b] - best[a] || a - b);
+  const features: Feature[] = [];
+  for (const k of maxima) {
+    const logWavelength = start + k * step;
+    const sigmaKms = filters[which[k]].sigmaKms;
+    const wavelength = Math.exp(logWavelength);
+    const pixel = Math.min(working.count - 1, lowerBound(working.wavelength, wavelength));
+    const lsf = working.lsfSigma[pixel] / wavelength;
+    const reach = 2.5 * Math.hypot(lsf, sigmaKms / 299792.458);
+    if (features.some((other) => Math.abs(other.logWavelength - logWavelength) < reach)) continue;
+    const { nearSky, nearEdge } = surroundings(working, pixel, wavelength, 1.2 * reach);
+    const spike = spikeAdvantage(working, residual, highestPixel(working, residual, pixel)).advantage;
+    const rate =
+      (nearSky ? ARTEFACT_RATE.sky : nearEdge ? ARTEFACT_RATE.edge : ARTEFACT_RATE.clean) +
+      ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike)));
+    const s = bounded(best[k], filters[which[k]].information[k], continuum[pixel], wavelength * (reach / 2.5));
+    // A positive bump of unknown height, log-uniform over a factor 1,000, as likelihood odds times its rate.
+    const logOdds = 0.5 * s * s - Math.log((s * Math.log(1000)) / 2.507);
+    const logArtefact = softPlus(Math.log(rate) + logOdds);
+    features.push({
+      wavelength,
+      logWavelength,
+      significance: best[k],
+      filter: which[k],
+      sigmaKms,
+      nearSky,
+      nearEdge,
+      logArtefact,
+    });
+    if (features.length >= 60) break;
+  }
+  return features;
+}
+
+/** Significance with the faults of the continuum counted as noise (see `CONTINUUM_FAULT`). */
+function bounded(significance: number, information: number, level: number, sigmaAngstrom: number): number {
+  const fault = (CONTINUUM_FAULT[0] * level * 2.3548 * sigmaAngstrom) ** 2 * information;
+  return significance / Math.sqrt(1 + fault);
+}
+
+/** ln(1 + exp(x)). */
+function softPlus(x: number): number {
+  return x > 30 ? x : Math.log1p(Math.exp(x));
+}
+
+function surroundings(
+  working: WorkingSpectrum,
+  pixel: number,
+  wavelength: number,
+  logReach: number,
+): { nearSky: boolean; nearEdge: boolean } {
+  const half = wavelength * logReach;
+  let sky = 0;
+  let bad = 0;
+  let seen = 0;
+  for (let i = pixel; i >= 0 && wavelength - working.wavelength[i] < half; i--) tally(i);
+  for (let i = pixel + 1; i < working.count && working.wavelength[i] - wavelength < half; i++) tally(i);
+  const reachesEnd =
+    working.wavelength[0] > wavelength - half || working.wavelength[working.count - 1] < wavelength + half;
+  return { nearSky: sky > 0.2 * seen, nearEdge: reachesEnd || bad > 0.15 * seen };
+
+  function tally(i: number): void {
+    seen++;
+    if (!(working.weight[i] > 0)) bad++;
+    if (working.mask[i] & (MASK.skyLine | MASK.telluric)) sky++;
+  }
+}
+
+function highestPixel(working: WorkingSpectrum, residual: Float64Array, pixel: number): number {
+  let best = pixel;
+  for (let i = Math.max(0, pixel - 2); i <= Math.min(working.count - 1, pixel + 2); i++) {
+    if (working.weight[i] > 0 && !(residual[i] <= residual[best] && working.weight[best] > 0)) best = i;
+  }
+  return best;
+}

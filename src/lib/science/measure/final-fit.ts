@@ -1,0 +1,88 @@
+import { COMPONENTS_OF_KIND, misfitScale, withoutForest, type FittedCandidate } from './candidate-fit';
+import type { FilterBank } from './detect';
+import { FULL_COMPONENTS, type LineComponent } from './fit/components';
+import { fitErrors, type FitErrors } from './fit/fit-errors';
+import { jointFit, type JointFit } from './fit/joint-fit';
+import { lymanAlphaPeak } from './lyman-alpha';
+import type { WeighContext } from './weigh-context';
+
+/** The answer's fit at full depth. */
+export interface FinalFit {
+  fit: JointFit;
+  errors: FitErrors;
+  /** What errors are multiplied by. */
+  errorScale: number;
+  /** ln(1+z) that is reported: that of the fit, or of Lyman-alpha's peak. */
+  logScale: number;
+  lyman: { fwhmKms: number; wingShare: number } | null;
+}
+
+const FULL_NARROW = FULL_COMPONENTS.filter((component) => component.name !== 'Lyman-alpha 1216');
+
+function componentsFor(kind: FittedCandidate['kind']): readonly LineComponent[] {
+  return kind === 'narrow' ? FULL_NARROW : COMPONENTS_OF_KIND[kind];
+}
+
+/** Fits a candidate again with every line of its kind, to convergence. */
+export function finalFit(context: WeighContext, candidate: FittedCandidate, steps: number): FinalFit {
+  const start = { logScale: candidate.fit.logScale, sigmaKms: candidate.fit.sigmaKms };
+  const data = candidate.kind === 'broad' ? withoutForest(context.data, start.logScale) : context.data;
+  const fit = jointFit(data, componentsFor(candidate.kind), start, steps) ?? candidate.fit;
+  const errors = fitErrors(fit);
+  const errorScale = misfitScale(fit, context.noiseFactor);
+  if (candidate.kind !== 'lyman') return { fit, errors, errorScale, logScale: fit.logScale, lyman: null };
+  const peak = lymanAlphaPeak(context.data, fit);
+  return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak };
+}
+
+/** Significance of a bank's best-matching narrow filter at an observed wavelength; 0 outside. */
+export function significanceAt(bank: FilterBank, wavelength: number, sigmaKms: number): number {
+  const filter = bank.filters.reduce((best, next) =>
+    Math.abs(Math.log(next.sigmaKms / sigmaKms)) < Math.abs(Math.log(best.sigmaKms / sigmaKms)) ? next : best,
+  );
+  const node = (Math.log(wavelength) - bank.start) / bank.step;
+  const k = Math.round(node);
+  let best = 0;
+  for (let j = Math.max(0, k - 1); j <= Math.min(bank.count - 1, k + 1); j++)
+    best = Math.max(best, filter.significance[j]);
+  return best;
+}
+
+/** What speaks for a fit, line by line. */
+export interface LineSupport {
+  name: string;
+  significance: number;
+  wavelengthObserved: number;
+}
+
+/**
+ * Lines of signal-to-noise 4 or more from different transitions: each in the joint fit and, on its own, in the filter
+ * (3 sigma); tied lines count when the filter sees them, an unresolved doublet counts once.
+ */
+export function supportingLines(final: FinalFit, bank: FilterBank): LineSupport[] {
+  const { fit, errors } = final;
+  const support: LineSupport[] = [];
+  fit.components.forEach((component, i) => {
+    const significance = fit.amplitude[i] / (errors.amplitude[i] * final.errorScale);
+    if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red')) return;
+    for (const member of component.members) {
+      const wavelengthObserved = member.rest * Math.exp(fit.logScale);
+      const width = component.width === 1 ? 350 : fit.sigmaKms[0];
+      const own = significanceAt(bank, wavelengthObserved, width);
+      const needed = component.width === 1 ? -Infinity : member === component.members[0] ? 3 : 4;
+      if (own < needed) continue;
+      const merged = support.some(
+        (other) =>
+          Math.abs(Math.log(other.wavelengthObserved / wavelengthObserved)) < mergeDistance(fit, component.width),
+      );
+      if (!merged)
+        support.push({ name: member.entry.name, significance: significance * member.share, wavelengthObserved });
+    }
+  });
+  return support;
+}
+
+/** Lines nearer than this (in ln wavelength) can't be told to be two. */
+function mergeDistance(fit: JointFit, width: 0 | 1): number {
+  return width === 1 ? 0.02 : Math.max(350, 2.5 * fit.sigmaKms[0]) / 299792.458;
+}

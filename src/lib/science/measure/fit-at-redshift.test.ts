@@ -1,0 +1,33 @@
+import { describe, expect, it } from 'vitest';
+import { estimateContinuum } from './estimate-continuum';
+import { fitAtRedshift } from './fit-at-redshift';
+import { snapRedshift } from './snap-redshift';
+import { GALAXY_LINES, testSpectrum } from './test-spectrum';
+
+const spectrum = testSpectrum({ redshift: 0.2, lines: GALAXY_LINES, seed: 3 });
+const input = { ...spectrum, continuum: estimateContinuum(spectrum) };
+
+describe('fitAtRedshift', () => {
+  it('gives H-alpha its flux within errors and draws a model through the spectrum', () => {
+    const result = fitAtRedshift(input, 0.2);
+    const alpha = result.lines.find((entry) => entry.line.name === 'H-alpha 6565')!;
+    expect(Math.abs(alpha.flux - 100)).toBeLessThan(4 * alpha.fluxError);
+    let chiSquare = 0;
+    for (let i = 0; i < spectrum.flux.length; i++) chiSquare += (spectrum.flux[i] - result.model[i]) ** 2;
+    expect(chiSquare / spectrum.flux.length).toBeLessThan(1.15);
+  });
+
+  it('gains more at the true redshift than 500 km/s off', () => {
+    expect(fitAtRedshift(input, 0.2).gain).toBeGreaterThan(fitAtRedshift(input, 0.202, { fwhmKms: 190 }).gain + 100);
+  });
+
+  it('returns no lines where none is covered', () => {
+    expect(fitAtRedshift({ ...input, variance: spectrum.variance.map(() => Infinity) }, 0.2).lines).toEqual([]);
+  });
+});
+
+describe('snapRedshift', () => {
+  it('goes to the nearest maximum of the likelihood', () => {
+    expect(Math.abs(snapRedshift(input, 0.2008, 400) - 0.2)).toBeLessThan(1e-4);
+  });
+});

@@ -1,0 +1,145 @@
+import { DOUBLET_RATIO_BOUNDS, EMISSION_LINES, lineByName, type LineEntry } from '../../constants/lines';
+
+/** One line of a component; its flux is the component's amplitude times `share`. */
+export interface ComponentMember {
+  entry: LineEntry;
+  rest: number;
+  share: number;
+}
+
+/** A set of lines with one amplitude: a single line, or lines whose ratio atomic physics fixes. */
+export interface LineComponent {
+  /** Name of the strongest member, which the amplitude belongs to. */
+  name: string;
+  members: ComponentMember[];
+  /** Which width parameter it follows: 0 narrow, 1 broad. */
+  width: 0 | 1;
+}
+
+/** A prior on the ratio of two components of a density- or opacity-sensitive doublet. */
+export interface RatioPrior {
+  numerator: string;
+  denominator: string;
+  mean: number;
+  sigma: number;
+  low: number;
+  high: number;
+}
+
+const oxygen = DOUBLET_RATIO_BOUNDS.oxygenTwo;
+const sulphur = DOUBLET_RATIO_BOUNDS.sulphurTwo;
+
+/** Doublets whose unresolved centroid would else float: typical densities of H II regions, within the physical limits. */
+export const RATIO_PRIORS: readonly RatioPrior[] = [
+  { numerator: '[O II] 3730', denominator: '[O II] 3727', mean: 1.3, sigma: 0.2, low: oxygen.low, high: oxygen.high },
+  { numerator: '[S II] 6718', denominator: '[S II] 6733', mean: 1.3, sigma: 0.2, low: sulphur.low, high: sulphur.high },
+  { numerator: 'Mg II 2796', denominator: 'Mg II 2804', mean: 1.5, sigma: 0.3, low: 1, high: 2 },
+  { numerator: 'C IV 1548', denominator: 'C IV 1551', mean: 1.5, sigma: 0.3, low: 1, high: 2 },
+  { numerator: '[C III] 1907', denominator: 'C III] 1909', mean: 1.4, sigma: 0.25, low: 0.2, high: 1.6 },
+];
+
+const tied = new Map<string, LineEntry[]>();
+for (const line of EMISSION_LINES) {
+  if (line.tiedTo) tied.set(line.tiedTo.name, [...(tied.get(line.tiedTo.name) ?? []), line]);
+}
+
+/** The component of a line with every weaker line tied to it. */
+export function componentOf(name: string, width: 0 | 1 = 0): LineComponent {
+  const entry = lineByName(name);
+  const members = [{ entry, rest: entry.wavelengthVacuum, share: 1 }];
+  for (const weaker of tied.get(name) ?? []) {
+    members.push({ entry: weaker, rest: weaker.wavelengthVacuum, share: 1 / weaker.tiedTo!.strongerOverThis });
+  }
+  return { name, members, width };
+}
+
+const CORE_NAMES = [
+  'Lyman-alpha 1216',
+  'C IV 1548',
+  'C IV 1551',
+  'He II 1640',
+  '[C III] 1907',
+  'C III] 1909',
+  'Mg II 2796',
+  'Mg II 2804',
+  '[Ne V] 3427',
+  '[O II] 3727',
+  '[O II] 3730',
+  '[Ne III] 3870',
+  'H-delta 4103',
+  'H-gamma 4342',
+  'H-beta 4863',
+  '[O III] 5008',
+  'He I 5877',
+  '[O I] 6302',
+  'H-alpha 6565',
+  '[N II] 6585',
+  '[S II] 6718',
+  '[S II] 6733',
+  '[Ar III] 7138',
+  '[S III] 9533',
+  'He I 10833',
+  'Paschen-beta 12822',
+  'Paschen-alpha 18756',
+];
+
+/** Narrow lines that decide a redshift. */
+export const CORE_COMPONENTS: readonly LineComponent[] = CORE_NAMES.map((name) => componentOf(name));
+
+const MORE_NAMES = [
+  'N V 1239',
+  'N V 1243',
+  'Si IV 1394',
+  'Si IV 1403',
+  'He II 3204',
+  'H-eta 3836',
+  'H-zeta 3890',
+  'H-epsilon 3971',
+  '[S II] 4070',
+  '[O III] 4364',
+  'He I 4473',
+  'He II 4687',
+  '[N II] 5756',
+  '[S III] 6314',
+  'He I 6680',
+  'He I 7067',
+  '[O II] 7322',
+  '[O II] 7333',
+  'Paschen-delta 10052',
+  'Paschen-gamma 10941',
+];
+
+/** Narrow lines fitted for the answer that is reported. */
+export const FULL_COMPONENTS: readonly LineComponent[] = [
+  ...CORE_COMPONENTS,
+  ...MORE_NAMES.map((name) => componentOf(name)),
+];
+
+const pair = (a: string, b: string, width: 0 | 1): LineComponent => {
+  const first = lineByName(a);
+  const second = lineByName(b);
+  return {
+    name: a,
+    width,
+    members: [
+      { entry: first, rest: first.wavelengthVacuum, share: 0.5 },
+      { entry: second, rest: second.wavelengthVacuum, share: 0.5 },
+    ],
+  };
+};
+
+/** Broad permitted lines of quasars; doublets count as one broad line. */
+export const BROAD_COMPONENTS: readonly LineComponent[] = [
+  componentOf('Lyman-alpha 1216', 1),
+  pair('N V 1239', 'N V 1243', 1),
+  pair('Si IV 1394', 'Si IV 1403', 1),
+  pair('C IV 1548', 'C IV 1551', 1),
+  componentOf('He II 1640', 1),
+  componentOf('C III] 1909', 1),
+  pair('Mg II 2796', 'Mg II 2804', 1),
+  componentOf('H-delta 4103', 1),
+  componentOf('H-gamma 4342', 1),
+  componentOf('H-beta 4863', 1),
+  componentOf('H-alpha 6565', 1),
+  componentOf('Paschen-beta 12822', 1),
+];

@@ -1,0 +1,196 @@
+import { choleskyInPlace, choleskySolve, nonNegativeSolve } from './solve';
+import { buildProfiles } from './component-profiles';
+import type { LineComponent } from './components';
+import { cutWindows, type FitData, type FitWindow } from './fit-windows';
+import { addRatioPriors } from './ratio-priors';
+import { shapeEquations } from './shape-equations';
+
+/** Priors on ln sigma (km/s): mean and standard deviation, narrow and broad; and hard bounds. */
+const WIDTH_PRIOR = [
+  { mean: Math.log(75), sigma: 0.8, low: Math.log(8), high: Math.log(650) },
+  { mean: Math.log(1900), sigma: 0.5, low: Math.log(600), high: Math.log(5500) },
+] as const;
+
+/** State and result of a joint fit. */
+export interface JointFit {
+  components: readonly LineComponent[];
+  windows: FitWindow[];
+  /** ln(1+z). */
+  logScale: number;
+  /** Velocity sigmas, km/s, narrow and broad. */
+  sigmaKms: [number, number];
+  /** Flux of every component. */
+  amplitude: Float64Array;
+  free: Uint8Array;
+  /** Normal equations of the amplitudes at the solution, continuum eliminated, no priors. */
+  gram: Float64Array;
+  right: Float64Array;
+  /** Drop of chi-square against the local continua alone. */
+  gain: number;
+  chiSquare: number;
+  degreesOfFreedom: number;
+  /** Information on (ln(1+z), ln sigma narrow, ln sigma broad) after the amplitudes are eliminated, 3 by 3. */
+  shapeInformation: Float64Array;
+  /** Rows: amplitudes' response to the shape parameters, count by 3 (minus G^-1 H). */
+  response: Float64Array;
+  /** Information of the amplitudes with ratio priors, over the free set; row-major count by count. */
+  gramWithPriors: Float64Array;
+}
+
+/**
+ * Joint least-squares fit of line components with one redshift and tied widths: Levenberg-Marquardt on
+ * (ln(1+z), ln sigma) with the linear amplitudes solved inside, non-negative, and each window's continuum eliminated.
+ *
+ * @param start ln(1+z) and velocity sigmas to start from
+ * @param steps Levenberg-Marquardt steps at most; 0 solves the amplitudes alone
+ * @param hold hold ln(1+z) (0), narrow (1) or broad (2) width where true
+ * @returns the fit, or null where no component is covered by usable pixels
+ * Source: Golub & Pereyra (1973, SIAM J. Numer. Anal. 10, 413) for variable projection; Marquardt (1963).
+ */
+export function jointFit(
+  data: FitData,
+  components: readonly LineComponent[],
+  start: { logScale: number; sigmaKms: readonly [number, number] },
+  steps: number,
+  hold: readonly [boolean, boolean, boolean] = [false, false, false],
+): JointFit | null {
+  const windows = cutWindows(data, components, start.logScale, start.sigmaKms);
+  if (windows.length === 0) return null;
+  let state = solveAt(data, components, windows, start.logScale, [...start.sigmaKms], hold, null);
+  let damping = 1e-3;
+  for (let step = 0; step < steps; step++) {
+    const move = shapeStep(state, damping, hold);
+    if (!move) break;
+    const width = (k: 0 | 1) =>
+      Math.exp(
+        Math.min(WIDTH_PRIOR[k].high, Math.max(WIDTH_PRIOR[k].low, Math.log(state.fit.sigmaKms[k]) + move[k + 1])),
+      );
+    const trial = solveAt(
+      data,
+      components,
+      windows,
+      state.fit.logScale + move[0],
+      [width(0), width(1)],
+      hold,
+      state.fit,
+    );
+    const better = trial.objective >= state.objective - 1e-9 * Math.abs(state.objective);
+    if (better) {
+      const change = trial.objective - state.objective;
+      state = trial;
+      damping = Math.max(1e-7, damping * 0.1);
+      if (change < 1e-4 && step > 0) break;
+    } else {
+      damping *= 30;
+      if (damping > 1e6) break;
+    }
+  }
+  return state.fit;
+}
+
+interface State {
+  fit: JointFit;
+  /** Gain minus prior penalties, to be maximised. */
+  objective: number;
+  gradient: Float64Array;
+}
+
+function shapeStep(state: State, damping: number, hold: readonly boolean[]): Float64Array | null {
+  const matrix = Float64Array.from(state.fit.shapeInformation);
+  const right = Float64Array.from(state.gradient);
+  for (let k = 0; k < 3; k++) {
+    if (hold[k] || !(matrix[k * 3 + k] > 0)) {
+      for (let j = 0; j < 3; j++) matrix[k * 3 + j] = matrix[j * 3 + k] = 0;
+      matrix[k * 3 + k] = 1;
+      right[k] = 0;
+    } else matrix[k * 3 + k] *= 1 + damping;
+  }
+  if (!choleskyInPlace(matrix, 3)) return null;
+  choleskySolve(matrix, right, 3);
+  // Half a velocity sigma of the narrow lines, or half a wide one, is as far as a linear step may be believed.
+  right[1] = Math.max(-0.7, Math.min(0.7, right[1]));
+  right[2] = Math.max(-0.5, Math.min(0.5, right[2]));
+  return right;
+}
+
+function solveAt(
+  data: FitData,
+  components: readonly LineComponent[],
+  windows: FitWindow[],
+  logScale: number,
+  sigmaKms: [number, number],
+  hold: readonly boolean[],
+  previous: JointFit | null,
+): State {
+  const n = components.length;
+  const gram = new Float64Array(n * n);
+  const right = new Float64Array(n);
+  const profiles = buildProfiles(data, components, windows, logScale, sigmaKms);
+  let power = 0;
+  let usable = 0;
+  windows.forEach((window, w) => {
+    power += window.power;
+    usable += window.usable - window.basis.length;
+    const { from, residual, components: inside } = window;
+    inside.forEach((c, a) => {
+      const phi = profiles.profile[w][a];
+      const onBasis = profiles.onBasis[w][a];
+      let toFlux = 0;
+      for (let i = 0; i < phi.length; i++) toFlux += data.weight[from + i] * phi[i] * residual[i];
+      right[c] += toFlux;
+      for (let b = 0; b <= a; b++) {
+        const other = profiles.profile[w][b];
+        const otherOnBasis = profiles.onBasis[w][b];
+        let sum = 0;
+        for (let i = 0; i < phi.length; i++) sum += data.weight[from + i] * phi[i] * other[i];
+        for (let k = 0; k < onBasis.length; k++) sum -= onBasis[k] * otherOnBasis[k];
+        gram[c * n + inside[b]] += sum;
+        if (b !== a) gram[inside[b] * n + c] += sum;
+      }
+    });
+  });
+  const withPriors = Float64Array.from(gram);
+  const amplitudes0 = previous?.amplitude ?? nonNegativeSolve(gram, right, n, new Uint8Array(n).fill(1));
+  addRatioPriors(components, amplitudes0, withPriors, n);
+  const free = new Uint8Array(n).fill(1);
+  const amplitude = nonNegativeSolve(withPriors, right, n, free);
+  let gain = 0;
+  let priorCost = 0;
+  for (let i = 0; i < n; i++) {
+    gain += 2 * amplitude[i] * right[i];
+    for (let j = 0; j < n; j++) {
+      gain -= amplitude[i] * gram[i * n + j] * amplitude[j];
+      priorCost += amplitude[i] * (withPriors[i * n + j] - gram[i * n + j]) * amplitude[j];
+    }
+  }
+  const shape = shapeEquations(data, components, windows, profiles, amplitude, free, withPriors);
+  for (const k of [0, 1] as const) {
+    const prior = WIDTH_PRIOR[k];
+    const used = components.some((component) => component.width === k);
+    if (!used) continue;
+    const deviation = (Math.log(sigmaKms[k]) - prior.mean) / prior.sigma;
+    priorCost += deviation * deviation;
+    shape.information[(k + 1) * 4] += 1 / prior.sigma ** 2;
+    shape.gradient[k + 1] -= deviation / prior.sigma;
+  }
+  let parameters = 0;
+  for (let i = 0; i < n; i++) if (free[i]) parameters++;
+  for (let k = 0; k < 3; k++) if (!hold[k] && shape.information[k * 4] > 0) parameters++;
+  const fit: JointFit = {
+    components,
+    windows,
+    logScale,
+    sigmaKms,
+    amplitude,
+    free,
+    gram,
+    right,
+    gain,
+    chiSquare: power - gain,
+    degreesOfFreedom: Math.max(1, usable - parameters),
+    shapeInformation: shape.information,
+    response: shape.response,
+    gramWithPriors: withPriors,
+  };
+  return { fit, objective: gain - priorCost, gradient: shape.gradient };
+}

@@ -1,0 +1,84 @@
+import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
+import { normalCumulative, normalDensity } from '../normal-distribution';
+
+/** Where profiles are written: the pixel grid and the line-spread function. */
+export interface ProfileGrid {
+  edges: Float64Array;
+  wavelength: Float64Array;
+  lsfSigma: Float64Array;
+}
+
+/** Sigmas of a Gaussian beyond which a profile is cut (6e-7 of its flux lies outside). */
+export const PROFILE_REACH = 5;
+
+/** Index of the pixel whose edges hold a wavelength, clamped to the grid. */
+export function pixelOf(edges: Float64Array, wavelength: number): number {
+  let low = 0;
+  let high = edges.length - 1;
+  while (high - low > 1) {
+    const middle = (low + high) >> 1;
+    if (edges[middle] <= wavelength) low = middle;
+    else high = middle;
+  }
+  return low;
+}
+
+/**
+ * Adds one pixel-integrated Gaussian of unit flux, convolved with the line-spread function, and its derivatives.
+ *
+ * The mean flux density of a pixel is (Phi(b) - Phi(a)) / width, with a and b its edges in sigmas; the derivatives with
+ * respect to ln(1+z) and to the logarithm of the velocity sigma follow from the normal density at the edges.
+ *
+ * @param centre observed centre, ångström
+ * @param sigmaKms intrinsic velocity sigma, km/s
+ * @param amplitude factor applied to everything
+ * @param from first pixel of the output arrays
+ * @param length number of pixels of the output arrays
+ * @param profile added: profile, 1/Å
+ * @param byShift added: d profile / d ln(1+z)
+ * @param byWidth added: d profile / d ln sigmaKms
+ */
+export function addLineProfile(
+  grid: ProfileGrid,
+  centre: number,
+  sigmaKms: number,
+  amplitude: number,
+  from: number,
+  length: number,
+  profile: Float64Array,
+  byShift: Float64Array | null,
+  byWidth: Float64Array | null,
+  offset: number = 0,
+): void {
+  const { edges, lsfSigma } = grid;
+  const middle = pixelOf(edges, centre);
+  const lsf = lsfSigma[middle];
+  const intrinsic = (centre * sigmaKms) / SPEED_OF_LIGHT_KMS;
+  const sigma = Math.sqrt(lsf * lsf + intrinsic * intrinsic);
+  const low = centre - PROFILE_REACH * sigma;
+  const high = centre + PROFILE_REACH * sigma;
+  let i = Math.max(from, pixelOf(edges, low));
+  const end = from + length;
+  if (i >= end || edges[i] > high) return;
+  const widthFactor = (intrinsic * intrinsic) / (sigma * sigma);
+  let t = (edges[i] - centre) / sigma;
+  let cumulative = normalCumulative(t);
+  let density = normalDensity(t);
+  for (; i < end && edges[i] < high; i++) {
+    const nextT = (edges[i + 1] - centre) / sigma;
+    const nextCumulative = normalCumulative(nextT);
+    const nextDensity = normalDensity(nextT);
+    const scale = amplitude / (edges[i + 1] - edges[i]);
+    const k = i - from + offset;
+    profile[k] += scale * (nextCumulative - cumulative);
+    if (byShift && byWidth) {
+      const dWidth = -scale * (nextT * nextDensity - t * density);
+      // Moving the line by d ln(1+z) shifts it by its wavelength and widens its intrinsic part in proportion.
+      byShift[k] += (-scale * (nextDensity - density) * centre) / sigma + dWidth * widthFactor;
+      byWidth[k] += dWidth * widthFactor;
+    }
+    t = nextT;
+    cumulative = nextCumulative;
+    density = nextDensity;
+  }
+}

@@ -1,0 +1,165 @@
+import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
+import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
+import { fitCandidate, type FittedCandidate } from './candidate-fit';
+import { BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
+import { findFeatures, type Feature } from './features';
+import { medianInPlace } from './order-statistics';
+import { lowerBound } from './noise';
+import type { PreparedSpectrum } from './prepare';
+import { BROAD_SCAN_LINES, NARROW_SCAN_LINES, scanRedshifts } from './scan';
+import type { MeasureSettings } from './settings';
+import { identitiesOf, lymanCovered, shortlist, type Suspect } from './shortlist';
+import type { WeighContext } from './weigh-context';
+
+/** An absorption redshift. */
+export interface AbsorptionCandidate extends AbsorptionEvidence {
+  logScale: number;
+}
+
+/** Every hypothesis about a spectrum, weighed. */
+export interface Hypotheses {
+  context: WeighContext;
+  features: Feature[];
+  /** Emission candidates, best first, each with the absorption at its redshift added to its evidence. */
+  candidates: FittedCandidate[];
+  /** Absorption redshifts beyond the stars', best first. */
+  absorption: AbsorptionCandidate[];
+  /** A star within 600 km/s of rest. */
+  star: AbsorptionCandidate;
+  banks: { lines: FilterBank; bands: FilterBank };
+  relativeResolution: number;
+}
+
+const IDENTITIES = [
+  'H-alpha 6565',
+  '[O III] 5008',
+  '[O II] 3730',
+  'Lyman-alpha 1216',
+  'H-beta 4863',
+  '[S III] 9533',
+  'Paschen-alpha 18756',
+];
+const STAR_KMS = 600;
+/** Absorption is looked for up to here: beyond, its strong features leave the optical. */
+const ABSORPTION_REDSHIFT_LIMIT = 1.6;
+
+/** Runs detection, scan, shortlist and joint fits, and weighs every hypothesis. */
+export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSettings): Hypotheses {
+  const { working, continuum, stiffContinuum, residual, stiffResidual } = prepared;
+  const middle = working.count >> 1;
+  const relativeResolution = working.lsfSigma[middle] / working.wavelength[middle];
+  const step = Math.min(4e-4, Math.max(5e-5, (relativeResolution * 2.355) / 3));
+  const grid = { ...working, residual };
+  const lines = filterBank(grid, NARROW_SIGMAS_KMS, step, settings.noiseCheck);
+  const bands = filterBank({ ...working, residual: stiffResidual }, BROAD_SIGMAS_KMS, 1e-3, settings.noiseCheck);
+  const features = findFeatures(working, residual, continuum, lines, 4);
+  const context: WeighContext = {
+    data: working,
+    continuum,
+    stiffContinuum,
+    features,
+    noiseFactor: lines.filters[0].noiseFactor,
+    logNoiseFlux: typicalLogNoise(lines),
+  };
+  const suspects = suspectsOf(lines, bands, features, relativeResolution, context.logNoiseFlux, settings);
+  const level = (wavelength: number) =>
+    stiffContinuum[Math.min(working.count - 1, lowerBound(working.wavelength, wavelength))];
+  const absorptionAt = (logScale: number, star: boolean): AbsorptionCandidate => ({
+    logScale,
+    ...absorptionEvidence(
+      { lines, bands },
+      logScale,
+      relativeResolution,
+      context.logNoiseFlux,
+      star,
+      context.noiseFactor,
+      level,
+    ),
+  });
+  const candidates: FittedCandidate[] = [];
+  for (const suspect of suspects) {
+    const fitted = fitCandidate(context, suspect, 5);
+    if (!fitted) continue;
+    fitted.logEvidence += Math.max(0, absorptionAt(fitted.fit.logScale, false).logEvidence);
+    candidates.push(fitted);
+  }
+  const range = [settings.redshiftMinimum, Math.min(settings.redshiftMaximum, ABSORPTION_REDSHIFT_LIMIT)] as const;
+  const peaks = scanRedshifts(lines, ABSORPTION_SCAN_LINES, range, 6, 1000, -1);
+  const starLimit = STAR_KMS / SPEED_OF_LIGHT_KMS;
+  const absorption = peaks
+    .filter((peak) => Math.abs(peak.logScale) > starLimit)
+    .map((peak) => absorptionAt(peak.logScale, false))
+    .sort((a, b) => b.logEvidence - a.logEvidence);
+  const star = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
+    .map((logScale) => absorptionAt(logScale, true))
+    .sort((a, b) => b.logEvidence - a.logEvidence)[0];
+  return {
+    context,
+    features,
+    candidates: distinct(candidates, relativeResolution),
+    absorption,
+    star,
+    banks: { lines, bands },
+    relativeResolution,
+  };
+}
+
+function typicalLogNoise(bank: FilterBank): number {
+  const filter = bank.filters[Math.min(1, bank.filters.length - 1)];
+  const scratch = new Float64Array(bank.count);
+  let used = 0;
+  for (let k = 0; k < bank.count; k++) if (filter.information[k] > 0) scratch[used++] = filter.information[k];
+  return used > 0 ? -0.5 * Math.log(medianInPlace(scratch, used)) : 0;
+}
+
+function suspectsOf(
+  lines: FilterBank,
+  bands: FilterBank,
+  features: readonly Feature[],
+  relativeResolution: number,
+  logNoiseFlux: number,
+  settings: MeasureSettings,
+): Suspect[] {
+  const range = [settings.redshiftMinimum, settings.redshiftMaximum] as const;
+  const narrowPeaks = scanRedshifts(lines, NARROW_SCAN_LINES, range, 24, 300);
+  const identities = features.slice(0, 2).flatMap((feature) => identitiesOf(feature, IDENTITIES, range));
+  const narrow = shortlist(
+    lines,
+    [...narrowPeaks, ...identities],
+    'narrow',
+    relativeResolution,
+    logNoiseFlux,
+    settings.candidatesFitted + 2,
+  );
+  const broadPeaks = scanRedshifts(bands, BROAD_SCAN_LINES, range, 8, 3000);
+  const broad = shortlist(bands, broadPeaks, 'broad', relativeResolution, logNoiseFlux, 3);
+  const suspects = [...narrow, ...broad];
+  // A quasar's narrow lines may give its redshift away before its broad ones do, and the other way round.
+  for (const suspect of narrow.slice(0, 2)) {
+    if (suspect.kind === 'narrow') suspects.push({ ...suspect, kind: 'broad', sigmaKms: 1800 });
+  }
+  // The strongest feature as Lyman-alpha is always heard.
+  if (features.length > 0) {
+    const [peak] = identitiesOf(features[0], ['Lyman-alpha 1216'], range);
+    const known = peak && suspects.some((s) => s.kind === 'lyman' && Math.abs(s.logScale - peak.logScale) < 2e-3);
+    if (peak && !known && lymanCovered(lines, peak.logScale)) {
+      suspects.push({ logScale: peak.logScale, sigmaKms: features[0].sigmaKms, kind: 'lyman', score: 0 });
+    }
+  }
+  return suspects;
+}
+
+/** Drops candidates that repeat a better one of the same kind, and sorts by evidence. */
+function distinct(candidates: FittedCandidate[], relativeResolution: number): FittedCandidate[] {
+  const sorted = candidates.sort((a, b) => b.logEvidence - a.logEvidence || a.fit.logScale - b.fit.logScale);
+  const kept: FittedCandidate[] = [];
+  for (const candidate of sorted) {
+    const width = Math.max(
+      300 / SPEED_OF_LIGHT_KMS,
+      2 *
+        Math.hypot(relativeResolution, candidate.fit.sigmaKms[candidate.kind === 'broad' ? 1 : 0] / SPEED_OF_LIGHT_KMS),
+    );
+    if (kept.every((other) => Math.abs(other.fit.logScale - candidate.fit.logScale) > width)) kept.push(candidate);
+  }
+  return kept;
+}

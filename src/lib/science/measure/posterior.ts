@@ -1,0 +1,38 @@
+import type { FittedCandidate } from './candidate-fit';
+import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
+
+/** Log prior odds against "nothing here" of the rivals that have no emission-line redshift. */
+const LOG_PRIOR_STAR = Math.log(0.3);
+const LOG_PRIOR_PASSIVE = Math.log(0.3);
+/** A redshift peak of absorption lines is about 200 km/s wide in a flat prior over ln(1+z) up to 2.14. */
+const LOG_ABSORPTION_PEAK = Math.log((2.5 * 200) / 299792.458 / 2.14);
+
+/** Normalised weights of every hypothesis, before calibration. */
+export interface Posterior {
+  emission: { candidate: FittedCandidate; probability: number }[];
+  absorption: { candidate: AbsorptionCandidate; probability: number }[];
+  star: number;
+  nothing: number;
+}
+
+/** Turns log evidences and priors into probabilities that add up to 1. */
+export function posteriorOf(hypotheses: Hypotheses): Posterior {
+  const emission = hypotheses.candidates.map((candidate) => candidate.logEvidence);
+  const absorption = hypotheses.absorption.map(
+    (candidate) => candidate.logEvidence + LOG_PRIOR_PASSIVE + LOG_ABSORPTION_PEAK,
+  );
+  const star = hypotheses.star.logEvidence + LOG_PRIOR_STAR;
+  const top = Math.max(0, star, ...emission, ...absorption);
+  const weigh = (log: number) => Math.exp(log - top);
+  let total = weigh(0) + weigh(star);
+  for (const log of [...emission, ...absorption]) total += weigh(log);
+  return {
+    emission: hypotheses.candidates.map((candidate, i) => ({ candidate, probability: weigh(emission[i]) / total })),
+    absorption: hypotheses.absorption.map((candidate, i) => ({
+      candidate,
+      probability: weigh(absorption[i]) / total,
+    })),
+    star: weigh(star) / total,
+    nothing: weigh(0) / total,
+  };
+}
