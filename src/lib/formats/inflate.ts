@@ -47,19 +47,31 @@ export function inflateGzip(bytes: Uint8Array, place: Place): Uint8Array {
     if (error instanceof Error && error.name === 'InputProblem') throw error;
     throw damaged(place);
   }
-  if (!finished || (members <= 1 && storedSize(bytes) !== total)) throw damaged(place);
+  if (!finished) throw damaged(place);
   const whole = new Uint8Array(total);
   let at = 0;
   for (const piece of pieces) {
     whole.set(piece, at);
     at += piece.length;
   }
+  // With several members the trailer speaks of the last one only.
+  if (members <= 1 && !trailerAgrees(bytes, whole)) throw damaged(place);
   return whole;
 }
 
-/** ISIZE, the last four bytes: the unpacked size modulo 2^32. */
-function storedSize(bytes: Uint8Array): number {
-  return new DataView(bytes.buffer, bytes.byteOffset + bytes.length - 4, 4).getUint32(0, true);
+const CRC_TABLE = Uint32Array.from({ length: 256 }, (_, n) => {
+  let value = n;
+  for (let bit = 0; bit < 8; bit++) value = value & 1 ? 0xedb88320 ^ (value >>> 1) : value >>> 1;
+  return value;
+});
+
+/** Whether CRC32 and ISIZE, the last eight bytes, are those of the unpacked data (RFC 1952, section 2.3.1). */
+function trailerAgrees(packed: Uint8Array, unpacked: Uint8Array): boolean {
+  const trailer = new DataView(packed.buffer, packed.byteOffset + packed.length - 8, 8);
+  if (trailer.getUint32(4, true) !== unpacked.length) return false;
+  let crc = 0xffffffff;
+  for (const byte of unpacked) crc = CRC_TABLE[(crc ^ byte) & 255] ^ (crc >>> 8);
+  return trailer.getUint32(0, true) === ~crc >>> 0;
 }
 
 function damaged(place: Place) {
