@@ -91,7 +91,7 @@ export interface MeasurementFacts {
 export function measurementFacts(measurementIds: string[], transaction?: Transaction): Promise<MeasurementFacts[]> {
   return inChunks(measurementIds, (ids) =>
     database().query<MeasurementFacts>(
-      `SELECT m.id AS measurementId, JSON_VALUE(m.detail, '$.fluxUnit') AS fluxUnit, m.engine_version AS engineVersion
+      `SELECT m.id AS measurementId, m.flux_unit AS fluxUnit, m.engine_version AS engineVersion
         FROM measurements m WHERE m.id IN (:ids)`,
       { replacements: { ids }, type: QueryTypes.SELECT, transaction },
     ),

@@ -5,7 +5,7 @@ import { database } from '../connection';
 
 /** Column of `release_rows` for each value of a row. */
 const COLUMN: Record<keyof ReleaseRow, string> = {
-  row: 'row_number',
+  row: 'row_index',
   name: 'name',
   ra: 'ra_degrees',
   dec: 'dec_degrees',
@@ -126,7 +126,7 @@ export async function* releaseRowBatches(
   const { where, replacements } = conditions(releaseId, filter);
   for (let place = after; ;) {
     const rows = await database().query<ReleaseRow>(
-      `SELECT ${SELECTED} FROM release_rows WHERE ${where} AND row_number > :place ORDER BY row_number LIMIT :batch`,
+      `SELECT ${SELECTED} FROM release_rows WHERE ${where} AND row_index > :place ORDER BY row_index LIMIT :batch`,
       { replacements: { ...replacements, place, batch }, type: QueryTypes.SELECT, transaction },
     );
     const { cone } = filter;
@@ -166,7 +166,7 @@ export function skyPoints(releaseId: string, rowCount: number, most: number): Pr
   const step = Math.max(1, Math.ceil(rowCount / most));
   return database().query<SkyPoint>(
     `SELECT ra_degrees AS ra, dec_degrees AS \`dec\`, confidence FROM release_rows
-      WHERE release_id = :releaseId AND row_number % :step = 0`,
+      WHERE release_id = :releaseId AND row_index % :step = 0`,
     { replacements: { releaseId, step }, type: QueryTypes.SELECT },
   );
 }
