@@ -1,0 +1,45 @@
+import { describe, expect, it } from 'vitest';
+import { parse } from 'csv-parse/sync';
+import type { NightMeasurement } from '$lib/domain/night';
+import { tableAsCsv } from './table-as-csv';
+
+const row = {
+  spectrum: '0198',
+  source: 'a "deep", field.fits',
+  extension: 1,
+  row: 1,
+  name: '=1+1',
+  ra: 63.511460000000001,
+  dec: -31.89852,
+  state: 'measured',
+  redshift: 0.31042123456789,
+  redshiftError: 3e-5,
+  probability: 0.9991,
+  confidence: 'secure',
+  objectClass: 'star-forming',
+  secondRedshift: null,
+  medianSignalToNoise: null,
+  noiseFactor: 1.04,
+  flags: ['blend', 'sky residual'],
+  strongestLine: { line: '[O III] 5008', signalToNoise: 21.7 },
+  verdict: null,
+} as unknown as NightMeasurement;
+
+describe('tableAsCsv', () => {
+  it('is read back by a general CSV reader, with numbers at full precision', () => {
+    const [read] = parse<Record<string, string>>(tableAsCsv([row]), { columns: true });
+    expect(Number(read.redshift)).toBe(row.redshift);
+    expect(Number(read.dec_deg)).toBe(row.dec);
+    expect(read.source).toBe('a "deep", field.fits');
+    expect(read.flags).toBe('blend; sky residual');
+    expect(read.verdict_redshift).toBe('');
+  });
+  it('keeps a spreadsheet from running a name as a formula, and leaves negative numbers alone', () => {
+    const csv = tableAsCsv([row]);
+    expect(csv).toContain(",'=1+1,");
+    expect(csv).toContain(',-31.89852,');
+  });
+  it('ends every line by CRLF and writes the head alone for no rows', () => {
+    expect(tableAsCsv([]).split('\r\n')).toHaveLength(2);
+  });
+});
