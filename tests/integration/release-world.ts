@@ -7,8 +7,9 @@ import { seedSpectra, type SeededSpectrum } from './seed-spectra';
 
 export const GOOD = { confidence: ['secure', 'probable'] as ('secure' | 'probable')[], engineAlone: true };
 export const PEOPLE = { ...GOOD, engineAlone: false };
-export const first: VerdictInput = { kind: 'candidate', candidate: 0, confidence: 'secure', flags: [], comment: '' };
-export const second: VerdictInput = { ...first, candidate: 1, confidence: 'probable' };
+type OfCandidate = Extract<VerdictInput, { kind: 'candidate' }>;
+export const first: OfCandidate = { kind: 'candidate', candidate: 0, confidence: 'secure', flags: [], comment: '' };
+export const second: OfCandidate = { ...first, candidate: 1, confidence: 'probable' };
 export const nothing: VerdictInput = { kind: 'no redshift', flags: [], comment: '' };
 export const byHand = (redshift: number, redshiftError: number | null = null): VerdictInput => ({
   kind: 'by hand',

@@ -1,5 +1,6 @@
 import { QueryTypes } from 'sequelize';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import type { VerdictInput } from '$lib/domain/verdict';
 import type { Actor } from '$lib/server/auth/permissions';
 import { database } from '$lib/server/database/connection';
 import { standingVerdict } from '$lib/server/database/queries/verdicts';
@@ -42,14 +43,14 @@ beforeEach(async () => {
   spectra = seeded.spectrumIds;
 });
 
-const accept = { kind: 'candidate', candidate: 0, confidence: 'probable', flags: [], comment: '' } as const;
-const noRedshift = { kind: 'no redshift', flags: [], comment: '' } as const;
+const accept: VerdictInput = { kind: 'candidate', candidate: 0, confidence: 'probable', flags: [], comment: '' };
+const noRedshift: VerdictInput = { kind: 'no redshift', flags: [], comment: '' };
 const standing = (actor: Actor) => standingVerdict(spectra[0], actor.userId);
 const rowsOf = async (sql: string) => database().query<{ n: number }>(sql, { type: QueryTypes.SELECT });
 
 describe('recordVerdict', () => {
   it('takes the redshift of the candidate it names', async () => {
-    await recordVerdict(ines, spectra[0], { ...accept, candidate: 1 });
+    await recordVerdict(ines, spectra[0], { ...accept, candidate: 1 } as VerdictInput);
     expect(await standing(ines)).toMatchObject({
       redshift: 0.7,
       redshiftError: 0.0001,
@@ -67,7 +68,7 @@ describe('recordVerdict', () => {
   });
 
   it('refuses a candidate that is not there, the flag "other" without a word, and people who may not judge', async () => {
-    await expect(recordVerdict(ines, spectra[0], { ...accept, candidate: 9 })).rejects.toMatchObject({
+    await expect(recordVerdict(ines, spectra[0], { ...accept, candidate: 9 } as VerdictInput)).rejects.toMatchObject({
       code: 'conflict',
     });
     await expect(recordVerdict(ines, spectra[0], { ...accept, flags: ['other'] })).rejects.toMatchObject({

@@ -42,7 +42,8 @@ export async function makeDemoPeople(
     const user = await User.findOne({ where: { email } });
     const { password } = accounts.find((account) => account.email === email)!;
     const userId =
-      user?.id ?? (await makeAccount({ name: person, email, password, programmeId, roles, isAdmin, isDemo: true })).userId;
+      user?.id ??
+      (await makeAccount({ name: person, email, password, programmeId, roles, isAdmin, isDemo: true })).userId;
     actors.set(person.split(' ')[0], (await actorOf(userId))!);
   }
   return { programmeId, programme: SLUG, actors };

@@ -9,7 +9,14 @@ import { appendVerdict, lockSpectrum, standingVerdict, type NewVerdict } from '.
 function decided(input: VerdictInput, { measurement, measurementId }: ReviewedSpectrum) {
   const common = { measurementId, flags: input.flags, comment: input.comment };
   if (input.kind === 'no redshift') {
-    return { ...common, kind: input.kind, redshift: null, redshiftError: null, candidatePlace: null, confidence: null };
+    return {
+      ...common,
+      kind: input.kind,
+      redshift: null,
+      redshiftError: null,
+      candidatePlace: null,
+      confidence: 'none' as const,
+    };
   }
   if (input.kind === 'by hand') {
     const { kind, redshift, redshiftError, confidence } = input;
