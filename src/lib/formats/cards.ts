@@ -4,6 +4,7 @@ export type CardValue = string | number | boolean;
 /** Header cards by upper-case keyword; the first of a repeated keyword counts. FITS headers and text comments share it. */
 export class Cards {
   private readonly values = new Map<string, CardValue>();
+  private record: Record<string, CardValue> | null = null;
 
   /** Cards that are looked up here when this header is silent (a primary header behind its extensions). */
   constructor(private readonly inherited: Cards | null = null) {}
@@ -68,8 +69,13 @@ export class Cards {
     return null;
   }
 
-  /** All cards, inherited ones included, for people to read. */
-  toRecord(limit = 500): Record<string, CardValue> {
+  /** All cards, inherited ones included, for people to read; one object for all spectra under this header. */
+  toRecord(): Record<string, CardValue> {
+    this.record ??= this.collect();
+    return this.record;
+  }
+
+  private collect(limit = 500): Record<string, CardValue> {
     const record: Record<string, CardValue> = Object.create(null) as Record<string, CardValue>;
     for (const source of [this.inherited, this]) {
       if (!source) continue;

@@ -37,3 +37,50 @@ export function collectProblem<T>(problems: Problem[], read: () => T): T | null 
     return null;
   }
 }
+
+/** Faulty rows of one HDU that are told one by one; beyond them the HDU itself is at fault. */
+const MAX_FAULTY_ROWS = 1000;
+
+/**
+ * Reads rows 0 to count - 1 of an HDU; a row at fault is added to `problems` and the next is read. After 1000 faulty
+ * rows one last problem says that the rest was left.
+ */
+export function readRows(
+  problems: Problem[],
+  count: number,
+  place: Place,
+  read: (row: number, at: Place) => void,
+): void {
+  const before = problems.length;
+  for (let row = 0; row < count; row++) {
+    const at: Place = { ...place, row: row + 1 };
+    collectProblem(problems, () => read(row, at));
+    if (problems.length - before < MAX_FAULTY_ROWS || row === count - 1) continue;
+    const rest = problemAt(
+      { ...place, row: row + 2 },
+      'too-many-faulty-rows',
+      `${MAX_FAULTY_ROWS} rows are at fault, so the ${count - row - 1} rows from here on were not read.`,
+      'Mend what the first problems say, and hand the file in again.',
+    );
+    problems.push(rest.problem);
+    return;
+  }
+}
+
+/** Spectra of one HDU that are read at most. */
+const MAX_ROWS = 100_000;
+
+/**
+ * Refuses an HDU with more rows than are read.
+ *
+ * @throws InputProblem `too-many-rows`
+ */
+export function checkRowCount(count: number, place: Place): void {
+  if (count <= MAX_ROWS) return;
+  throw problemAt(
+    place,
+    'too-many-rows',
+    `It has ${count} rows, each a spectrum.`,
+    `At most ${MAX_ROWS} are read: hand it in as several files.`,
+  );
+}

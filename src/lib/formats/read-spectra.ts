@@ -9,7 +9,9 @@ import { collectProblem, problemAt, type Place } from './place';
 import { readTextTable } from './text/read-text-table';
 
 /** Text tables beyond this size are no spectra; it bounds the memory that their cells take. */
-const MAX_TEXT_BYTES = 64 * 1024 * 1024;
+const MAX_TEXT_BYTES = 32 * 1024 * 1024;
+/** Lines of a text table: one a pixel, and its comments. */
+const MAX_LINES = 2_000_000;
 
 /** What a file holds: its spectra in file order, and what is wrong with it, with one HDU or with one row. */
 export interface ReadSpectra {
@@ -38,7 +40,17 @@ function readText(
       place,
       'text-too-large',
       `The text has ${bytes.length >> 20} MB.`,
-      'Text tables are read up to 64 MB; use FITS for more.',
+      'Text tables are read up to 32 MB; use FITS for more.',
+    );
+  }
+  let lines = 0;
+  for (const byte of bytes) if (byte === 10 || byte === 13) lines++;
+  if (lines > MAX_LINES) {
+    throw problemAt(
+      place,
+      'text-too-large',
+      `The text has ${lines} lines.`,
+      `At most ${MAX_LINES} are read; use FITS for more.`,
     );
   }
   const { table, warnings } = readTextTable(new TextDecoder().decode(bytes), place);

@@ -6,7 +6,7 @@ import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wa
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
 import { readObservation } from '../observation/read-observation';
 import { rowObservation } from '../observation/row-observation';
-import { collectProblem, problemAt, type Place } from '../place';
+import { checkRowCount, collectProblem, problemAt, readRows, type Place } from '../place';
 import { makeRawSpectrum, type Quantity, type SpectrumArrays } from '../raw-spectrum';
 import { parseSpectralUnit, type SpectralUnit } from '../units/spectral-unit';
 import { assignRoles, type Role, type Roles } from './roles';
@@ -105,10 +105,8 @@ export function tableSpectra(
   };
 
   if (flux.isVector || wavelength?.isVector) {
-    for (let row = 0; row < table.rows; row++) {
-      const at: Place = { ...place, row: row + 1 };
-      collectProblem(problems, () => readOne((column) => column.cell(row), at, row));
-    }
+    checkRowCount(table.rows, place);
+    readRows(problems, table.rows, place, (row, at) => readOne((column) => column.cell(row), at, row));
   } else {
     collectProblem(problems, () => readOne((column) => column.scalars(), { ...place, row: 1 }, null));
   }

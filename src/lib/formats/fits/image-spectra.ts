@@ -8,7 +8,7 @@ import type { Table } from '../columns/table';
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
 import { readObservation } from '../observation/read-observation';
 import { rowObservation, tellsRows } from '../observation/row-observation';
-import { collectProblem, problemAt, type Place } from '../place';
+import { checkRowCount, collectProblem, problemAt, readRows, type Place } from '../place';
 import { makeRawSpectrum, type SpectrumArrays } from '../raw-spectrum';
 import { parseSpectralUnit } from '../units/spectral-unit';
 import { imageLayout, imageRow, type ImageLayout } from './image-layout';
@@ -142,7 +142,10 @@ export function imageSpectra(
       unusable.push(tooLarge(flux, file));
       continue;
     }
-    spectra.push(...readImage(flux, layout, companions, tables, file, instrument, problems));
+    const read = collectProblem(problems, () =>
+      readImage(flux, layout, companions, tables, file, instrument, problems),
+    );
+    for (const raw of read ?? []) spectra.push(raw);
   }
   return { spectra, notSpectra: unusable };
 }
@@ -159,35 +162,39 @@ function readImage(
   const place: Place = { file, extension: flux.extension };
   const observation = readObservation(flux.cards);
   const rowTable = layout.rows > 1 ? tables.find((table) => table.rows === layout.rows && tellsRows(table)) : undefined;
+  checkRowCount(layout.rows, place);
   const count = layout.rows * layout.pixels;
   const pixels: Partial<Record<Role, Float64Array>> = { flux: readPixels(flux, 0, count) };
   for (const [role, hdu] of Object.entries(companions) as [Role, Hdu][]) {
     pixels[role] = readPixels(hdu, 0, samePixels(layout, hdu) ? count : layout.pixels);
   }
+  const rowOf = (role: Role, row: number) => {
+    const all = pixels[role]!;
+    return all.length === layout.pixels ? all : imageRow(all, layout, row);
+  };
+  const ownWavelengths = pixels.wavelength !== undefined && pixels.wavelength.length !== layout.pixels;
+  const wavelengthsOf = (row: number, at: Place) =>
+    companions.wavelength
+      ? companionWavelengths(companions.wavelength, rowOf('wavelength', row), instrument, at)
+      : readSpectralAxis(flux.cards, layout.axis!, place);
+  let shared: Wavelengths | null = null;
   const spectra: RawSpectrum[] = [];
-  for (let row = 0; row < layout.rows; row++) {
-    const at: Place = { ...place, row: row + 1 };
-    collectProblem(problems, () => {
-      const rowOf = (role: Role) => {
-        const all = pixels[role]!;
-        return all.length === layout.pixels ? all : imageRow(all, layout, row);
-      };
-      const wavelengths = companions.wavelength
-        ? companionWavelengths(companions.wavelength, rowOf('wavelength'), instrument, at)
-        : readSpectralAxis(flux.cards, layout.axis!, at);
-      const arrays: SpectrumArrays = {
-        wavelengths,
-        medium: wavelengths.medium,
-        flux: { values: rowOf('flux'), unit: instrument?.columns?.fluxUnit ?? bareUnit(flux) },
-      };
-      for (const role of ['error', 'variance', 'inverseVariance', 'sky'] as const) {
-        if (companions[role]) arrays[role] = { values: rowOf(role), unit: bareUnit(companions[role]) };
-      }
-      if (companions.mask) arrays.mask = rowOf('mask');
-      else if (companions.good) arrays.good = rowOf('good');
-      const here = rowTable ? rowObservation(observation, rowTable, row) : observation;
-      spectra.push(makeRawSpectrum(arrays, here, flux.cards, at));
-    });
-  }
+  readRows(problems, layout.rows, place, (row, at) => {
+    // One axis serves all rows, unless every row has wavelengths of its own.
+    if (ownWavelengths) shared = null;
+    shared ??= wavelengthsOf(row, at);
+    const arrays: SpectrumArrays = {
+      wavelengths: shared,
+      medium: shared.medium,
+      flux: { values: rowOf('flux', row), unit: instrument?.columns?.fluxUnit ?? bareUnit(flux) },
+    };
+    for (const role of ['error', 'variance', 'inverseVariance', 'sky'] as const) {
+      if (companions[role]) arrays[role] = { values: rowOf(role, row), unit: bareUnit(companions[role]) };
+    }
+    if (companions.mask) arrays.mask = rowOf('mask', row);
+    else if (companions.good) arrays.good = rowOf('good', row);
+    const here = rowTable ? rowObservation(observation, rowTable, row) : observation;
+    spectra.push(makeRawSpectrum(arrays, here, flux.cards, at));
+  });
   return spectra;
 }

@@ -47,12 +47,13 @@ export function readFits(
     if (!table) continue;
     tables.push(table);
     const read = collectProblem(problems, () => tableSpectra(table, file, instrument, problems));
-    if (read) spectra.push(...read.spectra);
+    for (const raw of read?.spectra ?? []) spectra.push(raw);
     if (read?.notSpectra) notSpectra.push(read.notSpectra);
   }
   // An error or mask image stands beside the one that the description names, so images are filtered by their flux only.
   const images = imageSpectra(hdus, tables, file, instrument, problems);
-  spectra.push(...images.spectra.filter((spectrum) => wanted.some((hdu) => hdu.extension === spectrum.extension)));
+  const extensions = new Set(wanted.map((hdu) => hdu.extension));
+  for (const raw of images.spectra) if (extensions.has(raw.extension)) spectra.push(raw);
   notSpectra.push(...images.notSpectra);
   spectra.sort((a, b) => a.extension - b.extension || a.row - b.row);
   if (spectra.length === 0 && problems.length === 0) problems.push(...notSpectra);

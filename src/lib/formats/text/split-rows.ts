@@ -1,6 +1,9 @@
 import { parse } from 'csv-parse/sync';
 import { problemAt, type Place } from '../place';
 
+/** Cells of a row that are looked at; a spectrum has a handful. */
+const MAX_CELLS = 1000;
+
 /** The character between cells: what the middle line uses most plainly; null for blanks. */
 function findDelimiter(lines: string[]): string | null {
   const line = lines[lines.length >> 1] ?? '';
@@ -23,7 +26,7 @@ function parseQuoted(lines: string[], delimiter: string, place: Place): string[]
 
 /** Cells set apart by runs of blanks, where quotes keep blanks together: `1.5  ""  "two words"`. */
 function splitBlanks(line: string): string[] {
-  if (!line.includes('"')) return line.trim().split(/\s+/);
+  if (!line.includes('"')) return line.trim().split(/\s+/, MAX_CELLS);
   const cells = line.match(/"(?:[^"]|"")*"|[^\s"]\S*|"/g) ?? [];
   return cells.map((cell) =>
     cell.length > 1 && cell.startsWith('"') ? cell.slice(1, -1).replaceAll('""', '"') : cell,
@@ -36,7 +39,7 @@ function splitBlanks(line: string): string[] {
  */
 export function splitRows(lines: string[], delimiter: string | null, place: Place): string[][] {
   const separator = delimiter === ' ' ? null : (delimiter ?? findDelimiter(lines));
-  if (separator === null) return lines.map(splitBlanks);
+  if (separator === null) return lines.map((line) => splitBlanks(line));
   if (lines.some((line) => line.includes('"'))) return parseQuoted(lines, separator, place);
-  return lines.map((line) => line.split(separator));
+  return lines.map((line) => line.split(separator, MAX_CELLS));
 }

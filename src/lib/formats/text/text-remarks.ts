@@ -44,11 +44,15 @@ export function readRemarks(comments: string[]): TextRemarks {
   return remarks;
 }
 
+/** Longer headings are no names. */
+const MAX_HEADING = 200;
 const BRACKETED = /^(.*?)\s*[[(]\s*([^\])]*?)\s*[\])]\s*$/;
 
 /** A heading such as `wavelength [Angstrom]` or `flux (1e-17 erg/s/cm2/Angstrom)`, taken apart. */
 export function readHeading(text: string): TextColumnWords {
   const trimmed = text.trim();
+  if (trimmed.length > MAX_HEADING)
+    return { name: trimmed.slice(0, MAX_HEADING), unit: null, description: null, ucd: null };
   const match = /^(.*?)\s*\[\s*(.*?)\s*\]\s*$/.exec(trimmed) ?? BRACKETED.exec(trimmed);
   if (match && match[1] !== '' && !/^(log|log10|ln|dex)$/i.test(match[1])) {
     return { name: match[1].trim(), unit: match[2] || null, description: null, ucd: null };

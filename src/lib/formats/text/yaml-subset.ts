@@ -6,8 +6,11 @@ const MAX_DEPTH = 20;
 /** Value of a plain or quoted scalar. */
 function scalar(text: string): Yaml {
   const trimmed = text.trim();
-  const quoted = /^(['"])([\s\S]*)\1$/.exec(trimmed);
-  if (quoted) return quoted[1] === "'" ? quoted[2].replaceAll("''", "'") : quoted[2].replaceAll(/\\(["\\/])/g, '$1');
+  const quote = trimmed[0];
+  if (trimmed.length > 1 && (quote === "'" || quote === '"') && trimmed.endsWith(quote)) {
+    const inner = trimmed.slice(1, -1);
+    return quote === "'" ? inner.replaceAll("''", "'") : inner.replaceAll(/\\(["\\/])/g, '$1');
+  }
   if (trimmed === '' || trimmed === '~' || trimmed === 'null') return null;
   if (/^(true|false)$/i.test(trimmed)) return trimmed.toLowerCase() === 'true';
   const number = Number(trimmed);
@@ -124,7 +127,21 @@ function joinLines(lines: string[]): Line[] {
   return joined;
 }
 
-const KEY = /^((?:'[^']*'|"[^"]*"|[^'"{[\s][^:]*?|[^'"{[\s]))\s*:(?:\s+(.*))?$/;
+/** A `key: rest` line taken apart: the first colon outside quotes that a blank or the end follows; null where none is. */
+function splitKey(text: string): { key: string; rest: string } | null {
+  if (/^[{[]/.test(text)) return null;
+  let quote = '';
+  for (let i = 0; i < text.length; i++) {
+    const letter = text[i];
+    if (quote) {
+      if (letter === quote) quote = '';
+    } else if (letter === "'" || letter === '"') quote = letter;
+    else if (letter === ':' && /^\s?$/.test(text[i + 1] ?? '')) {
+      return i === 0 ? null : { key: text.slice(0, i), rest: text.slice(i + 1).trim() };
+    }
+  }
+  return null;
+}
 
 /**
  * Reads the part of YAML that ECSV headers (Astropy Proposal for Enhancement 6, an open format) are written in: block
@@ -162,7 +179,7 @@ class BlockReader {
       if (rest === '') {
         this.at++;
         result.push(this.block(indent + 1, depth + 1));
-      } else if (!/^[{['"!]/.test(rest) && KEY.test(rest)) {
+      } else if (!rest.startsWith('!') && splitKey(rest) !== null) {
         // `- name: x` opens a map whose first key stands behind the dash.
         this.lines[this.at] = { indent: indent + line.text.length - rest.length, text: rest };
         result.push(this.block(indent + 1, depth + 1));
@@ -177,16 +194,16 @@ class BlockReader {
   private map(indent: number, depth: number): Yaml {
     const result: { [key: string]: Yaml } = {};
     for (let line = this.lines[this.at]; line?.indent === indent; line = this.lines[this.at]) {
-      const match = KEY.exec(line.text);
+      const split = splitKey(line.text);
       this.at++;
-      if (!match) continue;
-      const rest = (match[2] ?? '').replace(/^!\S*\s*/, '');
+      if (!split) continue;
+      const rest = split.rest.replace(/^!\S*\s*/, '');
       let value: Yaml;
       if (rest !== '') value = this.inline(rest, indent, depth);
       else if (/^-(\s|$)/.test(this.lines[this.at]?.text ?? '') && this.lines[this.at].indent === indent)
         value = this.list(indent, depth + 1);
       else value = this.block(indent + 1, depth + 1);
-      const key = String(scalar(match[1]) ?? '');
+      const key = String(scalar(split.key) ?? '');
       Object.defineProperty(result, key, { value, enumerable: true, configurable: true, writable: true });
     }
     return result;
