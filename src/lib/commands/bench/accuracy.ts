@@ -2,7 +2,14 @@ import { mkdirSync, writeFileSync } from 'node:fs';
 import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { Piscina } from 'piscina';
-import { tableByClass, tableBySignal, tableOfBounds, tableOfIdentities, tableOfReliability } from './break-down';
+import {
+  tableByClass,
+  tableBySignal,
+  tableOfBounds,
+  tableOfIdentities,
+  tableOfPulls,
+  tableOfReliability,
+} from './break-down';
 import type { Outcome } from './outcome';
 import { FLAVOURS, planSpectra } from './plan-spectra';
 import { layOutTable, percent, short } from './print-table';
@@ -67,6 +74,8 @@ function report(title: string, outcomes: readonly Outcome[], extra: readonly Sco
     tableBySignal(outcomes),
     '\nSingle lines: true identity against the answer\n',
     tableOfIdentities(outcomes),
+    '\nPulls: spread of (measured - true) / quoted error, narrow lines\n',
+    tableOfPulls(outcomes),
     '\nScatter over the Cramér-Rao bound\n',
     tableOfBounds(outcomes),
     '\nReliability of the best candidate (event: within 1,000 km/s)\n',
@@ -132,6 +141,6 @@ function describeEach(outcomes: readonly Outcome[]): string[] {
       const answered = o.answer.redshift === null ? 'no answer' : o.answer.redshift.toFixed(5);
       const truth = o.known.redshift === null ? 'none' : o.known.redshift.toFixed(5);
       const listed = o.judged.rightAnywhere ? ', listed' : '';
-      return `${o.known.artefacts[0]} ${o.answer.confidence}: ${answered}, true ${truth}${listed}, best S/N ${o.known.bestSignalToNoise}`;
+      return `${o.label} ${o.answer.confidence}: ${answered}, true ${truth}${listed}, best S/N ${o.known.bestSignalToNoise.toFixed(1)}`;
     });
 }

@@ -113,6 +113,48 @@ export function tableOfReliability(outcomes: readonly Outcome[]): string {
   return layOutTable(['stated probability', 'answers', 'mean stated', 'came true'], rows);
 }
 
+const LINES_OF_INTEREST = 8;
+
+/** Spread of (measured - true) / error for clean and ordinary nights, and for the lines seen most. */
+export function tableOfPulls(outcomes: readonly Outcome[]): string {
+  const row = (name: string, of: readonly Outcome[], line: string | null) => {
+    const pulls = of.flatMap((o) => o.judged.linePulls).filter((p) => line === null || p.line === line);
+    const z = line === null ? numbers(of.map((o) => o.judged.redshiftPull)) : [];
+    const flux = numbers(pulls.map((p) => p.flux));
+    const width = numbers(pulls.map((p) => p.equivalentWidth));
+    const spread = (values: number[]) => [short(standardDeviation(values), 2), short(robustScatter(values), 2)];
+    return [
+      name,
+      `${of.length}`,
+      ...spread(z),
+      `${flux.length}`,
+      short(median(flux), 2),
+      ...spread(flux),
+      ...spread(width),
+    ];
+  };
+  const narrow = outcomes.filter((o) => o.known.hasEmission && !o.known.broad);
+  const clean = narrow.filter((o) => o.known.artefacts.every((a) => a === 'gap'));
+  const faults = [...new Set(narrow.flatMap((o) => o.known.artefacts))].filter((a) => a !== 'gap').sort();
+  const counts = new Map<string, number>();
+  for (const { line } of narrow.flatMap((o) => o.judged.linePulls)) counts.set(line, (counts.get(line) ?? 0) + 1);
+  const lines = [...counts].sort((a, b) => b[1] - a[1]).slice(0, LINES_OF_INTEREST);
+  return layOutTable(
+    ['', 'spectra', 'z', 'robust', 'lines', 'median', 'flux', 'robust', 'width', 'robust'],
+    [
+      row('without faults', clean, null),
+      ...faults.map((fault) =>
+        row(
+          `with ${fault}`,
+          narrow.filter((o) => o.known.artefacts.includes(fault)),
+          null,
+        ),
+      ),
+      ...lines.map(([line]) => row(`${line}, without faults`, clean, line)),
+    ],
+  );
+}
+
 /** Scatter over the Cramér-Rao bound by signal-to-noise ratio. */
 export function tableOfBounds(outcomes: readonly Outcome[]): string {
   const rows: string[][] = [];

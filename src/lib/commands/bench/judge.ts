@@ -1,7 +1,7 @@
 import type { Measurement } from '$lib/domain/measurement';
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import { EMISSION_WAVELENGTHS } from '$lib/science/simulate/emission-lines';
-import type { Truth } from '$lib/science/simulate/truth';
+import type { Truth, TruthLine } from '$lib/science/simulate/truth';
 import type { Group, KnownAnswer, LinePull, Outcome } from './outcome';
 
 const NARROW_TOLERANCE = 0.0005;
@@ -45,15 +45,23 @@ export function nameFeature(wavelengthObserved: number, redshift: number): strin
       best = name;
     }
   }
-  return best;
+  return featureName(best);
+}
+
+/** One name for the two lines of [O II], which most spectra blend. */
+function featureName(line: string): string {
+  return line.startsWith('[O II] 37') ? '[O II] 3728' : line;
+}
+
+/** Name of the line with the highest signal-to-noise ratio; null without lines. */
+export function strongestFeature(lines: readonly TruthLine[]): string | null {
+  let strongest: TruthLine | null = null;
+  for (const line of lines) if (line.signalToNoise > (strongest?.signalToNoise ?? 0)) strongest = line;
+  return strongest && featureName(strongest.line);
 }
 
 /** What the bench keeps of a simulated truth. */
 export function knownAnswer(truth: Truth): KnownAnswer {
-  const strongest = truth.lines.reduce<Truth['lines'][number] | null>(
-    (best, line) => (line.signalToNoise > (best?.signalToNoise ?? 0) ? line : best),
-    null,
-  );
   return {
     redshift: truth.redshift,
     redshiftSystemic: truth.lyman ? truth.redshiftSystemic : null,
@@ -63,16 +71,16 @@ export function knownAnswer(truth: Truth): KnownAnswer {
     bestSignalToNoise: truth.bestSignalToNoise,
     featuresOverFour: truth.featuresOverFour,
     redshiftBound: truth.redshiftBound,
-    strongestLine: strongest?.line ?? null,
+    strongestLine: strongestFeature(truth.lines),
     declaredErrorFactor: truth.declaredErrorFactor,
     artefacts: truth.artefacts,
   };
 }
 
 /** Deviations of every narrow line of S/N >= 5 that was put in and measured. */
-function linePulls(truth: Truth, measurement: Measurement): LinePull[] {
+function linePulls(lines: readonly TruthLine[], measurement: Measurement, fluxScale: number): LinePull[] {
   const pulls: LinePull[] = [];
-  for (const line of truth.lines) {
+  for (const line of lines) {
     if (line.broad || line.signalToNoise < 5 || line.coverage < 0.98 || line.object !== 0) continue;
     const fit = measurement.lines.find((l) => Math.abs(l.wavelengthRest - line.wavelengthRest) < 0.3);
     if (!fit) continue;
@@ -81,31 +89,35 @@ function linePulls(truth: Truth, measurement: Measurement): LinePull[] {
     pulls.push({
       line: line.line,
       signalToNoise: line.signalToNoise,
-      flux: over(fit.flux, fit.fluxError, line.flux),
+      flux: over(fit.flux, fit.fluxError, line.flux * fluxScale),
       equivalentWidth: over(fit.equivalentWidthRest, fit.equivalentWidthRestError, line.equivalentWidthRest),
     });
   }
   return pulls;
 }
 
-/** Compares what the engine says with what is known. `truth` brings line fluxes and may be left out. */
+/**
+ * Compares what the engine says with what is known.
+ *
+ * @param lines what was put in, for the pulls of fluxes
+ * @param fluxScale factor from the unit of `lines` to that of the measurement
+ */
 export function judge(
-  group: Group,
-  seed: number,
+  spectrum: { group: Group; seed: number; label: string },
   known: KnownAnswer,
   measurement: Measurement,
   milliseconds: number,
-  truth: Truth | null = null,
+  lines: readonly TruthLine[],
+  fluxScale = 1,
 ): Outcome {
   const { redshift, redshiftError, candidates } = measurement;
   const right = redshift !== null && isRight(known, redshift);
   const single =
     known.redshift !== null && !known.broad && known.secondRedshift === null && known.redshiftSystemic === null;
   const deviation = right && single && redshift !== null ? redshift - (known.redshift ?? 0) : null;
-  const strongest = truth?.lines.find((line) => line.line === known.strongestLine);
+  const strongest = lines.find((line) => featureName(line.line) === known.strongestLine);
   return {
-    group,
-    seed,
+    ...spectrum,
     known,
     answer: {
       redshift,
@@ -125,7 +137,7 @@ export function judge(
       redshiftPull: deviation !== null && redshiftError ? deviation / redshiftError : null,
       overBound: deviation !== null && known.redshiftBound ? deviation / known.redshiftBound : null,
       namedLine: redshift !== null && strongest ? nameFeature(strongest.wavelengthObserved, redshift) : null,
-      linePulls: truth && right && known.secondRedshift === null ? linePulls(truth, measurement) : [],
+      linePulls: right && known.secondRedshift === null ? linePulls(lines, measurement, fluxScale) : [],
     },
     milliseconds,
   };

@@ -2,7 +2,7 @@ import type { Confidence } from '$lib/domain/confidence';
 import type { SpectrumClass } from '$lib/science/simulate/recipe';
 
 /** A group of spectra in the accuracy bench: a class of the simulator, or spectra turned upside down. */
-export type Group = SpectrumClass | 'sign-inverted' | 'sample';
+export type Group = SpectrumClass | 'sign-inverted';
 
 /** What the bench must know of a true answer. */
 export interface KnownAnswer {
@@ -36,6 +36,8 @@ export interface LinePull {
 /** One spectrum of the bench: what was true, what was said, and how the two compare. */
 export interface Outcome {
   group: Group;
+  /** What a person would call the spectrum: class and seed, or the file. */
+  label: string;
   seed: number;
   known: KnownAnswer;
   answer: {

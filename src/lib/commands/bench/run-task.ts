@@ -32,7 +32,7 @@ function withoutAnswer(truth: Truth): Truth {
   };
 }
 
-function runOne(group: Exclude<Group, 'sample'>, seed: number): Outcome {
+function runOne(group: Group, seed: number): Outcome {
   const inverted = group === 'sign-inverted';
   const recipe = drawRecipe(inverted ? 'star-forming' : group, seed);
   const made = simulateSpectrum(recipe, seed);
@@ -40,7 +40,8 @@ function runOne(group: Exclude<Group, 'sample'>, seed: number): Outcome {
   const truth = inverted ? withoutAnswer(made.truth) : made.truth;
   const start = performance.now();
   const measurement = measureSpectrum(spectrum);
-  return judge(group, seed, knownAnswer(truth), measurement, performance.now() - start, truth);
+  const milliseconds = performance.now() - start;
+  return judge({ group, seed, label: `${group} ${seed}` }, knownAnswer(truth), measurement, milliseconds, truth.lines);
 }
 
 function runFlavour(flavour: Flavour, seed: number): FlavourOffset {

@@ -19,6 +19,7 @@ function outcome(made: Made): Outcome {
   return {
     group: made.group ?? 'star-forming',
     seed: 0,
+    label: 'made',
     known: {
       redshift: 1,
       redshiftSystemic: null,

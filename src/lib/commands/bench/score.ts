@@ -52,7 +52,7 @@ function lowShare(what: string, hits: number, count: number, floor: number, goal
   else if (upper <= goal * 1.0005) reached = 'yes';
   else if (upper <= floor) reached = measured <= goal ? 'floor; too few to prove the goal' : 'floor';
   else if (measured <= goal) reached = 'too few to prove';
-  const note = `${hits} wrong, below ${(upper * 100).toFixed(2)} % at 95 %`;
+  const note = count ? `${hits} wrong, below ${(upper * 100).toFixed(2)} % at 95 %` : '';
   return {
     what,
     measured,
@@ -72,7 +72,7 @@ function nearOne(what: string, pulls: readonly number[], needed: number): ScoreR
   if (pulls.length < needed) reached = `needs ${needed}`;
   else if (measured >= 0.95 && measured <= 1.05) reached = 'yes';
   else if (measured >= 0.8 && measured <= 1.2) reached = 'floor';
-  const note = `robust ${robustScatter(pulls).toFixed(3)}, mean ${mean(pulls).toFixed(3)}`;
+  const note = pulls.length > 1 ? `robust ${robustScatter(pulls).toFixed(3)}, mean ${mean(pulls).toFixed(3)}` : '';
   return { what, measured, count: pulls.length, floor: '0.8-1.2', goal: '0.95-1.05', reached, format: 'number', note };
 }
 
@@ -151,7 +151,7 @@ export function score(outcomes: readonly Outcome[]): ScoreRow[] {
       goal: '1.1',
       reached: bound.length < 200 ? 'needs 200' : overBound <= 1.1 ? 'yes' : overBound <= 1.5 ? 'floor' : 'no',
       format: 'number',
-      note: `robust ${robustScatter(bound).toFixed(3)}`,
+      note: bound.length > 1 ? `robust ${robustScatter(bound).toFixed(3)}` : '',
     },
     nearOne('pull of z, narrow lines', numbers(narrow.map(({ judged }) => judged.redshiftPull)), 800),
     nearOne('pull of flux, narrow lines', numbers(lines.map((line) => line.flux)), 800),

@@ -5,12 +5,14 @@ export function mean(values: readonly number[]): number {
 
 /** Standard deviation about the mean, n - 1 below; NaN for fewer than two. */
 export function standardDeviation(values: readonly number[]): number {
+  if (values.length < 2) return NaN;
   const middle = mean(values);
   return Math.sqrt(values.reduce((sum, value) => sum + (value - middle) ** 2, 0) / (values.length - 1));
 }
 
 /** Middle value; NaN for none. */
 export function median(values: readonly number[]): number {
+  if (values.length === 0) return NaN;
   const sorted = [...values].sort((a, b) => a - b);
   const half = sorted.length >> 1;
   return sorted.length % 2 ? sorted[half] : 0.5 * (sorted[half - 1] + sorted[half]);
