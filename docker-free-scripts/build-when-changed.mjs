@@ -20,11 +20,15 @@ function newest(path) {
   return readdirSync(path).reduce((latest, name) => Math.max(latest, newest(join(path, name))), stat.mtimeMs);
 }
 
-/** Runs `npm run build` where it is due. Its output goes to `stdio`. */
-export function buildWhenChanged(stdio = 'inherit') {
+/** Runs `npm run build` where it is due; true if it was. A failed build throws with all it printed. */
+export function buildWhenChanged() {
   const wanted = String(Math.max(...SOURCES.map(newest)));
   if (existsSync(STAMP) && readFileSync(STAMP, 'utf8') === wanted) return false;
-  execFileSync('npm', ['run', '--silent', 'build'], { stdio });
+  try {
+    execFileSync('npm', ['run', '--silent', 'build'], { stdio: 'pipe', maxBuffer: 1 << 26 });
+  } catch (error) {
+    throw new Error(`the build failed:\n${error.stdout}${error.stderr}`);
+  }
   writeFileSync(STAMP, wanted);
   return true;
 }

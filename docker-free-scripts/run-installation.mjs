@@ -104,7 +104,7 @@ function end(code) {
 for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end(check ? 1 : 0));
 
 try {
-  if (buildWhenChanged(['ignore', 'ignore', 'inherit'])) say('Built.');
+  if (buildWhenChanged()) say('Built.');
   services = await startServices(data);
   const env = {
     ...process.env,

@@ -53,12 +53,14 @@ async function main(): Promise<void> {
   );
   worker.on('error', (error) => log.debug({ err: error.message }, 'worker'));
 
-  const beat = setInterval(() => {
+  const tellAlive = () => {
     const life = JSON.stringify({ at: Date.now(), threads: config().WORKER_THREADS, cores: availableParallelism() });
     redis()
       .set(`${channel('worker')}-${process.pid}`, life, 'EX', 15)
       .catch(() => {});
-  }, 5_000);
+  };
+  tellAlive();
+  const beat = setInterval(tellAlive, 5_000);
   log.info({ threads: config().WORKER_THREADS, pid: process.pid }, 'worker is up');
 
   let ending = false;
