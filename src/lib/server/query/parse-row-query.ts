@@ -32,23 +32,35 @@ export type RowFormat = (typeof ROW_FORMATS)[number];
 export const DEFAULT_LIMIT = 1_000;
 const MOST_ROWS_A_PAGE = 10_000;
 
+const PARAMETERS = 'ra, dec, radius, redshift_min, redshift_max, confidence, limit, cursor, format';
+
+function unknownParameter(issue: z.core.$ZodRawIssue): string | undefined {
+  if (issue.code !== 'unrecognized_keys') return undefined;
+  return `there is no parameter ${issue.keys.join(', ')}; those there are: ${PARAMETERS}`;
+}
+
 const rowQuerySchema = z
-  .object({
-    ra: number(0, 360, 'the right ascension in ICRS degrees, 0 to 360'),
-    dec: number(-90, 90, 'the declination in ICRS degrees, -90 to 90'),
-    radius: number(0, 180, 'the radius of the cone in degrees, 0 to 180'),
-    redshift_min: number(-1, 1000, 'a redshift, such as 0.25'),
-    redshift_max: number(-1, 1000, 'a redshift, such as 0.4'),
-    confidence: z
-      .string()
-      .transform((text) => text.split(',').map((word) => word.trim()))
-      .pipe(z.array(z.enum(CONFIDENCE_WORDS, `take from ${CONFIDENCE_WORDS.join(', ')}, with commas between`)))
-      .optional(),
-    limit: whole(1, MOST_ROWS_A_PAGE),
-    cursor: z.string().max(500).optional(),
-    format: z.enum(ROW_FORMATS, `give ${ROW_FORMATS.join(', ')}`).optional(),
-  })
-  .strict()
+  .strictObject(
+    {
+      ra: number(0, 360, 'the right ascension in ICRS degrees, 0 to 360'),
+      dec: number(-90, 90, 'the declination in ICRS degrees, -90 to 90'),
+      radius: number(0, 180, 'the radius of the cone in degrees, 0 to 180'),
+      redshift_min: number(-1, 1000, 'a redshift, such as 0.25'),
+      redshift_max: number(-1, 1000, 'a redshift, such as 0.4'),
+      confidence: z
+        .string()
+        .transform((text) => text.split(',').map((word) => word.trim()))
+        .refine(
+          (words) => words.every((word) => (CONFIDENCE_WORDS as readonly string[]).includes(word)),
+          `take from ${CONFIDENCE_WORDS.join(', ')}, with commas between`,
+        )
+        .optional(),
+      limit: whole(1, MOST_ROWS_A_PAGE),
+      cursor: z.string().max(500).optional(),
+      format: z.enum(ROW_FORMATS, `give ${ROW_FORMATS.join(', ')}`).optional(),
+    },
+    { error: unknownParameter },
+  )
   .superRefine(({ ra, dec, radius, redshift_min: low, redshift_max: high }, context) => {
     const cone = { ra, dec, radius };
     const missing = Object.entries(cone).filter(([, value]) => value === undefined);
