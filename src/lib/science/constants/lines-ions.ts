@@ -1,6 +1,7 @@
 import { lineEntry, type LineEntry } from './line-entry';
 
 const NIST = 'NIST ASD energy levels, 1e8 / (E_upper - E_lower)';
+const NIST_MEMORY = 'NIST ASD (from memory)';
 const MULTIPLET =
   'multiplet centroid of the NIST ASD fine-structure components (from memory, within 0.03 Å of single components)';
 const STOREY_ZEIPPEN = 'Storey & Zeippen (2000, MNRAS 312, 813)';
@@ -19,6 +20,9 @@ export const ION_LINES: readonly LineEntry[] = [
   permitted('C IV', 1548.1865),
   permitted('C IV', 1550.7723),
   permitted('He II', 1640.42, MULTIPLET),
+  permitted('Al III', 1854.716, NIST_MEMORY),
+  permitted('Al III', 1862.79, NIST_MEMORY),
+  lineEntry('Si III]', 1892.03, 'semi-forbidden', NIST_MEMORY),
   lineEntry('[C III]', 1906.6828, 'forbidden', NIST),
   lineEntry('C III]', 1908.7339, 'semi-forbidden', NIST),
   permitted('Mg II', 2796.3518),

@@ -3,13 +3,10 @@ import { evidenceOfFamily } from './family-weight';
 import type { Feature } from './features';
 import { BROAD_COMPONENTS, CORE_COMPONENTS, type LineComponent } from './fit/components';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
-import type { FitData } from './fit/fit-windows';
-import { lineByName } from '../constants/lines';
 import { jointFit, type JointFit } from './fit/joint-fit';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import { breakLogRatio, LYMAN_COMPONENTS } from './lyman-alpha';
-import { lowerBound } from './noise';
 import type { WeighContext } from './weigh-context';
 import type { Suspect, SuspectKind } from './shortlist';
 
@@ -55,8 +52,6 @@ export const COMPONENTS_OF_KIND: Record<SuspectKind, readonly LineComponent[]> =
   lyman: LYMAN_COMPONENTS,
 };
 
-const LYMAN_ALPHA_REST = lineByName('Lyman-alpha 1216').wavelengthVacuum;
-
 /** Natural logarithm of the redshift range in ln(1+z) over which the prior is flat. */
 const LOG_REDSHIFT_RANGE = Math.log(Math.log(8.5 / 0.997));
 
@@ -68,24 +63,11 @@ const LOG_REDSHIFT_RANGE = Math.log(Math.log(8.5 / 0.997));
  */
 export function fitCandidate(context: WeighContext, suspect: Suspect, steps: number): FittedCandidate | null {
   const sigmas: [number, number] = suspect.kind === 'broad' ? [150, suspect.sigmaKms] : [suspect.sigmaKms, 1900];
-  const data = suspect.kind === 'broad' ? withoutForest(context.data, suspect.logScale) : context.data;
   const start = { logScale: suspect.logScale, sigmaKms: sigmas };
-  const fit = jointFit(data, COMPONENTS_OF_KIND[suspect.kind], start, steps);
+  const fit = jointFit(context.data, COMPONENTS_OF_KIND[suspect.kind], start, steps);
   if (!fit) return null;
   const weighed = weighFit(context, fit, suspect.kind);
   return weighed.logEvidence > -Infinity ? weighed : null;
-}
-
-/** Weight left to pixels in the Lyman-alpha forest. */
-const FOREST_WEIGHT = 0.1;
-
-/** A quasar's light beyond Lyman-alpha is eaten by the forest: its pixels say little of the line. */
-export function withoutForest(data: FitData, logScale: number): FitData {
-  const end = lowerBound(data.wavelength, LYMAN_ALPHA_REST * Math.exp(logScale));
-  if (end === 0 || logScale < Math.log(2.6)) return data;
-  const weight = Float64Array.from(data.weight);
-  for (let i = 0; i < end; i++) weight[i] *= FOREST_WEIGHT;
-  return { ...data, weight };
 }
 
 /** Weighs a fit; see `fitCandidate`. */

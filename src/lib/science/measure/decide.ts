@@ -5,6 +5,7 @@ import type { FittedCandidate } from './candidate-fit';
 import { confidenceOf } from './confidence';
 import { doubletAdvantage } from './doublet-test';
 import { finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
+import type { FitData } from './fit/fit-windows';
 import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
 import { lineFitsOf } from './line-fits';
 import { breakLogRatio, systemicRedshift } from './lyman-alpha';
@@ -77,7 +78,7 @@ export function decide(
   const context = hypotheses.context;
   const refits = entries.slice(0, listed).map((entry, rank) => {
     if (!entry.emission) return null;
-    return finalFit(context, entry.emission, rank === 0 ? 12 : 0);
+    return finalFit(prepared.working, context.noiseFactor, entry.emission, rank === 0 ? 12 : 3);
   });
   const candidates = entries.slice(0, listed).map((entry, rank) => {
     const share = rank === 0 ? probability : entry.probability * rest;
@@ -106,7 +107,7 @@ export function decide(
       linesBlended: false,
     };
   }
-  const evidence = evidenceOf(hypotheses, top, refits[0]);
+  const evidence = evidenceOf(prepared.working, hypotheses, top, refits[0]);
   const confidence = confidenceOf({
     probability,
     probabilityOfNoGalaxy: rivals.nothing + rivals.star,
@@ -143,7 +144,7 @@ function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null)
   };
 }
 
-function evidenceOf(hypotheses: Hypotheses, top: Entry, refit: FinalFit | null) {
+function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null) {
   if (!top.emission || !refit) {
     return {
       independentLines: 0,
@@ -153,7 +154,6 @@ function evidenceOf(hypotheses: Hypotheses, top: Entry, refit: FinalFit | null) 
       absorptionFeatures: top.absorption?.strongFeatures ?? 0,
     };
   }
-  const { data } = hypotheses.context;
   const support = supportingLines(refit, hypotheses.banks.lines);
   const oxygen = refit.fit.components.findIndex((c) => c.name === '[O II] 3730' && c.width === 0);
   const resolvedDoublet =
@@ -182,7 +182,7 @@ function emissionCandidate(
   probability: number,
   first: boolean,
 ): Candidate {
-  const { data } = hypotheses.context;
+  const data = prepared.working;
   const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines);
   const errors = redshiftErrors(refit, candidate.kind === 'broad');
   const scale = { flux: prepared.working.scale, errors: refit.errorScale };

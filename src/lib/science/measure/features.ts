@@ -22,8 +22,11 @@ export interface Feature {
   logArtefact: number;
 }
 
-/** How often something that is no line makes a feature, per resolution element: clean sky, bad sky, edge, spikes. */
-const ARTEFACT_RATE = { clean: 1e-5, sky: 6e-4, edge: 4e-4, spike: 1e-4 } as const;
+/**
+ * How often something that is no line makes a feature, per resolution element, before the spectrum's own dips are
+ * counted: clean sky, bad sky, edge, spikes.
+ */
+const ARTEFACT_RATE = { clean: 3e-6, sky: 3e-4, edge: 3e-4, spike: 1e-4 } as const;
 
 /**
  * Local maxima of significance over all widths of a bank.
@@ -54,6 +57,7 @@ export function findFeatures(
     if (best[k] >= threshold && best[k] >= best[k - 1] && best[k] > best[k + 1]) maxima.push(k);
   }
   maxima.sort((a, b) => best[b] - best[a] || a - b);
+  const rates = artefactRates(working, bank);
   const features: Feature[] = [];
   for (const k of maxima) {
     const logWavelength = start + k * step;
@@ -66,7 +70,7 @@ export function findFeatures(
     const { nearSky, nearEdge } = surroundings(working, pixel, wavelength, 1.2 * reach);
     const spike = spikeAdvantage(working, residual, highestPixel(working, residual, pixel)).advantage;
     const rate =
-      (nearSky ? ARTEFACT_RATE.sky : nearEdge ? ARTEFACT_RATE.edge : ARTEFACT_RATE.clean) +
+      (nearSky ? rates.sky : nearEdge ? ARTEFACT_RATE.edge : rates.clean) +
       ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike)));
     const s = bounded(best[k], filters[which[k]].information[k], continuum[pixel], wavelength * (reach / 2.5));
     // A positive bump of unknown height, log-uniform over a factor 1,000, as likelihood odds times its rate.
@@ -119,6 +123,34 @@ function surroundings(
     if (!(working.weight[i] > 0)) bad++;
     if (working.mask[i] & (MASK.skyLine | MASK.telluric)) sky++;
   }
+}
+
+/**
+ * Rates of artefacts from the spectrum itself: faults of noise and sky subtraction make dips as often as bumps, so dips
+ * beyond 4.5 sigma, counted in and out of sky pixels, tell how many bumps to expect. Dips on a bright continuum may be
+ * stellar absorption and are counted all the same: they then only make the engine more careful.
+ */
+function artefactRates(working: WorkingSpectrum, bank: FilterBank): { clean: number; sky: number } {
+  const { count, start, step, filters } = bank;
+  const filter = filters[0];
+  const elements = { clean: 1, sky: 1 };
+  const dips = { clean: 0, sky: 0 };
+  const middle = working.count >> 1;
+  const element = (2.3548 * working.lsfSigma[middle]) / working.wavelength[middle] / step;
+  let pixel = 0;
+  for (let k = 1; k < count - 1; k++) {
+    if (!(filter.information[k] > 0)) continue;
+    const wavelength = Math.exp(start + k * step);
+    while (pixel < working.count - 1 && working.edges[pixel + 1] <= wavelength) pixel++;
+    const place = working.mask[pixel] & (MASK.skyLine | MASK.telluric) ? 'sky' : 'clean';
+    elements[place] += 1 / Math.max(1, element);
+    const s = filter.significance[k];
+    if (s < -4.5 && s <= filter.significance[k - 1] && s < filter.significance[k + 1]) dips[place]++;
+  }
+  return {
+    clean: Math.max(ARTEFACT_RATE.clean, Math.min(1e-3, Math.max(0, dips.clean - 1) / elements.clean)),
+    sky: Math.max(ARTEFACT_RATE.sky, Math.min(0.05, (dips.sky + 0.3) / elements.sky)),
+  };
 }
 
 function highestPixel(working: WorkingSpectrum, residual: Float64Array, pixel: number): number {

@@ -1,10 +1,10 @@
-import { COMPONENTS_OF_KIND, misfitScale, withoutForest, type FittedCandidate } from './candidate-fit';
+import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candidate-fit';
 import type { FilterBank } from './detect';
 import { FULL_COMPONENTS, type LineComponent } from './fit/components';
+import type { FitData } from './fit/fit-windows';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
 import { lymanAlphaPeak } from './lyman-alpha';
-import type { WeighContext } from './weigh-context';
 
 /** The answer's fit at full depth. */
 export interface FinalFit {
@@ -23,15 +23,19 @@ function componentsFor(kind: FittedCandidate['kind']): readonly LineComponent[] 
   return kind === 'narrow' ? FULL_NARROW : COMPONENTS_OF_KIND[kind];
 }
 
-/** Fits a candidate again with every line of its kind, to convergence. */
-export function finalFit(context: WeighContext, candidate: FittedCandidate, steps: number): FinalFit {
+/**
+ * Fits a candidate again with every line of its kind, to convergence.
+ *
+ * @param data with the spectrum's plain weights
+ * @param noiseFactor measured noise over declared noise
+ */
+export function finalFit(data: FitData, noiseFactor: number, candidate: FittedCandidate, steps: number): FinalFit {
   const start = { logScale: candidate.fit.logScale, sigmaKms: candidate.fit.sigmaKms };
-  const data = candidate.kind === 'broad' ? withoutForest(context.data, start.logScale) : context.data;
   const fit = jointFit(data, componentsFor(candidate.kind), start, steps) ?? candidate.fit;
   const errors = fitErrors(fit);
-  const errorScale = misfitScale(fit, context.noiseFactor);
+  const errorScale = misfitScale(fit, noiseFactor);
   if (candidate.kind !== 'lyman') return { fit, errors, errorScale, logScale: fit.logScale, lyman: null };
-  const peak = lymanAlphaPeak(context.data, fit);
+  const peak = lymanAlphaPeak(data, fit);
   return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak };
 }
 
@@ -64,7 +68,7 @@ export function supportingLines(final: FinalFit, bank: FilterBank): LineSupport[
   const support: LineSupport[] = [];
   fit.components.forEach((component, i) => {
     const significance = fit.amplitude[i] / (errors.amplitude[i] * final.errorScale);
-    if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red')) return;
+    if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red') || component.step) return;
     for (const member of component.members) {
       const wavelengthObserved = member.rest * Math.exp(fit.logScale);
       const width = component.width === 1 ? 350 : fit.sigmaKms[0];

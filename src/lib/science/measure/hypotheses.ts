@@ -1,7 +1,8 @@
+import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
 import { fitCandidate, type FittedCandidate } from './candidate-fit';
-import { BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
+import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
 import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
 import { lowerBound } from './noise';
@@ -10,6 +11,7 @@ import { BROAD_SCAN_LINES, NARROW_SCAN_LINES, scanRedshifts } from './scan';
 import type { MeasureSettings } from './settings';
 import { identitiesOf, lymanCovered, shortlist, type Suspect } from './shortlist';
 import type { WeighContext } from './weigh-context';
+import type { WorkingSpectrum } from './working-spectrum';
 
 /** An absorption redshift. */
 export interface AbsorptionCandidate extends AbsorptionEvidence {
@@ -45,7 +47,7 @@ const ABSORPTION_REDSHIFT_LIMIT = 1.6;
 
 /** Runs detection, scan, shortlist and joint fits, and weighs every hypothesis. */
 export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSettings): Hypotheses {
-  const { working, continuum, stiffContinuum, residual, stiffResidual } = prepared;
+  const { guarded: working, continuum, stiffContinuum, residual, stiffResidual } = prepared;
   const middle = working.count >> 1;
   const relativeResolution = working.lsfSigma[middle] / working.wavelength[middle];
   const step = Math.min(4e-4, Math.max(5e-5, (relativeResolution * 2.355) / 3));
@@ -53,6 +55,12 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const lines = filterBank(grid, NARROW_SIGMAS_KMS, step, settings.noiseCheck);
   const bands = filterBank({ ...working, residual: stiffResidual }, BROAD_SIGMAS_KMS, 1e-3, settings.noiseCheck);
   const features = findFeatures(working, residual, continuum, lines, 4);
+  const dark = filterBank(
+    { ...grid, weight: withoutEmission(working, features) },
+    ABSORPTION_SIGMAS_KMS,
+    step,
+    settings.noiseCheck,
+  );
   const context: WeighContext = {
     data: working,
     continuum,
@@ -67,7 +75,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const absorptionAt = (logScale: number, star: boolean): AbsorptionCandidate => ({
     logScale,
     ...absorptionEvidence(
-      { lines, bands },
+      { lines: dark, bands },
       logScale,
       relativeResolution,
       context.logNoiseFlux,
@@ -84,7 +92,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     candidates.push(fitted);
   }
   const range = [settings.redshiftMinimum, Math.min(settings.redshiftMaximum, ABSORPTION_REDSHIFT_LIMIT)] as const;
-  const peaks = scanRedshifts(lines, ABSORPTION_SCAN_LINES, range, 6, 1000, -1);
+  const peaks = scanRedshifts(dark, ABSORPTION_SCAN_LINES, range, 6, 1000, -1);
   const starLimit = STAR_KMS / SPEED_OF_LIGHT_KMS;
   const absorption = peaks
     .filter((peak) => Math.abs(peak.logScale) > starLimit)
@@ -102,6 +110,22 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     banks: { lines, bands },
     relativeResolution,
   };
+}
+
+/**
+ * Weights for the search of absorption: nothing under emission features, which drag their surroundings down, and nothing
+ * in telluric bands, which absorb whatever the object.
+ */
+function withoutEmission(working: WorkingSpectrum, features: readonly Feature[]): Float64Array {
+  const weight = Float64Array.from(working.weight);
+  for (let i = 0; i < working.count; i++) if (working.mask[i] & MASK.telluric) weight[i] = 0;
+  for (const feature of features) {
+    const pixel = Math.min(working.count - 1, lowerBound(working.wavelength, feature.wavelength));
+    const sigma = Math.hypot(working.lsfSigma[pixel], (feature.wavelength * feature.sigmaKms) / SPEED_OF_LIGHT_KMS);
+    const end = lowerBound(working.wavelength, feature.wavelength + 3 * sigma);
+    for (let i = lowerBound(working.wavelength, feature.wavelength - 3 * sigma); i < end; i++) weight[i] = 0;
+  }
+  return weight;
 }
 
 function typicalLogNoise(bank: FilterBank): number {

@@ -34,7 +34,7 @@ export function lineFitsOf(
   const lines: LineFit[] = [];
   const skip = lyman ? LYMAN_PROFILE_COMPONENTS : 0;
   fit.components.forEach((component, i) => {
-    if (!(fit.gram[i * n + i] > 0) || (i > 0 && i < skip)) return;
+    if (!(fit.gram[i * n + i] > 0) || (i > 0 && i < skip) || component.step) return;
     const group = i === 0 && lyman ? Array.from({ length: skip }, (_, k) => k) : [i];
     let flux = 0;
     let variance = 0;
@@ -90,7 +90,7 @@ function continuumAt(
   for (const c of window.components) {
     const profile = new Float64Array(length);
     const component = fit.components[c];
-    for (const member of component.members) {
+    for (const member of component.step ? [] : component.members) {
       const sigma = fit.sigmaKms[component.width];
       addLineProfile(data, member.rest * stretch, sigma, member.share, window.from, length, profile, null, null);
     }

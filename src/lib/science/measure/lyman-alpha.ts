@@ -93,7 +93,7 @@ export function systemicRedshift(peakRedshift: number, fwhmKms: number): number 
  * Transmission exp(-0.0036 (1+z)^3.46) with a scatter of 0.2; without a break the ratio scatters by 0.15.
  * Source of the optical depth: Meiksin (2006, MNRAS 365, 807), form of Madau (1995) for the Lyman-alpha forest.
  *
- * @returns log ratio within [-40, 15]; 0 where a side has no data
+ * @returns log ratio within [-40, 6]; 0 where a side has no data
  */
 export function breakLogRatio(data: FitData, redshift: number): { logRatio: number; significance: number } {
   const mean = (from: number, to: number) => {
@@ -120,7 +120,7 @@ export function breakLogRatio(data: FitData, redshift: number): { logRatio: numb
   );
   const without = log(blue.value - red.value, blue.variance + red.variance + (0.15 * level) ** 2);
   return {
-    logRatio: Math.max(-40, Math.min(15, withBreak - without)),
+    logRatio: Math.max(-40, Math.min(6, withBreak - without)),
     significance: (red.value - blue.value) / Math.sqrt(red.variance + blue.variance),
   };
 }

@@ -31,7 +31,11 @@ export function buildProfiles(
       const byWidth = new Float64Array(length);
       const component = components[c];
       const sigma = sigmaKms[component.width];
-      for (const member of component.members) {
+      if (component.step) {
+        const edge = component.members[0].rest * stretch;
+        for (let i = 0; i < length && data.wavelength[window.from + i] < edge; i++) profile[i] = -1;
+      }
+      for (const member of component.step ? [] : component.members) {
         addLineProfile(
           data,
           member.rest * stretch,

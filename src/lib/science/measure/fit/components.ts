@@ -14,6 +14,8 @@ export interface LineComponent {
   members: ComponentMember[];
   /** Which width parameter it follows: 0 narrow, 1 broad. */
   width: 0 | 1;
+  /** A drop of the continuum below the first member's wavelength instead of lines. */
+  step?: boolean;
 }
 
 /** A prior on the ratio of two components of a density- or opacity-sensitive doublet. */
@@ -130,11 +132,16 @@ const pair = (a: string, b: string, width: 0 | 1): LineComponent => {
 
 /** Broad permitted lines of quasars; doublets count as one broad line. */
 export const BROAD_COMPONENTS: readonly LineComponent[] = [
+  // The forest eats the continuum and the blue half of Lyman-alpha: a step, and a narrower core.
+  { ...componentOf('Lyman-alpha 1216', 1), name: 'Lyman-alpha step', step: true },
+  componentOf('Lyman-alpha 1216', 0),
   componentOf('Lyman-alpha 1216', 1),
   pair('N V 1239', 'N V 1243', 1),
   pair('Si IV 1394', 'Si IV 1403', 1),
   pair('C IV 1548', 'C IV 1551', 1),
   componentOf('He II 1640', 1),
+  pair('Al III 1855', 'Al III 1863', 1),
+  componentOf('Si III] 1892', 1),
   componentOf('C III] 1909', 1),
   pair('Mg II 2796', 'Mg II 2804', 1),
   componentOf('H-delta 4103', 1),
