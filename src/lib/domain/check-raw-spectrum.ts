@@ -6,6 +6,9 @@ export const MIN_PIXELS = 16;
 /** More pixels than this are no 1-D spectrum; it bounds the memory a hostile file can ask for. */
 export const MAX_PIXELS = 4_000_000;
 
+/** Spectra whole outside these bounds, ångström, have a wrong unit or are of no use here. */
+const WAVELENGTH_BOUNDS = [100, 1e6];
+
 /** First pixel that breaks the order of the wavelengths, or -1: they must rise or fall strictly. Pixels without a positive wavelength are passed over. */
 function firstDisorder(wavelength: Float64Array): number {
   let previous = Number.NaN;
@@ -61,7 +64,25 @@ export function checkRawSpectrum(raw: RawSpectrum, where: string): Problem | nul
       mend: 'Sort the pixels by wavelength, each wavelength once; merge overlapping arms before you hand them in.',
     };
   }
-  return checkValues(raw, where);
+  return checkRange(raw, where) ?? checkValues(raw, where);
+}
+
+function checkRange(raw: RawSpectrum, where: string): Problem | null {
+  let shortest = Number.POSITIVE_INFINITY;
+  let longest = 0;
+  for (const value of raw.wavelength) {
+    const angstrom = value * raw.wavelengthScaleAngstrom;
+    if (!(angstrom > 0) || angstrom === Number.POSITIVE_INFINITY) continue;
+    shortest = Math.min(shortest, angstrom);
+    longest = Math.max(longest, angstrom);
+  }
+  if (longest === 0 || (longest >= WAVELENGTH_BOUNDS[0] && shortest <= WAVELENGTH_BOUNDS[1])) return null;
+  return {
+    code: 'wavelength-out-of-range',
+    what: `The wavelengths run from ${shortest.toPrecision(4)} to ${longest.toPrecision(4)} Å.`,
+    where,
+    mend: `Check the unit of the wavelengths: spectra between ${WAVELENGTH_BOUNDS[0]} Å and ${WAVELENGTH_BOUNDS[1]} Å are read.`,
+  };
 }
 
 function checkValues(raw: RawSpectrum, where: string): Problem | null {

@@ -106,6 +106,7 @@ const cases: [title: string, code: string, bytes: Uint8Array, name: string][] = 
     table({ wave: { values: wave.map((value) => value / 10), unit: null } }),
     'a.fits',
   ],
+  ['a unit that cannot be right', 'wavelength-out-of-range', table({ wave: { unit: 'm' } }), 'a.fits'],
   ['an axis without a step', 'axis-without-step', replaced(image, 'CDELT1  =', 'CDELTX  ='), 'a.fits'],
   ['a look-up axis', 'axis-not-read', replaced(image, "'WAVE    '", "'WAVE-TAB'"), 'a.fits'],
   ['gzip that was cut', 'gzip-damaged', gzipSync(table()).subarray(0, 200), 'a.fits.gz'],

@@ -123,6 +123,15 @@ function readHdu(bytes: Uint8Array, start: number, primary: Cards | null, place:
   }
   const name = (cards.own('EXTNAME') ? cards.text('EXTNAME') : null) ?? '';
   const kind = kindOf(cards, extension);
+  const pixels = axes.length === 0 ? 0 : axes.reduce((product, length) => product * length, 1);
+  if (kind === 'image' && size < (pixels * Math.abs(bitpix)) / 8) {
+    throw problemAt(
+      { ...place, detail: 'card GCOUNT' },
+      'fits-card-invalid',
+      'GCOUNT leaves no room for the image that NAXISn describe.',
+      'GCOUNT is 1 for images: write the file again.',
+    );
+  }
   const hdu: Hdu = { extension, kind, name, cards, bitpix, axes, data: bytes.subarray(end, end + size) };
   return { hdu, next: end + Math.ceil(size / BLOCK_BYTES) * BLOCK_BYTES };
 }

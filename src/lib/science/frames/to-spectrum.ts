@@ -14,7 +14,8 @@ import { velocityFrame, type VelocityFrame } from './velocity-frame';
 function risingOrder(raw: RawSpectrum): Int32Array {
   const { wavelength } = raw;
   const order: number[] = [];
-  for (let i = 0; i < wavelength.length; i++) if (wavelength[i] > 0 && Number.isFinite(wavelength[i])) order.push(i);
+  for (let i = 0; i < wavelength.length; i++)
+    if (wavelength[i] > 0 && Number.isFinite(wavelength[i] * raw.wavelengthScaleAngstrom)) order.push(i);
   const first = wavelength[order[0]];
   const last = wavelength[order[order.length - 1]];
   return Int32Array.from(last < first ? order.reverse() : order);
@@ -109,7 +110,19 @@ export function toSpectrum(raw: RawSpectrum, instrument?: Instrument): Spectrum 
 
   const frame = velocityFrame(raw, instrument);
   const order = risingOrder(raw);
-  const { wavelength, source } = fillGaps(toBarycentricVacuum(raw, order, frame));
+  const vacuum = toBarycentricVacuum(raw, order, frame);
+  const stuck = vacuum.findIndex((value, i) => i > 0 && !(value > vacuum[i - 1]));
+  if (stuck > 0) {
+    throw new InputProblem({
+      code: 'wavelength-repeated',
+      what: `The wavelengths at ${vacuum[stuck]} Å lie closer than numbers can tell apart.`,
+      where,
+      mend: 'Check the wavelength axis: its step is too small for its values.',
+      extension: raw.extension,
+      row: raw.row,
+    });
+  }
+  const { wavelength, source } = fillGaps(vacuum);
   const index = source.map((from) => (from < 0 ? -1 : order[from]));
   const edges = pixelEdges(wavelength);
   const values = pixelValues(raw, index, wavelength, frame.observerFactor, instrument);
