@@ -37,7 +37,9 @@ describe('what blocks a draft', () => {
     await recordVerdict(other, ids[2], nothing);
     const id = await draft();
     const { checks, rows } = await previewDraft(drafter, slug, id);
-    expect(checks).toMatchObject([{ code: 'open-questions', blocks: true, count: 2, examples: ['T-1', 'T-3'] }]);
+    expect(checks).toMatchObject([
+      { code: 'open-questions', blocks: true, count: 2, examples: [{ text: 'T-1' }, { text: 'T-3' }] },
+    ]);
     // 0.2005 is 125 km/s away: the later verdict is published.
     expect(rows).toMatchObject([{ name: 'T-2', redshift: 0.2005, confidence: 'probable' }]);
     await expect(freezeDraft(signer, slug, id)).rejects.toMatchObject({ code: 'conflict', where: 'checks' });
@@ -50,7 +52,7 @@ describe('what blocks a draft', () => {
     const { slug, draft, drafter, signer } = await world([{ name: 'lost', ra: null, dec: null }, at(1)]);
     const id = await draft();
     const { checks } = await previewDraft(drafter, slug, id);
-    expect(checks).toMatchObject([{ code: 'missing-positions', count: 1, examples: ['lost'] }]);
+    expect(checks).toMatchObject([{ code: 'missing-positions', count: 1, examples: [{ names: ['lost'] }] }]);
     await expect(freezeDraft(signer, slug, id)).rejects.toMatchObject(code('conflict'));
     const revised = await reviseDraft(drafter, slug, id, { selection: { ...GOOD, leaveOut: ['lost'] }, notes: '' });
     expect(await freezeDraft(signer, slug, revised.id)).toMatchObject({ release: 1, rowCount: 1 });
@@ -64,7 +66,9 @@ describe('what blocks a draft', () => {
     ]);
     const id = await draft();
     const { checks } = await previewDraft(drafter, slug, id);
-    expect(checks).toMatchObject([{ code: 'duplicates', count: 1, examples: ['A and B, 0.43 arcsec apart'] }]);
+    expect(checks).toMatchObject([
+      { code: 'duplicates', count: 1, examples: [{ text: 'A and B, 0.43 arcsec apart', names: ['A', 'B'] }] },
+    ]);
     const selection = { ...GOOD, truePairs: [['B', 'A']] as [string, string][] };
     const revised = await reviseDraft(drafter, slug, id, { selection, notes: '' });
     expect((await previewDraft(drafter, slug, revised.id)).checks).toEqual([]);

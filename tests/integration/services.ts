@@ -1,3 +1,4 @@
+import { execFileSync } from 'node:child_process';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -15,6 +16,8 @@ declare module 'vitest' {
 
 /** One pair of servers a run, in a folder that goes with it; each test file has a database and queue prefix of its own. */
 export default async function setup(project: TestProject) {
+  // Workers run from the bundle, as they do in an installation.
+  execFileSync(process.execPath, ['docker-free-scripts/bundle.mjs'], { stdio: 'inherit' });
   const folder = mkdtempSync(join(tmpdir(), 'farglow-test-'));
   const services = await startServices(folder);
   project.provide('databaseUrl', services.databaseUrl(''));

@@ -33,7 +33,7 @@ const document = `${head}${votableRow(cells)}${votableTail}`;
 describe('a VOTable of ours', () => {
   it('is well-formed, whatever the cells hold', () => {
     expect(XMLValidator.validate(document)).toBe(true);
-     
+
     expect(document).not.toMatch(/[\u0000-\u0008\u000b\u000c\u000e-\u001f]/);
     expect(document).toContain('&lt;T&gt; &amp; &quot;1&quot;\ufffd');
   });
