@@ -2,7 +2,7 @@ import type { Spectrum } from '$lib/domain/spectrum';
 
 /**
  * What a script of general tools does: smooth, take the highest peaks, try each as one of five lines, and for each try fit continuum and
- * Gaussians to all pixels by a general Levenberg-Marquardt with numerical derivatives (Marquardt 1963; Press et al. 1992, section 15.5).
+ * Gaussians to the pixels near the lines by a general Levenberg-Marquardt with numerical derivatives (Marquardt 1963; Press et al. 1992, section 15.5).
  * It shares nothing with the engine and is here as the yardstick of speed only.
  */
 export function plainFit(spectrum: Spectrum): { redshift: number; chiSquare: number } {
@@ -20,6 +20,12 @@ export function plainFit(spectrum: Spectrum): { redshift: number; chiSquare: num
         (line) => line * (1 + redshift) > x[0] && line * (1 + redshift) < x[x.length - 1],
       );
       if (lines.length === 0) continue;
+      // a sensible script looks near the lines only
+      const near = x
+        .map((_, i) => i)
+        .filter((i) => lines.some((line) => Math.abs(x[i] - line * (1 + redshift)) < WINDOW));
+      const [nx, ny, nw] = [x, y, w].map((values) => near.map((i) => values[i]));
+      const outside = weightedSquares(y, w) - weightedSquares(ny, nw);
       const model = (p: number[], at: number) => {
         let sum = p[0] + p[1] * (at / x[0] - 1);
         for (let k = 0; k < lines.length; k++) {
@@ -28,14 +34,21 @@ export function plainFit(spectrum: Spectrum): { redshift: number; chiSquare: num
         }
         return sum;
       };
-      const level = y.reduce((sum, value) => sum + value, 0) / y.length;
-      const first = [level, 0, redshift, 5e-4, ...lines.map(() => Math.max(...y) / 3)];
-      const { parameters, chiSquare } = levenbergMarquardt(model, x, y, w, first);
-      if (chiSquare < best.chiSquare) best = { redshift: parameters[2], chiSquare };
+      const level = ny.reduce((sum, value) => sum + value, 0) / ny.length;
+      const first = [level, 0, redshift, 5e-4, ...lines.map(() => Math.max(...ny) / 3)];
+      const fit = levenbergMarquardt(model, nx, ny, nw, first);
+      const chiSquare = fit.chiSquare + outside;
+      if (chiSquare < best.chiSquare) best = { redshift: fit.parameters[2], chiSquare };
     }
   }
   return best;
 }
+
+/** Ångström to either side of a line that the fit takes in. */
+const WINDOW = 100;
+
+const weightedSquares = (values: number[], weights: number[]) =>
+  values.reduce((sum, value, i) => sum + weights[i] * value * value, 0);
 
 const TRIAL_LINES = [6564.61, 5008.24, 3728.5, 4862.68, 1215.67];
 const FITTED_LINES = [1215.67, 3727.09, 3729.88, 4341.68, 4862.68, 4960.3, 5008.24, 6549.86, 6564.61, 6585.27];

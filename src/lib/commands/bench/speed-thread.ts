@@ -14,6 +14,9 @@ export interface SpeedResult {
   /** Milliseconds of each measurement. */
   milliseconds: number[];
   plainMilliseconds: number[];
+  /** Processor time of all measurements, ms: what the wall clock would show on an idle machine; only true alone in the process. */
+  processorMilliseconds: number;
+  plainProcessorMilliseconds: number;
   /** Most heap and array memory that this thread held, MB, the test spectra themselves left out. */
   memoryMegabytes: number;
 }
@@ -23,22 +26,37 @@ function heldMegabytes(): number {
   return (heapUsed + external) / 1e6;
 }
 
+function processorSince(start: NodeJS.CpuUsage): number {
+  const { user, system } = process.cpuUsage(start);
+  return (user + system) / 1000;
+}
+
 /** Measures one spectrum after the other, alone on its thread. */
 export function timeSpectra({ count, warmUp, seed, plain }: SpeedTask): SpeedResult {
   const spectra = speedSpectra(count + warmUp, seed);
   const before = heldMegabytes();
   let most = before;
   const milliseconds: number[] = [];
+  let processorStart = process.cpuUsage();
   spectra.forEach((spectrum, i) => {
+    if (i === warmUp) processorStart = process.cpuUsage();
     const start = performance.now();
     measureSpectrum(spectrum);
     if (i >= warmUp) milliseconds.push(performance.now() - start);
     if (i % 5 === 0) most = Math.max(most, heldMegabytes());
   });
+  const processorMilliseconds = processorSince(processorStart);
+  processorStart = process.cpuUsage();
   const plainMilliseconds = spectra.slice(warmUp, warmUp + plain).map((spectrum) => {
     const start = performance.now();
     plainFit(spectrum);
     return performance.now() - start;
   });
-  return { milliseconds, plainMilliseconds, memoryMegabytes: most - before };
+  return {
+    milliseconds,
+    plainMilliseconds,
+    processorMilliseconds,
+    plainProcessorMilliseconds: processorSince(processorStart),
+    memoryMegabytes: most - before,
+  };
 }

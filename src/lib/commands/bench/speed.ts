@@ -18,8 +18,8 @@ function onThreads(threads: number): Piscina {
 }
 
 /**
- * Times the engine on one thread, then on two at once, beside the plain fit on the same spectra, and prints the table. Figures hold for a
- * machine with nothing else to do.
+ * Times the engine on one thread, then on two at once, beside the plain fit on the same spectra, and prints the table. Rates of one
+ * thread are by processor time, which other work on the machine hardly moves; the others are by the clock.
  */
 export async function runSpeed({ count, seed }: SpeedOptions): Promise<void> {
   const task: SpeedTask = { count, warmUp: 60, seed, plain: 12 };
@@ -37,14 +37,15 @@ export async function runSpeed({ count, seed }: SpeedOptions): Promise<void> {
   const resident = (process.memoryUsage().rss - residentBefore) / 2 / 1e6;
   await two.destroy();
 
-  const rate = 1000 / mean(alone.milliseconds);
+  const wallRate = 1000 / mean(alone.milliseconds);
+  const rate = (1000 * count) / alone.processorMilliseconds;
   const sorted = [...alone.milliseconds].sort((a, b) => a - b);
-  const plainRate = 1000 / mean(alone.plainMilliseconds);
+  const plainRate = (1000 * task.plain) / alone.plainProcessorMilliseconds;
   const pairRate = both.reduce((sum, r) => sum + 1000 / mean(r.milliseconds), 0);
   const verdict = (is: boolean, floor: boolean) => (is ? 'yes' : floor ? 'floor' : 'no');
   const rows = [
-    ['spectra/s on one core', short(rate, 1), `${count}`, '40', '100', verdict(rate >= 100, rate >= 40)],
-    ['plain fit, spectra/s on one core', short(plainRate, 2), `${task.plain}`, '-', '-', '-'],
+    ['spectra per second of one processor', short(rate, 1), `${count}`, '40', '100', verdict(rate >= 100, rate >= 40)],
+    ['plain fit, spectra per second of one processor', short(plainRate, 2), `${task.plain}`, '-', '-', '-'],
     [
       'times the plain fit',
       short(rate / plainRate, 1),
@@ -53,6 +54,7 @@ export async function runSpeed({ count, seed }: SpeedOptions): Promise<void> {
       '50',
       verdict(rate >= 50 * plainRate, false),
     ],
+    ['spectra/s by the clock, one thread', short(wallRate, 1), `${count}`, '-', '-', '-'],
     ['milliseconds, median', short(median(sorted), 1), `${count}`, '-', '-', '-'],
     ['milliseconds, 99 %', short(sorted[Math.floor(0.99 * sorted.length)], 1), `${count}`, '-', '-', '-'],
     ['spectra/s on two threads at once', short(pairRate, 1), `${2 * count}`, '-', '-', '-'],
