@@ -70,6 +70,15 @@ export function fitCandidate(context: WeighContext, suspect: Suspect, steps: num
   return weighed.logEvidence > -Infinity ? weighed : null;
 }
 
+/** Goes on fitting a candidate from where it stands, and weighs it again; never worse than before. */
+export function refineCandidate(context: WeighContext, candidate: FittedCandidate, steps: number): FittedCandidate {
+  const start = { logScale: candidate.fit.logScale, sigmaKms: candidate.fit.sigmaKms };
+  const fit = jointFit(context.data, candidate.fit.components, start, steps);
+  if (!fit) return candidate;
+  const refined = weighFit(context, fit, candidate.kind);
+  return refined.logEvidence > -Infinity ? refined : candidate;
+}
+
 /** Weighs a fit; see `fitCandidate`. */
 export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind): FittedCandidate {
   const { features, noiseFactor } = context;

@@ -4,7 +4,7 @@ import { FWHM_PER_SIGMA } from '../constants/physical';
 import type { FittedCandidate } from './candidate-fit';
 import { confidenceOf } from './confidence';
 import { doubletAdvantage } from './doublet-test';
-import { finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
+import { asFinal, finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
 import type { FitData } from './fit/fit-windows';
 import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
 import { lineFitsOf } from './line-fits';
@@ -43,6 +43,8 @@ export interface Decision {
 /** Error given to an absorption redshift, km/s: a fifth of the widest kernel that sees its lines. */
 const ABSORPTION_ERROR_KMS = 60;
 const RESOLVED_DOUBLET = 25;
+/** Candidates refitted with every line; the others keep the fit they were weighed by. */
+const CANDIDATES_REFITTED = 3;
 
 type Entry =
   | { emission: FittedCandidate; absorption: null; probability: number }
@@ -78,6 +80,7 @@ export function decide(
   const context = hypotheses.context;
   const refits = entries.slice(0, listed).map((entry, rank) => {
     if (!entry.emission) return null;
+    if (rank >= CANDIDATES_REFITTED) return asFinal(entry.emission);
     return finalFit(prepared.working, context.noiseFactor, entry.emission, rank === 0 ? 12 : 3);
   });
   const candidates = entries.slice(0, listed).map((entry, rank) => {

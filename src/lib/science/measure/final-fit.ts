@@ -39,6 +39,12 @@ export function finalFit(data: FitData, noiseFactor: number, candidate: FittedCa
   return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak };
 }
 
+/** A candidate's own fit in the form of a final one. */
+export function asFinal(candidate: FittedCandidate): FinalFit {
+  const { fit, errors, noiseFactor } = candidate;
+  return { fit, errors, errorScale: noiseFactor, logScale: fit.logScale, lyman: null };
+}
+
 /** Significance of a bank's best-matching narrow filter at an observed wavelength; 0 outside. */
 export function significanceAt(bank: FilterBank, wavelength: number, sigmaKms: number): number {
   const filter = bank.filters.reduce((best, next) =>

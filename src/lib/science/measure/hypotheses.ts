@@ -1,7 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
-import { fitCandidate, type FittedCandidate } from './candidate-fit';
+import { fitCandidate, refineCandidate, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
 import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
@@ -41,6 +41,10 @@ const IDENTITIES = [
   '[S III] 9533',
   'Paschen-alpha 18756',
 ];
+/** Levenberg-Marquardt steps for every suspect, and then for the best. */
+const FIRST_STEPS = 2;
+const MORE_STEPS = 4;
+const REFINED = 5;
 const STAR_KMS = 600;
 /** Absorption is looked for up to here: beyond, its strong features leave the optical. */
 const ABSORPTION_REDSHIFT_LIMIT = 1.6;
@@ -85,9 +89,12 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     ),
   });
   const candidates: FittedCandidate[] = [];
-  for (const suspect of suspects) {
-    const fitted = fitCandidate(context, suspect, 5);
-    if (!fitted) continue;
+  const tried = suspects
+    .map((suspect) => ({ suspect, fitted: fitCandidate(context, suspect, FIRST_STEPS) }))
+    .filter((trial): trial is { suspect: Suspect; fitted: FittedCandidate } => trial.fitted !== null)
+    .sort((a, b) => b.fitted.logEvidence - a.fitted.logEvidence);
+  for (let rank = 0; rank < tried.length; rank++) {
+    const fitted = rank < REFINED ? refineCandidate(context, tried[rank].fitted, MORE_STEPS) : tried[rank].fitted;
     fitted.logEvidence += Math.max(0, absorptionAt(fitted.fit.logScale, false).logEvidence);
     candidates.push(fitted);
   }

@@ -101,8 +101,9 @@ export function scanRedshifts(
   const presences = [...new Set(lines.map((line) => line.presence))];
   bank.filters.forEach((filter, f) => {
     total.fill(0);
+    const odds = lineOdds(filter.significance, filter.information, sign);
     for (const presence of presences) {
-      const gain = lineGains(filter.significance, filter.information, presence, sign);
+      const gain = lineGains(odds, filter.information, presence);
       for (const line of lines) {
         if (line.presence !== presence) continue;
         // Node of the line's rest wavelength relative to the grid: observed node = redshift node + shift.
@@ -122,30 +123,30 @@ export function scanRedshifts(
   return distinctPeaks(best, bestFilter, firstNode, step, limit, separationKms);
 }
 
-function lineGains(
-  significance: Float64Array,
-  information: Float64Array,
-  presence: number,
-  sign: 1 | -1,
-): Float64Array {
+/** Odds exp(b) of a line of positive flux at every node, best of the node and its neighbours. */
+function lineOdds(significance: Float64Array, information: Float64Array, sign: 1 | -1): Float64Array {
   const count = significance.length;
   const raw = new Float64Array(count);
-  const absent = 1 - presence;
   for (let k = 0; k < count; k++) {
     if (!(information[k] > 0)) continue;
-    const s = sign * significance[k];
-    if (s > 12) raw[k] = GAIN_CAP;
-    else {
-      const log = s > 0 ? 0.5 * s * s - Math.log(1 + 2.5 * s) : -0.9 * Math.min(3, -s);
-      raw[k] = Math.min(GAIN_CAP, Math.log(absent + presence * Math.exp(log)));
-    }
+    const s = Math.min(12, sign * significance[k]);
+    raw[k] = s > 0 ? Math.exp(0.5 * s * s) / (1 + 2.5 * s) : Math.exp(-0.9 * Math.min(3, -s));
   }
-  const gain = new Float64Array(count);
+  const odds = new Float64Array(count);
   for (let k = 0; k < count; k++) {
     let value = raw[k];
     if (k > 0 && raw[k - 1] > value) value = raw[k - 1];
     if (k < count - 1 && raw[k + 1] > value) value = raw[k + 1];
-    gain[k] = value;
+    odds[k] = value;
+  }
+  return odds;
+}
+
+function lineGains(odds: Float64Array, information: Float64Array, presence: number): Float64Array {
+  const gain = new Float64Array(odds.length);
+  const absent = 1 - presence;
+  for (let k = 0; k < odds.length; k++) {
+    if (information[k] > 0) gain[k] = Math.min(GAIN_CAP, Math.log(absent + presence * odds[k]));
   }
   return gain;
 }

@@ -1,5 +1,5 @@
 import { choleskyInPlace, choleskySolve, nonNegativeSolve } from './solve';
-import { buildProfiles } from './component-profiles';
+import { BASIS_LIMIT, buildProfiles, type ComponentProfiles } from './component-profiles';
 import type { LineComponent } from './components';
 import { cutWindows, type FitData, type FitWindow } from './fit-windows';
 import { addRatioPriors } from './ratio-priors';
@@ -128,27 +128,11 @@ function solveAt(
   const profiles = buildProfiles(data, components, windows, logScale, sigmaKms);
   let power = 0;
   let usable = 0;
-  windows.forEach((window, w) => {
-    power += window.power;
-    usable += window.usable - window.basis.length;
-    const { from, residual, components: inside } = window;
-    inside.forEach((c, a) => {
-      const phi = profiles.profile[w][a];
-      const onBasis = profiles.onBasis[w][a];
-      let toFlux = 0;
-      for (let i = 0; i < phi.length; i++) toFlux += data.weight[from + i] * phi[i] * residual[i];
-      right[c] += toFlux;
-      for (let b = 0; b <= a; b++) {
-        const other = profiles.profile[w][b];
-        const otherOnBasis = profiles.onBasis[w][b];
-        let sum = 0;
-        for (let i = 0; i < phi.length; i++) sum += data.weight[from + i] * phi[i] * other[i];
-        for (let k = 0; k < onBasis.length; k++) sum -= onBasis[k] * otherOnBasis[k];
-        gram[c * n + inside[b]] += sum;
-        if (b !== a) gram[inside[b] * n + c] += sum;
-      }
-    });
-  });
+  for (let w = 0; w < windows.length; w++) {
+    power += windows[w].power;
+    usable += windows[w].usable - windows[w].basis.length;
+    addNormalEquations(data, windows[w], w, profiles, gram, right, n);
+  }
   const withPriors = Float64Array.from(gram);
   const amplitudes0 = previous?.amplitude ?? nonNegativeSolve(gram, right, n, new Uint8Array(n).fill(1));
   addRatioPriors(components, amplitudes0, withPriors, n);
@@ -193,4 +177,37 @@ function solveAt(
     gramWithPriors: withPriors,
   };
   return { fit, objective: gain - priorCost, gradient: shape.gradient };
+}
+
+/** Adds one window's part to the normal equations of the fluxes, its continuum eliminated. */
+function addNormalEquations(
+  data: FitData,
+  window: FitWindow,
+  w: number,
+  profiles: ComponentProfiles,
+  gram: Float64Array,
+  right: Float64Array,
+  n: number,
+): void {
+  const { weight } = data;
+  const { profile, low, high, offset, onBasis, component } = profiles;
+  const { from, residual } = window;
+  const end = profiles.windowSlots[w + 1];
+  for (let s = profiles.windowSlots[w]; s < end; s++) {
+    const c = component[s];
+    const shift = offset[s] - low[s];
+    let toFlux = 0;
+    for (let i = low[s]; i < high[s]; i++) toFlux += weight[i] * profile[i + shift] * residual[i - from];
+    right[c] += toFlux;
+    for (let t = profiles.windowSlots[w]; t <= s; t++) {
+      const first = Math.max(low[s], low[t]);
+      const last = Math.min(high[s], high[t]);
+      const otherShift = offset[t] - low[t];
+      let sum = 0;
+      for (let i = first; i < last; i++) sum += weight[i] * profile[i + shift] * profile[i + otherShift];
+      for (let k = 0; k < window.basis.length; k++) sum -= onBasis[s * BASIS_LIMIT + k] * onBasis[t * BASIS_LIMIT + k];
+      gram[c * n + component[t]] += sum;
+      if (t !== s) gram[component[t] * n + c] += sum;
+    }
+  }
 }

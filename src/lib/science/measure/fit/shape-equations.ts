@@ -1,76 +1,126 @@
-import type { ComponentProfiles } from './component-profiles';
-import { projectOn } from './component-profiles';
+import { BASIS_LIMIT, type ComponentProfiles } from './component-profiles';
 import type { LineComponent } from './components';
 import type { FitData, FitWindow } from './fit-windows';
 import { choleskyInPlace, choleskySolve } from './solve';
 
-/** Information and gradient of the three shape parameters, the amplitudes of the free set eliminated. */
+/** Information and gradient of (ln(1+z), ln sigma narrow, ln sigma broad), the fluxes of the free set eliminated. */
+export interface ShapeEquations {
+  /** 3 by 3. */
+  information: Float64Array;
+  gradient: Float64Array;
+  /** Response of the fluxes to the shape, count by 3: minus G^-1 H. */
+  response: Float64Array;
+}
+
+/** Reused between calls; written before read. */
+let residual = new Float64Array(2048);
+let derivatives = [new Float64Array(2048), new Float64Array(2048), new Float64Array(2048)];
+const projected = [new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT)];
+
+/** Sets up the equations of the shape parameters at a linear solution. */
 export function shapeEquations(
   data: FitData,
   components: readonly LineComponent[],
-  windows: FitWindow[],
+  windows: readonly FitWindow[],
   profiles: ComponentProfiles,
   amplitude: Float64Array,
   free: Uint8Array,
   gram: Float64Array,
-): { information: Float64Array; gradient: Float64Array; response: Float64Array } {
+): ShapeEquations {
   const n = components.length;
   const information = new Float64Array(9);
   const gradient = new Float64Array(3);
   const cross = new Float64Array(n * 3);
-  windows.forEach((window, w) => {
-    const length = window.to - window.from;
-    const derivative = [new Float64Array(length), new Float64Array(length), new Float64Array(length)];
-    const residual = Float64Array.from(window.residual);
-    window.components.forEach((c, a) => {
-      const value = amplitude[c];
-      if (value === 0) return;
-      const phi = profiles.profile[w][a];
-      const shift = profiles.byShift[w][a];
-      const width = profiles.byWidth[w][a];
-      const widthTarget = derivative[components[c].width + 1];
-      for (let i = 0; i < length; i++) {
-        residual[i] -= value * phi[i];
-        derivative[0][i] += value * shift[i];
-        widthTarget[i] += value * width[i];
-      }
-      const onBasis = profiles.onBasis[w][a];
-      window.basis.forEach((row, k) => {
-        const back = value * onBasis[k];
-        for (let i = 0; i < length; i++) residual[i] += back * row[i];
-      });
-    });
-    const projected = derivative.map((row) => projectOn(window, data.weight, row));
+  const { weight } = data;
+  for (let w = 0; w < windows.length; w++) {
+    const window = windows[w];
+    const { from } = window;
+    const length = window.to - from;
+    if (residual.length < length) {
+      residual = new Float64Array(2 * length);
+      derivatives = derivatives.map(() => new Float64Array(2 * length));
+    }
+    const active = differentiate(window, w, components, profiles, amplitude);
     for (let p = 0; p < 3; p++) {
+      if (!active[p]) continue;
+      const dp = derivatives[p];
+      for (let k = 0; k < window.basis.length; k++) {
+        const row = window.basis[k];
+        let dot = 0;
+        for (let i = 0; i < length; i++) dot += weight[from + i] * row[i] * dp[i];
+        projected[p][k] = dot;
+      }
+    }
+    for (let p = 0; p < 3; p++) {
+      if (!active[p]) continue;
+      const dp = derivatives[p];
       let toResidual = 0;
-      for (let i = 0; i < length; i++) toResidual += data.weight[window.from + i] * derivative[p][i] * residual[i];
+      for (let i = 0; i < length; i++) toResidual += weight[from + i] * dp[i] * residual[i];
       gradient[p] += toResidual;
       for (let q = 0; q <= p; q++) {
+        if (!active[q]) continue;
+        const dq = derivatives[q];
         let sum = 0;
-        for (let i = 0; i < length; i++) {
-          sum += data.weight[window.from + i] * derivative[p][i] * derivative[q][i];
-        }
-        for (let k = 0; k < projected[p].length; k++) sum -= projected[p][k] * projected[q][k];
+        for (let i = 0; i < length; i++) sum += weight[from + i] * dp[i] * dq[i];
+        for (let k = 0; k < window.basis.length; k++) sum -= projected[p][k] * projected[q][k];
         information[p * 3 + q] += sum;
         if (q !== p) information[q * 3 + p] += sum;
       }
-      window.components.forEach((c, a) => {
-        if (!free[c]) return;
-        const phi = profiles.profile[w][a];
-        const onBasis = profiles.onBasis[w][a];
+      for (let s = profiles.windowSlots[w]; s < profiles.windowSlots[w + 1]; s++) {
+        const c = profiles.component[s];
+        if (!free[c]) continue;
+        const { profile } = profiles;
+        const shift = profiles.offset[s] - profiles.low[s];
         let sum = 0;
-        for (let i = 0; i < length; i++) sum += data.weight[window.from + i] * derivative[p][i] * phi[i];
-        for (let k = 0; k < onBasis.length; k++) sum -= projected[p][k] * onBasis[k];
+        for (let i = profiles.low[s]; i < profiles.high[s]; i++) sum += weight[i] * dp[i - from] * profile[i + shift];
+        for (let k = 0; k < window.basis.length; k++) sum -= projected[p][k] * profiles.onBasis[s * BASIS_LIMIT + k];
         cross[c * 3 + p] += sum;
-      });
+      }
     }
-  });
-  const response = eliminateAmplitudes(gram, cross, free, n, information);
-  return { information, gradient, response };
+  }
+  return { information, gradient, response: eliminateFluxes(gram, cross, free, n, information) };
+}
+
+/** Fills `residual` and `derivatives` for one window; tells which parameters act in it. */
+function differentiate(
+  window: FitWindow,
+  w: number,
+  components: readonly LineComponent[],
+  profiles: ComponentProfiles,
+  amplitude: Float64Array,
+): [boolean, boolean, boolean] {
+  const { from } = window;
+  const length = window.to - from;
+  const active: [boolean, boolean, boolean] = [false, false, false];
+  for (let i = 0; i < length; i++) residual[i] = window.residual[i];
+  for (const row of derivatives) row.fill(0, 0, length);
+  for (let s = profiles.windowSlots[w]; s < profiles.windowSlots[w + 1]; s++) {
+    const c = profiles.component[s];
+    const value = amplitude[c];
+    if (value === 0) continue;
+    const { profile, byShift, byWidth } = profiles;
+    const widthIndex = components[c].width + 1;
+    const toWidth = derivatives[widthIndex];
+    const toShift = derivatives[0];
+    active[0] = true;
+    active[widthIndex] = true;
+    const shift = profiles.offset[s] - profiles.low[s];
+    for (let i = profiles.low[s]; i < profiles.high[s]; i++) {
+      residual[i - from] -= value * profile[i + shift];
+      toShift[i - from] += value * byShift[i + shift];
+      toWidth[i - from] += value * byWidth[i + shift];
+    }
+    for (let k = 0; k < window.basis.length; k++) {
+      const row = window.basis[k];
+      const back = value * profiles.onBasis[s * BASIS_LIMIT + k];
+      for (let i = 0; i < length; i++) residual[i] += back * row[i];
+    }
+  }
+  return active;
 }
 
 /** Subtracts H^T G^-1 H from the shape information and returns -G^-1 H, rows of components by three columns. */
-function eliminateAmplitudes(
+function eliminateFluxes(
   gram: Float64Array,
   cross: Float64Array,
   free: Uint8Array,
@@ -78,9 +128,9 @@ function eliminateAmplitudes(
   information: Float64Array,
 ): Float64Array {
   const response = new Float64Array(n * 3);
-  const index: number[] = [];
-  for (let i = 0; i < n; i++) if (free[i] && gram[i * n + i] > 0) index.push(i);
-  const m = index.length;
+  const index = new Int32Array(n);
+  let m = 0;
+  for (let i = 0; i < n; i++) if (free[i] && gram[i * n + i] > 0) index[m++] = i;
   const block = new Float64Array(m * m);
   for (let a = 0; a < m; a++) {
     for (let b = 0; b < m; b++) block[a * m + b] = gram[index[a] * n + index[b]];
