@@ -7,6 +7,4 @@ export interface ReleaseSummary {
   redshiftRange: [number, number] | null;
   /** Median of c sigma_z / (1 + z), km/s; null where no row has an error. */
   medianVelocityErrorKms: number | null;
-  /** Rows a bin of redshift: bin i begins at start + i width. */
-  histogram: { start: number; width: number; bins: Counts[] };
 }

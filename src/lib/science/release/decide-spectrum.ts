@@ -1,6 +1,7 @@
 import type { Confidence } from '$lib/domain/confidence';
+import type { KeptOut } from '$lib/domain/draft-view';
 import type { DraftSelection } from '$lib/domain/release';
-import { verdictsAgree } from './verdicts-agree';
+import { verdictsAgree } from '../review/verdicts-agree';
 
 /** A verdict that stands: the newest of its person, neither withdrawn nor superseded. */
 export interface StandingVerdict {
@@ -42,10 +43,6 @@ export interface Answer {
   redshiftError: number | null;
   confidence: Confidence;
 }
-
-/** Why a spectrum brings no row. */
-export type KeptOut =
-  'left out' | 'open question' | 'no redshift' | 'not judged' | 'other confidence' | 'nothing measured';
 
 /**
  * What one spectrum brings to a release: the newest standing verdict of people; where nobody has judged it and the

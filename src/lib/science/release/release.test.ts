@@ -4,30 +4,6 @@ import { chooseSpectra } from './choose-spectra';
 import { decideSpectrum, type Answer, type JudgedSpectrum, type StandingVerdict } from './decide-spectrum';
 import { findDuplicates } from './find-duplicates';
 import { summariseRows } from './summarise-rows';
-import { velocityBetweenKms, verdictsAgree } from './verdicts-agree';
-
-const says = (redshift: number | null, redshiftError: number | null = null) => ({ redshift, redshiftError });
-
-describe('verdictsAgree', () => {
-  it('counts velocities in the frame of the object: 300 km/s is 0.0020 at redshift 1', () => {
-    expect(velocityBetweenKms(1, 1.002)).toBeCloseTo(299.64, 2);
-    expect(verdictsAgree(says(1), says(1.002))).toBe(true);
-    expect(verdictsAgree(says(1), says(1.0021))).toBe(false);
-    expect(verdictsAgree(says(0), says(0.0011))).toBe(false);
-  });
-
-  it('lets errors reach further: 3 sigma of both in quadrature', () => {
-    // 0.003 (1+z) each is 899 km/s; together 1272 km/s, three times that 3816 km/s
-    expect(verdictsAgree(says(1, 0.006), says(1.025, 0.006))).toBe(true);
-    expect(verdictsAgree(says(1, 0.006), says(1.026, 0.006))).toBe(false);
-  });
-
-  it('holds no redshift against a redshift, and for another "no redshift"', () => {
-    expect(verdictsAgree(says(null), says(0.3))).toBe(false);
-    expect(verdictsAgree(says(0.3), says(null))).toBe(false);
-    expect(verdictsAgree(says(null), says(null))).toBe(true);
-  });
-});
 
 const selection = { confidence: ['secure' as const], engineAlone: true };
 const verdict = (id: string, redshift: number | null, more: Partial<StandingVerdict> = {}): StandingVerdict => ({
@@ -130,27 +106,17 @@ describe('summariseRows', () => {
       ...more,
     }) as ReleaseRow;
 
-  it('gives counts, range, the median of c sigma / (1+z), and every row one bin', () => {
+  it('gives counts, range, and the median of c sigma / (1+z) over rows that have an error', () => {
     const rows = [row(0.02), row(0.5, { confidence: 'probable' }), row(1.46, { redshiftError: null })];
     const summary = summariseRows(rows);
     expect(summary).toMatchObject({
       confidence: { secure: 2, probable: 1, ambiguous: 0 },
       redshiftRange: [0.02, 1.46],
       medianVelocityErrorKms: expect.closeTo(29.979, 3),
-      histogram: { start: 0, width: 0.05 },
     });
-    const counts = summary.histogram.bins.map((bin) => bin.secure + bin.probable + bin.ambiguous);
-    expect(counts.reduce((sum, n) => sum + n)).toBe(3);
-    expect([counts[0], counts[10], counts[29]]).toEqual([1, 1, 1]);
   });
 
-  it('holds up with one row, with equal rows, below zero, and with none', () => {
-    expect(summariseRows([row(0.3), row(0.3)]).histogram.bins).toHaveLength(1);
-    expect(summariseRows([row(-0.001)]).histogram).toMatchObject({ bins: [{ secure: 1 }] });
-    expect(summariseRows([])).toMatchObject({
-      redshiftRange: null,
-      medianVelocityErrorKms: null,
-      histogram: { bins: [] },
-    });
+  it('has no range and no median without rows', () => {
+    expect(summariseRows([])).toMatchObject({ redshiftRange: null, medianVelocityErrorKms: null });
   });
 });

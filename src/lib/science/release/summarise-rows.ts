@@ -2,16 +2,6 @@ import type { ReleaseRow } from '$lib/domain/release';
 import type { ReleaseSummary } from '$lib/domain/release-summary';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 
-/** About this many bins over the range of redshift; the width is 1, 2 or 5 times a power of ten. */
-const BINS = 30;
-
-function niceWidth(span: number): number {
-  const raw = span / BINS;
-  const power = 10 ** Math.floor(Math.log10(raw));
-  const step = [1, 2, 5, 10].find((factor) => factor * power >= raw * (1 - 1e-9)) ?? 10;
-  return Number((step * power).toPrecision(1));
-}
-
 function median(values: number[]): number | null {
   if (values.length === 0) return null;
   const sorted = [...values].sort((a, b) => a - b);
@@ -21,7 +11,7 @@ function median(values: number[]): number | null {
 
 /**
  * Counts and figures of a release, for its page. Velocity errors are c sigma_z / (1 + z), km/s; rows without an error
- * are left out of their median. Without rows ranges and medians are null and the histogram is empty.
+ * are left out of their median. Without rows range and median are null.
  */
 export function summariseRows(rows: readonly ReleaseRow[]): ReleaseSummary {
   const confidence = { secure: 0, probable: 0, ambiguous: 0 };
@@ -40,22 +30,5 @@ export function summariseRows(rows: readonly ReleaseRow[]): ReleaseSummary {
     decidedBy,
     redshiftRange: rows.length ? [low, high] : null,
     medianVelocityErrorKms: median(velocityErrors),
-    histogram: histogramOf(rows, low, high),
   };
-}
-
-function histogramOf(rows: readonly ReleaseRow[], low: number, high: number): ReleaseSummary['histogram'] {
-  if (rows.length === 0) return { start: 0, width: 0.05, bins: [] };
-  const width = niceWidth(Math.max(high - low, 0.1));
-  const first = Math.floor(low / width);
-  const bins = Array.from({ length: Math.floor(high / width) - first + 1 }, () => ({
-    secure: 0,
-    probable: 0,
-    ambiguous: 0,
-  }));
-  for (const row of rows) {
-    const bin = Math.min(bins.length - 1, Math.floor(row.redshift / width) - first);
-    bins[bin][row.confidence as 'secure' | 'probable' | 'ambiguous']++;
-  }
-  return { start: Number((first * width).toPrecision(12)), width, bins };
 }

@@ -1,8 +1,4 @@
-/** How to cite a release: a line of text, and an entry for BibTeX. */
-export interface Citation {
-  text: string;
-  bibtex: string;
-}
+import type { Citation } from '$lib/domain/release-view';
 
 /** BibTeX reads these as commands. */
 const bibtexText = (text: string) =>

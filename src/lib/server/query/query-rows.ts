@@ -1,7 +1,8 @@
 import { decodeCursor, encodeCursor } from '$lib/api/cursor';
 import { Refusal } from '$lib/domain/refusal';
 import type { ReleaseRow } from '$lib/domain/release';
-import { countReleaseRows, releaseRowBatches, skyPoints, type RowFilter } from '../database/queries/release-rows';
+import type { PlottedRow } from '$lib/domain/release-view';
+import { countReleaseRows, everyNthRow, releaseRowBatches, type RowFilter } from '../database/queries/release-rows';
 import { findRelease, type FoundRelease } from './find-release';
 import { DEFAULT_LIMIT, type RowQuery } from './parse-row-query';
 
@@ -45,13 +46,14 @@ export async function countRows(slug: string, which: string, filter: RowFilter):
   return countReleaseRows(release.id, filter);
 }
 
-/** Points on a map of a release; of more rows an even sample is shown. */
-const MOST_POINTS = 4_000;
+/** Rows in the plots of a release; of more rows an even sample is shown. */
+const MOST_PLOTTED = 3_000;
 
-/** Public use-case: where the rows of a release lie, for its map. */
-export async function readSky(slug: string, which: string): Promise<{ ra: number; dec: number; confidence: string }[]> {
+/** Public use-case: rows for the plots of a release. `step` is above 1 where only every so many are shown. */
+export async function readPlottedRows(slug: string, which: string): Promise<{ step: number; rows: PlottedRow[] }> {
   const { release } = await findRelease(slug, which);
-  return skyPoints(release.id, release.rowCount, MOST_POINTS);
+  const step = Math.max(1, Math.ceil(release.rowCount / MOST_PLOTTED));
+  return { step, rows: await everyNthRow(release.id, step) };
 }
 
 /** Matching rows of a release batch by batch, up to the query's limit where it names one. */

@@ -1,16 +1,8 @@
 import { Refusal } from '$lib/domain/refusal';
+import type { CatalogueView } from '$lib/domain/release-view';
 import { may, type Actor } from '../auth/permissions';
 import { findCatalogue } from '../database/queries/catalogues';
 import { listReleases } from '../database/queries/releases';
-
-export interface CatalogueView {
-  slug: string;
-  title: string;
-  abstract: string;
-  programme: { name: string; isDemo: boolean };
-  /** Newest first; empty only for members of the programme. */
-  releases: { release: number; rowCount: number; frozenAt: string; contentSha256: string; url: string }[];
-}
 
 /** A catalogue and its releases: public once there is one, before that for members of its programme. */
 export async function readCatalogue(actor: Actor | null, slug: string): Promise<CatalogueView> {

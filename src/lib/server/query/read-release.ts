@@ -1,26 +1,8 @@
 import { RELEASE_COLUMNS, type TableColumn } from '$lib/domain/release-columns';
-import type { ReleaseSummary } from '$lib/domain/release-summary';
+import type { ReleaseView } from '$lib/domain/release-view';
 import { config } from '../config/config';
-import { citeRelease, type Citation } from './cite-release';
+import { citeRelease } from './cite-release';
 import { findRelease } from './find-release';
-
-export interface ReleaseView {
-  catalogue: { slug: string; title: string; abstract: string; programme: { name: string; isDemo: boolean } };
-  release: number;
-  frozenAt: string;
-  draftedBy: string;
-  signedBy: string;
-  notes: string;
-  rowCount: number;
-  /** SHA-256 of the whole release as CSV, as `rows?format=csv` gives it. */
-  contentSha256: string;
-  engineVersion: string | null;
-  summary: ReleaseSummary;
-  citation: Citation;
-  columns: TableColumn[];
-  /** Every release of the catalogue, newest first. */
-  releases: { release: number; rowCount: number; frozenAt: string }[];
-}
 
 export const tableColumns = (): TableColumn[] =>
   RELEASE_COLUMNS.map(({ name, datatype, unit, ucd, description }) => ({ name, datatype, unit, ucd, description }));

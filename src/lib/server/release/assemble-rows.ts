@@ -1,6 +1,6 @@
 import type { DraftSelection } from '$lib/domain/release';
 import type { Answer } from '$lib/science/release/decide-spectrum';
-import { velocityBetweenKms, verdictsAgree } from '$lib/science/release/verdicts-agree';
+import { velocityBetweenKms, verdictsAgree } from '$lib/science/review/verdicts-agree';
 import {
   candidatesOf,
   lineFluxes,

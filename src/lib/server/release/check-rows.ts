@@ -1,20 +1,10 @@
+import type { DraftCheck } from '$lib/domain/draft-view';
 import type { DraftSelection } from '$lib/domain/release';
 import { DUPLICATE_RADIUS_ARCSEC, findDuplicates } from '$lib/science/release/find-duplicates';
 import type { AssembledRows } from './assemble-rows';
 
-/** Something about a draft that a curator must know before signing. */
-export interface DraftCheck {
-  code: 'no-rows' | 'open-questions' | 'missing-positions' | 'duplicates' | 'fewer-looks';
-  /** True where the draft can't be frozen as long as this stands. */
-  blocks: boolean;
-  count: number;
-  what: string;
-  mend: string;
-  /** The first of them, in words. */
-  examples: string[];
-}
-
 const EXAMPLES = 20;
+const named = (name: string) => ({ text: name, names: [name] });
 const plural = (n: number, one: string, many: string) => `${n.toLocaleString('en-US')} ${n === 1 ? one : many}`;
 
 /** What stands against freezing these rows, and what doesn't but is worth knowing. */
@@ -37,7 +27,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: openQuestions.length,
       what: `${plural(openQuestions.length, 'spectrum has', 'spectra have')} verdicts that disagree.`,
       mend: 'Settle them in Review, or leave the targets out.',
-      examples: openQuestions.map(({ targetName }) => targetName),
+      examples: openQuestions.map(({ targetName }) => named(targetName)),
     },
     {
       code: 'missing-positions',
@@ -45,7 +35,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: unplaced.length,
       what: `${plural(unplaced.length, 'target has', 'targets have')} no position.`,
       mend: 'Hand in files that give one, or leave the targets out.',
-      examples: unplaced,
+      examples: unplaced.map(named),
     },
     {
       code: 'duplicates',
@@ -53,9 +43,10 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: duplicates.length,
       what: `${plural(duplicates.length, 'pair of targets is', 'pairs of targets are')} within ${DUPLICATE_RADIUS_ARCSEC} arcsec under two names.`,
       mend: 'Leave one of each pair out, or declare it a true pair.',
-      examples: duplicates.map(
-        ({ names, separationArcsec }) => `${names.join(' and ')}, ${separationArcsec.toFixed(2)} arcsec apart`,
-      ),
+      examples: duplicates.map(({ names, separationArcsec }) => ({
+        text: `${names.join(' and ')}, ${separationArcsec.toFixed(2)} arcsec apart`,
+        names,
+      })),
     },
     {
       code: 'fewer-looks',
@@ -63,7 +54,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: fewer.length,
       what: `${plural(fewer.length, 'row rests', 'rows rest')} on fewer people than the ${looks} the programme asks for.`,
       mend: 'They enter all the same; have them looked at again if they should not.',
-      examples: fewer.map(({ spectrum }) => spectrum.targetName),
+      examples: fewer.map(({ spectrum }) => named(spectrum.targetName)),
     },
   ];
   return checks

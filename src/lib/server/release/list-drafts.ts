@@ -1,22 +1,8 @@
+import type { CuratedCatalogue, CuratedProgramme } from '$lib/domain/draft-view';
 import { programmesWhere, type Actor } from '../auth/permissions';
 import { listCatalogueRows } from '../database/queries/catalogues';
 import { findOpenDrafts } from '../database/queries/drafts';
 import { programmeMemberRows } from '../database/queries/programmes';
-
-export interface CuratedCatalogue {
-  slug: string;
-  title: string;
-  programme: { name: string; isDemo: boolean };
-  latestRelease: number | null;
-  draft: { id: string; createdBy: string; createdAt: string; isOwn: boolean } | null;
-}
-
-export interface CuratedProgramme {
-  slug: string;
-  name: string;
-  /** Names of its curators: one drafts, another signs. */
-  curators: string[];
-}
 
 /** The programmes the actor curates, their catalogues, and the open draft of each. */
 export async function listDrafts(

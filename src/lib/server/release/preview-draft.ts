@@ -1,38 +1,13 @@
-import type { DraftSelection, ReleaseRow } from '$lib/domain/release';
-import type { ReleaseSummary } from '$lib/domain/release-summary';
-import type { KeptOut } from '$lib/science/release/decide-spectrum';
+import type { DraftPreview } from '$lib/domain/draft-view';
 import { summariseRows } from '$lib/science/release/summarise-rows';
 import { may, permit, type Actor } from '../auth/permissions';
 import { assembleRows } from './assemble-rows';
-import { checkRows, notesOnRows, type DraftCheck } from './check-rows';
+import { checkRows, notesOnRows } from './check-rows';
 import { ContentDigest } from './content-digest';
 import { catalogueOf, draftOf } from './find-draft';
 
 /** Rows that a preview shows; the digest covers all of them. */
 const ROWS_SHOWN = 200;
-
-export interface DraftPreview {
-  id: string;
-  state: 'open' | 'frozen' | 'dropped';
-  catalogue: { slug: string; title: string; programme: { name: string; isDemo: boolean } };
-  selection: DraftSelection;
-  notes: string;
-  createdBy: string;
-  createdAt: string;
-  rowCount: number;
-  spectra: number;
-  targetsWithChoice: number;
-  keptOut: Record<KeptOut, number>;
-  summary: ReleaseSummary;
-  checks: DraftCheck[];
-  /** Sentences that will go with the release besides `notes`. */
-  notesOnRows: string[];
-  rows: ReleaseRow[];
-  /** Of the rows as they are now; whoever signs hands it back, so that they sign what they saw. */
-  contentSha256: string;
-  /** Why this person can't sign, whatever the checks say; null where they can. */
-  signing: string | null;
-}
 
 /** What would be published if the draft were frozen now, and what stands against it. */
 export async function previewDraft(actor: Actor | null, slug: string, draftId: string): Promise<DraftPreview> {

@@ -1,10 +1,10 @@
+import type { KeptOut } from '$lib/domain/draft-view';
 import type { DraftSelection } from '$lib/domain/release';
 import { chooseSpectra } from '$lib/science/release/choose-spectra';
 import {
   decideSpectrum,
   type Answer,
   type JudgedSpectrum,
-  type KeptOut,
   type StandingVerdict,
 } from '$lib/science/release/decide-spectrum';
 import { measuredSpectra, standingVerdicts } from '../database/queries/drafts-judged';

@@ -1,5 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { ReleaseRow } from '$lib/domain/release';
+import type { PlottedRow } from '$lib/domain/release-view';
 import { coneBounds, separationDegrees, zoneOf } from '$lib/domain/sky';
 import { database } from '../connection';
 
@@ -155,17 +156,10 @@ export async function countReleaseRows(releaseId: string, filter: RowFilter): Pr
   return places.filter((place) => inside(cone, place)).length;
 }
 
-export interface SkyPoint {
-  ra: number;
-  dec: number;
-  confidence: string;
-}
-
-/** Positions for a map: every row where there are at most `most`, else every n-th of the order of right ascension. */
-export function skyPoints(releaseId: string, rowCount: number, most: number): Promise<SkyPoint[]> {
-  const step = Math.max(1, Math.ceil(rowCount / most));
-  return database().query<SkyPoint>(
-    `SELECT ra_degrees AS ra, dec_degrees AS \`dec\`, confidence FROM release_rows
+/** Every `step`-th row of a release in the order of right ascension. */
+export function everyNthRow(releaseId: string, step: number): Promise<PlottedRow[]> {
+  return database().query<PlottedRow>(
+    `SELECT ra_degrees AS ra, dec_degrees AS \`dec\`, redshift, confidence FROM release_rows
       WHERE release_id = :releaseId AND row_index % :step = 0`,
     { replacements: { releaseId, step }, type: QueryTypes.SELECT },
   );
