@@ -57,6 +57,7 @@ const cases: [title: string, code: string, bytes: Uint8Array, name: string][] = 
   ['something else under the name of FITS', 'not-fits', encode('hello, this is a letter\n'.repeat(30)), 'a.fits'],
   ['a picture', 'not-fits', Uint8Array.from({ length: 4000 }, (_, i) => (i * 37) & 255), 'a.png'],
   ['a letter', 'not-a-spectrum-file', encode('Dear\ncolleague\nplease\n'), 'a.txt'],
+  ['prose', 'not-a-spectrum-file', encode('A night of wind and cloud\nand not one spectrum\n'.repeat(30)), 'a.txt'],
   ['truncated FITS', 'fits-truncated', cut, 'a.fits'],
   ['a header that asks for gigabytes', 'fits-truncated', gigabytes, 'a.fits'],
   ['a header without END', 'fits-header-without-end', replaced(image, 'END     ', 'EMD     '), 'a.fits'],

@@ -28,6 +28,15 @@ function isUnitRow(cells: string[]): boolean {
   );
 }
 
+/** Rows looked at to tell a table of numbers from prose. */
+const LOOK_AT_ROWS = 50;
+
+/** True where most rows have two numbers or more. */
+function holdsNumbers(rows: string[][]): boolean {
+  const numeric = rows.filter((cells) => cells.filter((cell) => Number.isFinite(cellNumber(cell))).length >= 2);
+  return numeric.length > rows.length / 2;
+}
+
 /** Comments at the head of a text and, apart from them, the lines that hold data. */
 function splitComments(text: string): { comments: string[]; lines: string[]; numbers: number[] } {
   const comments: string[] = [];
@@ -72,7 +81,7 @@ export function readTextTable(text: string, place: Place): { table: Table; warni
     }
   }
   const count = rows[first]?.length ?? 0;
-  if (count < 2) {
+  if (count < 2 || !holdsNumbers(rows.slice(first, first + LOOK_AT_ROWS))) {
     throw problemAt(
       place,
       'not-a-spectrum-file',
