@@ -1,8 +1,8 @@
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import type { DetectorGrid } from './detector-grid';
 import { lsfSigmaAt } from './detector-grid';
-import { Random } from './random';
 import type { ContinuumRecipe } from './recipe';
+import { absorbIntergalactic, averageOverPixels, FINE_STEP, fineRange } from './intergalactic';
 import { smoothContinuum } from './smooth-continuum';
 import {
   HELIUM_FEATURES,
@@ -12,9 +12,6 @@ import {
   TITANIUM_OXIDE_HEADS,
   type Feature,
 } from './stellar-features';
-
-/** Step of the fine grid in ln wavelength: 25 km/s, below the dispersion of any feature. */
-const FINE_STEP = 25 / SPEED_OF_LIGHT_KMS;
 
 /** Multiplies the fine spectrum by 1 - optical depth of a Gaussian feature of given equivalent width. */
 function absorb(
@@ -50,22 +47,6 @@ function absorbHydrogen(
   for (const [rest, relative] of HYDROGEN_FEATURES) {
     absorb(fine, start, [rest, 0.55 * relative * equivalentWidth, 0.35 * wing], 1, dispersion, z);
     absorb(fine, start, [rest, 0.45 * relative * equivalentWidth, wing], 1, dispersion, z);
-  }
-}
-
-/**
- * Intergalactic hydrogen blueward of Lyman-alpha: mean optical depth 0.0018 (1 + z)^3.92 (Faucher-Giguère et al. 2008, ApJ 681, 831,
- * from memory), broken up into lines of exponential strength; nothing passes below the Lyman limit.
- */
-function absorbIntergalactic(fine: Float64Array, start: number, z: number, seed: number) {
-  const random = new Random(seed);
-  const end = Math.min(fine.length - 1, Math.floor((Math.log(1215.67 * (1 + z)) - start) / FINE_STEP));
-  const limit = (Math.log(911.75 * (1 + z)) - start) / FINE_STEP;
-  let column = 1;
-  for (let i = 0; i <= end; i++) {
-    if (i % 6 === 0) column = random.exponential(1) * 0.9 + 0.1;
-    const absorberRedshift = Math.exp(start + i * FINE_STEP) / 1215.67 - 1;
-    fine[i] *= i < limit ? 0.01 : Math.exp(-0.0018 * Math.pow(1 + absorberRedshift, 3.92) * column);
   }
 }
 
@@ -114,8 +95,7 @@ function blur(fine: Float64Array, start: number, grid: DetectorGrid): Float64Arr
 export function continuumOnPixels(recipe: ContinuumRecipe, redshift: number, grid: DetectorGrid): Float64Array {
   const pixels = new Float64Array(grid.centre.length);
   if (recipe.kind === 'none' || pixels.length === 0) return pixels;
-  const start = Math.log(grid.lower[0]) - 40 * FINE_STEP;
-  const count = Math.ceil((Math.log(grid.upper[pixels.length - 1]) - start) / FINE_STEP) + 40;
+  const { start, count } = fineRange(grid);
   const fine = new Float64Array(count);
   const rest = recipe.kind === 'featureless' ? 1 : 1 / (1 + redshift);
   // the smooth part is evaluated every 8 steps and joined by straight lines
@@ -135,16 +115,5 @@ export function continuumOnPixels(recipe: ContinuumRecipe, redshift: number, gri
     absorbIntergalactic(fine, start, redshift, recipe.detailSeed);
   }
   const blurred = blur(fine, start, grid);
-  const cumulative = new Float64Array(count + 1);
-  for (let i = 0; i < count; i++) cumulative[i + 1] = cumulative[i] + blurred[i];
-  const integral = (wavelength: number) => {
-    const x = (Math.log(wavelength) - start) / FINE_STEP + 0.5;
-    const i = Math.max(0, Math.min(count - 1, Math.floor(x)));
-    return cumulative[i] + (x - i) * blurred[i];
-  };
-  for (let i = 0; i < pixels.length; i++) {
-    const steps = Math.log(grid.upper[i] / grid.lower[i]) / FINE_STEP;
-    pixels[i] = (integral(grid.upper[i]) - integral(grid.lower[i])) / steps;
-  }
-  return pixels;
+  return averageOverPixels(blurred, start, grid);
 }
