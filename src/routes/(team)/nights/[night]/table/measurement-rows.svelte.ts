@@ -63,7 +63,9 @@ async function readAll(nightId: string): Promise<NightMeasurement[]> {
   let cursor: string | null = null;
   do {
     const query: string = `detail=table&limit=${PAGE_ROWS}${cursor ? `&cursor=${encodeURIComponent(cursor)}` : ''}`;
-    const response = await fetch(`/api/v1/nights/${nightId}/measurements?${query}`);
+    const response = await fetch(`/api/v1/nights/${nightId}/measurements?${query}`).catch(() => {
+      throw new Error('The server does not answer.');
+    });
     const body = (await response.json().catch(() => ({}))) as {
       rows?: NightMeasurement[];
       next?: string | null;

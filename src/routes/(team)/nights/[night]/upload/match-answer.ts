@@ -27,6 +27,5 @@ export function matchAnswer(names: readonly string[], answer: UploadAnswer): Out
 
 /** The server leaves control characters out of a name and keeps its last 255 characters. */
 function cleaned(name: string): string {
-  // eslint-disable-next-line no-control-regex -- control characters are what is taken out
   return name.replace(/[\u0000-\u001f\u007f]/g, '').slice(-255) || 'unnamed';
 }

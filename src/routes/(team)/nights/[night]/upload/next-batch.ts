@@ -1,5 +1,5 @@
-/** Small files share a request, up to this many and this many bytes; a larger one goes alone. */
-export const BATCH_FILES = 24;
+/** Small files share a request, up to this many and this many bytes; a larger one goes alone. Few, so that progress is seen. */
+export const BATCH_FILES = 12;
 export const BATCH_BYTES = 8 * 1024 * 1024;
 
 export interface Waiting {

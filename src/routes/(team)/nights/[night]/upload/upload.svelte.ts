@@ -10,8 +10,10 @@ import { UploadEntry, type EntryState } from './upload-entry.svelte';
 const REQUESTS = 3;
 /** Waits before a broken request is tried again, milliseconds; after the last the upload pauses and says so. */
 const AGAIN_AFTER_MS = [1_000, 3_000, 8_000];
+/** A pause ends by itself after this long, for those who sleep; a person may end it at once. */
+const PAUSE_MS = 15_000;
 
-/** The files a person gives to one night: sent a few at a time, each with its own fate; pausable by nothing but faults. */
+/** The files a person gives to one night: sent a few at a time, each with its own fate. */
 export class Upload {
   entries = $state.raw<UploadEntry[]>([]);
   /** Bytes sent so far of each request that is on its way. */
@@ -21,6 +23,7 @@ export class Upload {
   /** Left out before sending: hidden files, and paths the browser could not read. */
   leftOut = $state<{ hidden: number; unreadable: string[] }>({ hidden: 0, unreadable: [] });
   bytesPerSecond = $state<number | null>(null);
+  filesPerSecond = $state<number | null>(null);
   secondsLeft = $state<number | null>(null);
 
   tally = $derived.by(() => {
@@ -51,7 +54,9 @@ export class Upload {
   private running = 0;
   private broken = 0;
   private requests = 0;
-  private rate = new Rate();
+  private pause: ReturnType<typeof setTimeout> | undefined;
+  private byteRate = new Rate();
+  private fileRate = new Rate();
 
   constructor(private readonly nightId: string) {}
 
@@ -72,16 +77,23 @@ export class Upload {
     for (const entry of this.entries) {
       if (entry.state === 'waiting' || entry.state === 'sending') entry.state = 'cancelled';
     }
+    clearTimeout(this.pause);
     this.paused = null;
     this.abort.abort();
     this.abort = new AbortController();
   }
 
-  /** Sends what was cancelled, and what a fault left waiting. */
-  resume(): void {
+  /** Sends what was cancelled after all. */
+  sendCancelled(): void {
     const again = this.entries.filter((entry) => entry.state === 'cancelled');
     for (const entry of again) entry.state = 'waiting';
     this.waiting.push(...again);
+    this.goOn();
+  }
+
+  /** Ends a pause: a person's wish, the browser's word that the network is back, or time. */
+  goOn(): void {
+    clearTimeout(this.pause);
     this.paused = null;
     this.broken = 0;
     this.run();
@@ -161,8 +173,11 @@ export class Upload {
     this.putBack(batch.filter((_, i) => readable[i]));
     if (lost.length > 0) return;
     const wait = AGAIN_AFTER_MS[this.broken++];
-    if (wait === undefined) this.paused = what;
-    else await new Promise((resolve) => setTimeout(resolve, wait));
+    if (wait === undefined) {
+      this.paused = what;
+      clearTimeout(this.pause);
+      this.pause = setTimeout(() => this.goOn(), PAUSE_MS);
+    } else await new Promise((resolve) => setTimeout(resolve, wait));
   }
 
   private putBack(entries: UploadEntry[]): void {
@@ -173,9 +188,17 @@ export class Upload {
 
   private time(): void {
     const now = performance.now();
-    this.rate.mark(this.bytesSent, now);
-    this.bytesPerSecond = this.rate.perSecond(now);
-    this.secondsLeft = this.rate.secondsLeft(this.tally.bytesTotal - this.bytesSent, now);
+    const { bytesTotal, waiting, sending, taken, already, refused } = this.tally;
+    this.byteRate.mark(this.bytesSent, now);
+    this.fileRate.mark(taken + already + refused, now);
+    this.bytesPerSecond = this.byteRate.perSecond(now);
+    this.filesPerSecond = this.fileRate.perSecond(now);
+    // Large files wait for the line, many small ones for the server: the slower of the two says when it is over.
+    const ends = [
+      this.byteRate.secondsLeft(bytesTotal - this.bytesSent, now),
+      this.fileRate.secondsLeft(waiting + sending, now),
+    ].filter((seconds) => seconds !== null);
+    this.secondsLeft = ends.length > 0 ? Math.max(...ends) : null;
   }
 }
 
@@ -188,11 +211,15 @@ async function isReadable(file: File): Promise<boolean> {
   }
 }
 
+// eslint-disable-next-line svelte/prefer-svelte-reactivity -- nothing draws this map; a page asks it once
 const uploads = new Map<string, Upload>();
 
 /** The upload of a night in this browser tab: it goes on while other pages are looked at. */
 export function uploadOf(nightId: string): Upload {
   if (typeof window === 'undefined') return new Upload(nightId);
-  if (!uploads.has(nightId)) uploads.set(nightId, new Upload(nightId));
+  if (!uploads.has(nightId)) {
+    // Its derived values must outlive the page that asked first.
+    $effect.root(() => void uploads.set(nightId, new Upload(nightId)));
+  }
   return uploads.get(nightId)!;
 }
