@@ -25,18 +25,11 @@ function sourcesChangedAt() {
 
 const output = join(root, 'build/commands', `${name}.js`);
 if (!existsSync(output) || statSync(output).mtimeMs < sourcesChangedAt()) {
-  const { bundle, commandEntries, SELF_CONTAINED } = await import('./bundle.mjs');
-  const entries = commandEntries()[name];
-  if (!entries) {
+  const { bundleCommand, commandEntries } = await import('./bundle.mjs');
+  if (!(await bundleCommand(name))) {
     console.error(`There is no command '${name}'; there are ${Object.keys(commandEntries()).join(', ')}.`);
     process.exit(1);
   }
-  await bundle(entries, { selfContained: SELF_CONTAINED.has(name) });
-}
-// Commands of an installation find its services where `start` wrote them, unless the environment says otherwise.
-const kept = join(process.env.DATA ?? join(root, 'data'), 'environment.json');
-if (!process.env.DATABASE_URL && existsSync(kept)) {
-  for (const [key, value] of Object.entries(JSON.parse(readFileSync(kept, 'utf8')))) process.env[key] ??= value;
 }
 process.argv = [process.argv[0], output, ...rest];
 await import(pathToFileURL(output).href);
