@@ -83,11 +83,12 @@ export function refineCandidate(context: WeighContext, candidate: FittedCandidat
 export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind): FittedCandidate {
   const { features, noiseFactor } = context;
   const errors = fitErrors(fit);
+  const errorScale = misfitScale(fit, noiseFactor);
   let best = -Infinity;
   let bestFamily: LineFamily = LINE_FAMILIES[0];
   for (const family of LINE_FAMILIES) {
     if (family.kind !== kind) continue;
-    const value = Math.log(family.weight) + evidenceOfFamily(fit, family, context);
+    const value = Math.log(family.weight) + evidenceOfFamily(fit, family, context, errorScale);
     if (value > best) {
       best = value;
       bestFamily = family;
@@ -100,7 +101,6 @@ export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind
     explained.push(index);
     artefacts += feature.logArtefact;
   });
-  const errorScale = misfitScale(fit, noiseFactor);
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
   return {

@@ -2,7 +2,7 @@ import type { Confidence } from '$lib/domain/confidence';
 import type { Candidate } from '$lib/domain/measurement';
 import { FWHM_PER_SIGMA } from '../constants/physical';
 import type { FittedCandidate } from './candidate-fit';
-import { confidenceOf } from './confidence';
+import { confidenceOf, type ConfidenceInput } from './confidence';
 import { doubletAdvantage } from './doublet-test';
 import { asFinal, finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
 import type { FitData } from './fit/fit-windows';
@@ -43,6 +43,9 @@ export interface Decision {
 /** Error given to an absorption redshift, km/s: a fifth of the widest kernel that sees its lines. */
 const ABSORPTION_ERROR_KMS = 60;
 const RESOLVED_DOUBLET = 25;
+/** Probability that a redshift resting on one feature, or on few absorption features, can reach. */
+const SINGLE_FEATURE_CEILING = 0.88;
+const ABSORPTION_CEILING = 0.8;
 /** Candidates refitted with every line; the others keep the fit they were weighed by. */
 const CANDIDATES_REFITTED = 3;
 
@@ -67,7 +70,9 @@ export function decide(
     })),
   ].sort((a, b) => b.probability - a.probability);
   const top = entries[0];
-  const probability = top ? calibrate(top.probability) : 0;
+  const refit0 = top?.emission ? finalFit(prepared.working, hypotheses.context.noiseFactor, top.emission, 12) : null;
+  const evidence = top ? evidenceOf(prepared.working, hypotheses, top, refit0) : null;
+  const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;
   const rivals = {
     nothing: posterior.nothing * rest,
@@ -81,7 +86,7 @@ export function decide(
   const refits = entries.slice(0, listed).map((entry, rank) => {
     if (!entry.emission) return null;
     if (rank >= CANDIDATES_REFITTED) return asFinal(entry.emission);
-    return finalFit(prepared.working, context.noiseFactor, entry.emission, rank === 0 ? 12 : 3);
+    return rank === 0 ? refit0 : finalFit(prepared.working, context.noiseFactor, entry.emission, 3);
   });
   const candidates = entries.slice(0, listed).map((entry, rank) => {
     const share = rank === 0 ? probability : entry.probability * rest;
@@ -97,7 +102,7 @@ export function decide(
     explained: top?.emission?.explained ?? [],
     noiseFactor: context.noiseFactor,
   };
-  if (!top) {
+  if (!top || !evidence) {
     return {
       ...base,
       first: null,
@@ -110,7 +115,6 @@ export function decide(
       linesBlended: false,
     };
   }
-  const evidence = evidenceOf(prepared.working, hypotheses, top, refits[0]);
   const confidence = confidenceOf({
     probability,
     probabilityOfNoGalaxy: rivals.nothing + rivals.star,
@@ -136,6 +140,16 @@ export function decide(
   };
 }
 
+/**
+ * Highest probability that the evidence allows: one feature never settles its own identity, unless its shape does, and
+ * absorption needs several features.
+ */
+function ceilingOf(evidence: Evidence): number {
+  if (evidence.absorptionFeatures !== null) return evidence.absorptionFeatures >= 4 ? 1 : ABSORPTION_CEILING;
+  const settled = evidence.independentLines >= 2 || evidence.resolvedDoublet || evidence.unmistakableProfile;
+  return settled ? 1 : SINGLE_FEATURE_CEILING;
+}
+
 function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null): FirstRedshift {
   const measured =
     top.emission && refit ? redshiftErrors(refit, top.emission.kind === 'broad').measured : candidate.redshiftError;
@@ -147,7 +161,10 @@ function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null)
   };
 }
 
-function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null) {
+/** What the confidence word is decided from besides probabilities. */
+type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy'>;
+
+function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null): Evidence {
   if (!top.emission || !refit) {
     return {
       independentLines: 0,

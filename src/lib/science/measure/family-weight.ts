@@ -33,19 +33,26 @@ interface Row {
  * The asymmetric Lyman-alpha profile counts as one flux with the fitted shape. A quasar's narrow lines are weighed by
  * the narrow-line nucleus' ratios after its broad lines, and count only where they speak for it.
  *
+ * @param scale what errors are multiplied by
+ *
  */
-export function evidenceOfFamily(fit: JointFit, family: LineFamily, context: WeighContext): number {
+export function evidenceOfFamily(
+  fit: JointFit,
+  family: LineFamily,
+  context: WeighContext,
+  scale: number = context.noiseFactor,
+): number {
   if (family.kind !== 'broad') {
     const profile = family.kind === 'lyman' ? LYMAN_PROFILE_COMPONENTS : 0;
-    return evidenceOfRows(fit, rowsOf(fit, family, 0, profile, context), [], context);
+    return evidenceOfRows(fit, rowsOf(fit, family, 0, profile, context), [], context, scale);
   }
   const narrow: number[] = [];
   const broad: number[] = [];
   fit.components.forEach((component, i) => {
     if (fit.amplitude[i] > 0) (component.width === 0 ? narrow : broad).push(i);
   });
-  const wide = evidenceOfRows(fit, rowsOf(fit, family, 1, 0, context), narrow, context);
-  const slim = evidenceOfRows(fit, rowsOf(fit, NARROW_NUCLEUS, 0, 0, context), broad, context);
+  const wide = evidenceOfRows(fit, rowsOf(fit, family, 1, 0, context), narrow, context, scale);
+  const slim = evidenceOfRows(fit, rowsOf(fit, NARROW_NUCLEUS, 0, 0, context), broad, context, scale);
   // Without broad lines that stand on their own the narrow hypothesis says all there is to say.
   return wide > LEAST_BROAD_EVIDENCE ? wide + Math.max(0, slim) : -Infinity;
 }
@@ -72,11 +79,11 @@ function rowsOf(fit: JointFit, family: LineFamily, width: 0 | 1, profile: number
   return rows;
 }
 
-function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: WeighContext): number {
+function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: WeighContext, scale: number): number {
   const n = fit.components.length;
   const m = rows.length;
   if (m === 0) return -Infinity;
-  const inverse = 1 / (context.noiseFactor * context.noiseFactor);
+  const inverse = 1 / (scale * scale);
   const gram = new Float64Array(m * m);
   const right = new Float64Array(m);
   rows.forEach((row, a) => {

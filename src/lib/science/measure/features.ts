@@ -26,7 +26,7 @@ export interface Feature {
  * How often something that is no line makes a feature, per resolution element, before the spectrum's own dips are
  * counted: clean sky, bad sky, edge, spikes.
  */
-const ARTEFACT_RATE = { clean: 3e-6, sky: 3e-4, edge: 3e-4, spike: 1e-4 } as const;
+const ARTEFACT_RATE = { clean: 3e-6, sky: 3e-4, edge: 3e-4, spike: 1e-3 } as const;
 
 /**
  * Local maxima of significance over all widths of a bank.

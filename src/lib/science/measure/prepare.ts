@@ -1,4 +1,4 @@
-import type { Spectrum } from '$lib/domain/spectrum';
+import { MASK, type Spectrum } from '$lib/domain/spectrum';
 import { FLEXIBLE_CONTINUUM, smoothContinuum, STIFF_CONTINUUM } from './continuum';
 import { removeCosmicRays } from './cosmic-rays';
 import { estimateWeights, inflateSkyVariance, markSkyPixels } from './noise';
@@ -23,12 +23,12 @@ export function prepareSpectrum(spectrum: Spectrum): PreparedSpectrum {
   const working = workingSpectrum(spectrum);
   if (!working.varianceKnown) estimateWeights(working);
   markSkyPixels(working);
-  let continuum = smoothContinuum(working, FLEXIBLE_CONTINUUM);
+  let continuum = smoothContinuum(bridged(working), FLEXIBLE_CONTINUUM);
   const residual = difference(working.flux, continuum);
   const cosmicRayPixels = removeCosmicRays(working, residual);
   inflateSkyVariance(working, residual);
-  continuum = smoothContinuum(working, FLEXIBLE_CONTINUUM);
-  const stiffContinuum = smoothContinuum(working, STIFF_CONTINUUM);
+  continuum = smoothContinuum(bridged(working), FLEXIBLE_CONTINUUM);
+  const stiffContinuum = smoothContinuum(bridged(working), STIFF_CONTINUUM);
   const finalResidual = difference(working.flux, continuum);
   const stiffResidual = difference(working.flux, stiffContinuum);
   return {
@@ -41,6 +41,30 @@ export function prepareSpectrum(spectrum: Spectrum): PreparedSpectrum {
     cosmicRayPixels,
   };
 }
+
+/** Widest telluric band, in ln(wavelength), that a continuum may bridge. */
+const WIDEST_BRIDGE = 0.045;
+
+/** Telluric bands say nothing of an object's continuum: their pixels are left out of it, where they are narrow enough. */
+function bridged(working: WorkingSpectrum): WorkingSpectrum {
+  const { count, wavelength, mask } = working;
+  const weight = Float64Array.from(working.weight);
+  for (let i = 0; i < count;) {
+    if ((mask[i] & MASK.telluric) === 0) {
+      i++;
+      continue;
+    }
+    let end = i;
+    while (end < count && mask[end] & MASK.telluric) end++;
+    const inside = i > 0 && end < count;
+    if (inside && Math.log(wavelength[end - 1] / wavelength[i]) < WIDEST_BRIDGE) weight.fill(0, i, end);
+    i = end;
+  }
+  return { ...working, weight };
+}
+
+/** Share of a telluric band's depth that counts as noise. */
+const TELLURIC_FAULT = 0.5;
 
 /**
  * Line profiles are not known better than this share of their height (line-spread function, blends, asymmetries), narrow
@@ -65,9 +89,19 @@ function guardedWeights(working: WorkingSpectrum, residual: Float64Array, stiffR
     const noise = Math.sqrt(variance);
     const narrow = Math.max(0, peak - 3 * noise) * PROFILE_FAULT.narrow;
     const broad = Math.max(0, stiffResidual[i] - 3 * noise) * PROFILE_FAULT.broad;
-    guarded[i] = 1 / (variance + narrow * narrow + broad * broad);
+    const band = working.mask[i] & MASK.telluric ? TELLURIC_FAULT * depthAt(residual, i) : 0;
+    guarded[i] = 1 / (variance + narrow * narrow + broad * broad + band * band);
   }
   return guarded;
+}
+
+/** Depth of a band below the continuum, averaged over five pixels; 0 above it. */
+function depthAt(residual: Float64Array, pixel: number): number {
+  let sum = 0;
+  const from = Math.max(0, pixel - 2);
+  const to = Math.min(residual.length - 1, pixel + 2);
+  for (let i = from; i <= to; i++) sum += residual[i];
+  return Math.max(0, -sum / (to - from + 1));
 }
 
 function difference(a: Float64Array, b: Float64Array): Float64Array {
