@@ -2,7 +2,7 @@ import { readFileSync } from 'node:fs';
 import { availableParallelism } from 'node:os';
 import { InputProblem } from '$lib/domain/input-problem';
 import type { Instrument } from '$lib/domain/instrument';
-import { problemLine, type MeasuredLine } from './measure/measure-file';
+import { problemLine, type MeasuredLine } from './measure/measured-line';
 import { parseArguments, USAGE, type MeasureArguments } from './measure/parse-arguments';
 import { readInput } from './measure/read-input';
 import { ThreadPool } from './measure/thread-pool';

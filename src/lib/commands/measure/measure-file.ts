@@ -1,13 +1,13 @@
 import { InputProblem } from '$lib/domain/input-problem';
 import type { Instrument } from '$lib/domain/instrument';
 import type { MeasureOutput, Measurement } from '$lib/domain/measurement';
-import type { Problem } from '$lib/domain/input-problem';
 import type { RawSpectrum } from '$lib/domain/spectrum';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { withDerived } from '$lib/science/derive/with-derived';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
 import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
 import { explainMeasurement } from './explain-measurement';
+import { problemLine, type MeasuredLine } from './measured-line';
 
 /** What a thread is asked to do: one file, or every `parts`-th spectrum of it from `part` on. */
 export interface MeasureTask {
@@ -18,22 +18,6 @@ export interface MeasureTask {
   explain: boolean;
   part: number;
   parts: number;
-}
-
-/** One line of output and what goes to standard error with it. */
-export interface MeasuredLine {
-  /** Place among the file's lines. */
-  order: number;
-  json: string;
-  notes: string[];
-  failed: boolean;
-}
-
-/** The output object of a problem. */
-export function problemLine(source: string, problem: Problem, name: string | null = null): Omit<MeasuredLine, 'order'> {
-  const error = `${problem.what} ${problem.mend}`.trim();
-  const output: MeasureOutput = { source, extension: problem.extension ?? 0, row: problem.row ?? 1, name, error };
-  return { json: JSON.stringify(output), notes: [`${problem.where}: ${error}`], failed: true };
 }
 
 /** A fault of ours, not of the file: said with its stack, and the other spectra go on. */

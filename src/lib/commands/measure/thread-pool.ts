@@ -1,5 +1,6 @@
 import { Worker } from 'node:worker_threads';
-import { problemLine, type MeasuredLine, type MeasureTask } from './measure-file';
+import type { MeasureTask } from './measure-file';
+import { problemLine, type MeasuredLine } from './measured-line';
 
 interface Waiting {
   task: MeasureTask;
