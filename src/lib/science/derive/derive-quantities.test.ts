@@ -44,6 +44,16 @@ describe('deriveQuantities', () => {
     expect(derived.starFormationRateError! / derived.starFormationRate! / expected).toBeCloseTo(1, 1);
   });
 
+  it('keeps the error of the dust correction where noise puts the decrement below case B', () => {
+    const share = (halpha: number) => {
+      const derived = deriveQuantities([fit('H-alpha 6565', halpha, 1), fit('H-beta 4863', 10, 1)], 0.1, 1e-17);
+      return derived.starFormationRateError! / derived.starFormationRate!;
+    };
+    expect(share(27)).toBeGreaterThan(0.8 * share(32));
+    const derived = deriveQuantities([fit('H-alpha 6565', 27, 1), fit('H-beta 4863', 10, 1)], 0.1, 1e-17);
+    expect(derived.starFormationRate! / (derived.luminosities['H-alpha 6565'] * 10 ** -41.27)).toBeCloseTo(1, 6);
+  });
+
   it('leaves luminosities and rate out for relative flux, and keeps ratios', () => {
     const derived = deriveQuantities(starburst, 0.1, null);
     expect(derived.luminosities).toEqual({});

@@ -53,12 +53,16 @@ function excessOf(fluxes: HydrogenFluxes, active: boolean, law: ExtinctionLaw): 
   return colourExcess(ratio, CASE_B.hgamma, WAVELENGTHS[HGAMMA], WAVELENGTHS[HBETA], law).value;
 }
 
-/** H-alpha flux corrected for dust as far as it is measured; H-beta times the case B ratio where H-alpha is not seen. */
-function correctedHalpha(fluxes: HydrogenFluxes, law: ExtinctionLaw): number | null {
+/**
+ * H-alpha flux corrected for dust as far as it is measured; H-beta times the case B ratio where H-alpha is not seen.
+ *
+ * @param leastExcess 0 for the value, since dust does not brighten; -Infinity for its error, which noise below 0 does not make smaller
+ */
+function correctedHalpha(fluxes: HydrogenFluxes, law: ExtinctionLaw, leastExcess: number): number | null {
   const name = fluxes[HALPHA] ? HALPHA : HBETA;
   const flux = fluxes[name];
   if (!flux) return null;
-  const excess = Math.max(0, excessOf(fluxes, false, law) ?? 0);
+  const excess = Math.max(leastExcess, excessOf(fluxes, false, law) ?? 0);
   const k = attenuationPerColourExcess(WAVELENGTHS[name], law);
   return (name === HALPHA ? flux : flux * CASE_B.halpha) * Math.pow(10, 0.4 * k * excess);
 }
@@ -126,14 +130,14 @@ export function deriveQuantities(
     const value = flux !== null && signalToNoise !== null && signalToNoise >= SEEN ? toLuminosity(flux) : null;
     if (value !== null) luminosities[line] = value;
   }
-  const rate =
-    active || broad
-      ? null
-      : propagate(lines, (fluxes) => {
-          const flux = correctedHalpha(fluxes, law);
-          const bright = flux === null ? null : toLuminosity(flux);
-          return bright === null ? null : starFormationRate(bright);
-        });
+  const rateWith = (leastExcess: number) =>
+    propagate(lines, (fluxes) => {
+      const flux = correctedHalpha(fluxes, law, leastExcess);
+      const bright = flux === null ? null : toLuminosity(flux);
+      return bright === null ? null : starFormationRate(bright);
+    });
+  const rate = active || broad ? null : rateWith(0);
+  const spread = rate ? rateWith(-Infinity) : null;
   return {
     balmerDecrement: decrement?.value ?? null,
     balmerDecrementError: decrement?.error ?? null,
@@ -143,7 +147,7 @@ export function deriveQuantities(
     cosmology: { hubbleConstant: cosmology.hubbleConstant, omegaMatter: cosmology.omegaMatter },
     luminosities,
     starFormationRate: rate?.value ?? null,
-    starFormationRateError: rate?.error ?? null,
+    starFormationRateError: rate && spread ? rate.value * (spread.error / spread.value) : null,
     ionisationClass: found,
     upperLimits,
   };
