@@ -15,7 +15,7 @@ export function bindKeys(scope: Scope, handlers: KeyHandlers) {
     keyChoices.load();
     function press(event: KeyboardEvent) {
       const key = keyOfEvent(event);
-      if (key === null || event.defaultPrevented || takesKey(event.target as Element | null, key)) return;
+      if (key === null || event.defaultPrevented || takesKey(event.target instanceof Element ? event.target : null, key)) return;
       const command = commandOfKey(key, scope, keyChoices.choices);
       const handler = command && handlers[command];
       if (!handler) return;

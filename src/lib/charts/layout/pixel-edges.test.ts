@@ -1,0 +1,23 @@
+import { describe, expect, it } from 'vitest';
+import { nearestPixel, pixelEdges, pixelRange } from './pixel-edges';
+
+const array = (...values: number[]) => Float64Array.from(values);
+
+describe('pixelEdges', () => {
+  it('meets halfway between even pixels and leaves a detector gap empty', () => {
+    const { left, right } = pixelEdges(array(1, 2, 3, 10, 11));
+    expect(right[0]).toBeCloseTo(1.5, 10);
+    expect(left[1]).toBeCloseTo(1.5, 10);
+    expect(right[2]).toBeCloseTo(3.505, 10);
+    expect(left[3]).toBeCloseTo(9.495, 10);
+  });
+  it('finds pixels by bisection', () => {
+    const wavelength = array(1, 2, 3, 4);
+    expect([pixelRange(wavelength, 2, 3), pixelRange(wavelength, 5, 6)]).toEqual([
+      [1, 3],
+      [4, 4],
+    ]);
+    expect([0, 2.4, 2.6, 9].map((place) => nearestPixel(wavelength, place))).toEqual([0, 1, 2, 3]);
+    expect(nearestPixel(array(), 1)).toBe(-1);
+  });
+});
