@@ -189,7 +189,6 @@ export function demoNight(seed = DEMO_SEED): DemoSpectrum[] {
         CRVAL1: wavelength[0],
         CDELT1: step,
         SPECSYS: 'TOPOCENT',
-        SPECRP: Number((wavelength[wavelength.length >> 1] / DEMO_INSTRUMENT.fwhmAngstrom).toFixed(1)),
       },
     };
   });
