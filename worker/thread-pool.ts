@@ -2,7 +2,7 @@ import { existsSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { Piscina } from 'piscina';
 import { config } from '$lib/server/config/config';
-import type { ReadFile } from '$lib/server/ingest/ingest-file';
+import type { TakeFile } from '$lib/server/ingest/ingest-files';
 import type { MeasureRows } from '$lib/server/measure/measure-spectra';
 
 let piscina: Piscina | undefined;
@@ -23,5 +23,9 @@ export function pool(): Piscina {
   return piscina;
 }
 
-export const readOnThread: ReadFile = (file) => pool().run({ file }, { name: 'readFile' });
-export const measureOnThread: MeasureRows = (file, rows) => pool().run({ file, rows }, { name: 'measureFile' });
+/** A task that takes longer than this is stuck: its thread is ended and another one started. */
+const STUCK_MS = 120_000;
+const options = (name: string) => ({ name, signal: AbortSignal.timeout(STUCK_MS) });
+
+export const takeOnThread: TakeFile = (file, measureUpTo) => pool().run({ file, measureUpTo }, options('takeFile'));
+export const measureOnThread: MeasureRows = (file, rows) => pool().run({ file, rows }, options('measureFile'));

@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs';
 import { expect, test, type Page } from '@playwright/test';
 import { readState } from './installation';
 import { signIn } from './people';
@@ -22,7 +23,11 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page }
     await page
       .getByLabel('Files to add')
       .setInputFiles([
-        ...FILES.map((name) => `${SAMPLE}/${name}`),
+        ...FILES.map((name) => ({
+          name,
+          mimeType: 'application/octet-stream',
+          buffer: readFileSync(`${SAMPLE}/${name}`),
+        })),
         { name: 'not-a-spectrum.fits', mimeType: 'application/fits', buffer: Buffer.from('a sentence, no spectrum') },
       ]);
     await expect(page.getByText('6 of 6 spectra measured')).toBeVisible({ timeout: 60_000 });

@@ -11,7 +11,7 @@ import { readSpectrum } from '$lib/server/review/read-spectrum';
 import { recordVerdict } from '$lib/server/review/record-verdict';
 import { undoVerdict } from '$lib/server/review/undo-verdict';
 import { makeInstallation, type Installation } from './installation';
-import { seedNight } from './seed';
+import { seedNight } from './seed-spectra';
 
 let installation: Installation;
 let programmeId: string;
@@ -36,8 +36,8 @@ beforeAll(async () => {
 afterAll(() => installation.destroy());
 beforeEach(async () => {
   const seeded = await seedNight(programmeId, observer.userId, [
-    { name: 'A', ra: 10, dec: -30, redshift: 0.3, confidence: 'secure' },
-    { name: 'B', ra: 11, dec: -30, redshift: 0.6, confidence: 'ambiguous' },
+    { name: 'A', ra: 10, dec: -30, redshift: 0.3, rival: 0.7, probability: 0.9, confidence: 'secure' },
+    { name: 'B', ra: 11, dec: -30, redshift: 0.6, probability: 0.6, confidence: 'ambiguous' },
   ]);
   night = seeded.nightId;
   spectra = seeded.spectrumIds;
@@ -53,7 +53,7 @@ describe('recordVerdict', () => {
     await recordVerdict(ines, spectra[0], { ...accept, candidate: 1 } as VerdictInput);
     expect(await standing(ines)).toMatchObject({
       redshift: 0.7,
-      redshiftError: 0.0001,
+      redshiftError: 3e-5,
       confidence: 'probable',
       candidatePlace: 1,
     });

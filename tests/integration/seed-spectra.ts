@@ -2,9 +2,9 @@ import { createHash } from 'node:crypto';
 import type { Confidence } from '$lib/domain/confidence';
 import type { Candidate, LineFit, Measurement } from '$lib/domain/measurement';
 import { inTransaction } from '$lib/server/database/in-transaction';
-import { storeFileContent } from '$lib/server/database/queries/files';
+import { storeFileContents } from '$lib/server/database/queries/files';
 import { storeMeasurements } from '$lib/server/database/queries/measurements';
-import { addFileToNight, insertNight } from '$lib/server/database/queries/nights';
+import { addFilesToNight, insertNight } from '$lib/server/database/queries/nights';
 import { lineByName } from '$lib/science/constants/lines';
 
 /** What a seeded spectrum is to be; what is left out is ordinary. */
@@ -93,12 +93,21 @@ export async function seedSpectra(
   createdBy: string,
   spectra: SeededSpectrum[],
 ): Promise<string[]> {
+  return (await seedNight(programmeId, createdBy, spectra)).spectrumIds;
+}
+
+/** As `seedSpectra`; names the night too. */
+export async function seedNight(
+  programmeId: string,
+  createdBy: string,
+  spectra: SeededSpectrum[],
+): Promise<{ nightId: string; spectrumIds: string[] }> {
   const name = `seed-${++files}.fits`;
   const sha256 = createHash('sha256').update(`${programmeId} ${name}`).digest('hex');
   return inTransaction(async (transaction) => {
     const night = { programmeId, instrumentId: null };
     const id = await insertNight({ ...night, civilDate: '2026-11-14', notes: '', createdBy }, transaction);
-    const added = await addFileToNight({ night: { id, ...night }, name, sha256, sizeBytes: 1 }, transaction);
+    const [added] = await addFilesToNight({ id, ...night }, [{ name, sha256, sizeBytes: 1 }], transaction);
     const content = spectra.map(({ name: target, ra = 63, dec = -31 }, i) => ({
       extension: 1,
       row: i + 1,
@@ -113,10 +122,10 @@ export async function seedSpectra(
       header: {},
       warnings: [],
     }));
-    const file = { id: added.id, programmeId, sha256, originalName: name, state: 'waiting', instrument: null };
-    const ids = await storeFileContent(file, { spectra: content, problems: [] }, transaction);
+    const file = { id: added.id, programmeId, sha256, originalName: name, instrument: null };
+    const [ids] = await storeFileContents([{ file, content: { spectra: content, problems: [] } }], transaction);
     const results = new Map(ids.map((spectrum, i) => [spectrum, { measurement: seededMeasurement(spectra[i]) }]));
     await storeMeasurements(results, transaction);
-    return ids;
+    return { nightId: id, spectrumIds: ids };
   });
 }

@@ -3,10 +3,13 @@ import type { ReadableStream as NodeReadableStream } from 'node:stream/web';
 import busboy from 'busboy';
 import { Refusal } from '$lib/domain/refusal';
 import type { Actor } from '../auth/permissions';
-import { admitToNight, receiveFile, type ReceivedFile } from './receive-file';
+import { addToNight, admitToNight, storeBytes, type ReceivedFile, type StoredBytes } from './receive-file';
 
 /** More parts than this in one request are refused; a night may have any number of requests. */
 const FILES_PER_REQUEST = 5_000;
+
+/** Rows written together while more parts arrive. */
+const FILES_PER_TRANSACTION = 32;
 
 export interface Upload {
   files: ReceivedFile[];
@@ -19,7 +22,7 @@ export interface Upload {
  * every part is, the first refusal is thrown, so that the whole answer is a 4xx.
  */
 export async function receiveUpload(actor: Actor | null, nightId: string, request: Request): Promise<Upload> {
-  await admitToNight(actor, nightId);
+  const night = await admitToNight(actor, nightId);
   const contentType = request.headers.get('content-type') ?? '';
   if (!/^multipart\/form-data/i.test(contentType) || !request.body) {
     throw new Refusal('unsupported', 'Files come as multipart/form-data.', 'Use a form, or curl -F file=@NAME.');
@@ -27,10 +30,16 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
   const body = Readable.fromWeb(request.body as unknown as NodeReadableStream);
   const upload: Upload = { files: [], refused: [] };
   let first: Refusal | undefined;
+  let stored: StoredBytes[] = [];
+  const settle = async () => {
+    upload.files.push(...(await addToNight(night, stored)));
+    stored = [];
+  };
 
   const take = async (name: string, stream: Readable) => {
     try {
-      upload.files.push(await receiveFile(actor, nightId, { name, stream }));
+      stored.push(await storeBytes({ name, stream }));
+      if (stored.length >= FILES_PER_TRANSACTION) await settle();
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       first ??= error;
@@ -40,7 +49,12 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
     }
   };
 
-  await parts(body, contentType, take);
+  try {
+    await parts(body, contentType, take);
+  } finally {
+    // What came whole before the connection broke stays: sending the rest again skips it.
+    await settle();
+  }
   if (upload.files.length === 0) {
     throw first ?? new Refusal('invalid', 'The body has no file.', 'Send at least one part with a filename.', 'file');
   }

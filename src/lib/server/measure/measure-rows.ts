@@ -1,11 +1,11 @@
 import type { Instrument } from '$lib/domain/instrument';
+import type { MeasureResult } from '$lib/domain/measure-result';
 import { InputProblem } from '$lib/domain/problem';
-import type { RawSpectrum } from '$lib/domain/spectrum';
+import type { RawSpectrum, Spectrum } from '$lib/domain/spectrum';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { withDerived } from '$lib/science/derive/with-derived';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
 import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
-import type { MeasureResult } from './measure-spectra';
 
 /** Measures the named rows of a file's bytes; an input at fault gives its problem in its place. */
 export function measureRows(
@@ -17,7 +17,7 @@ export function measureRows(
   const { spectra } = readSpectra(bytes, fileName, instrument);
   return rows.map(({ extension, row }) => {
     try {
-      return { measurement: measureRaw(findRow(spectra, extension, row, fileName), instrument) };
+      return measureOne(toSpectrum(findRow(spectra, extension, row, fileName), instrument));
     } catch (error) {
       if (error instanceof InputProblem) return { problem: error.problem };
       throw error;
@@ -25,9 +25,9 @@ export function measureRows(
   });
 }
 
-function measureRaw(raw: RawSpectrum, instrument?: Instrument) {
-  const spectrum = toSpectrum(raw, instrument);
-  return withDerived(measureSpectrum(spectrum), spectrum);
+/** Measures a spectrum, with its derived quantities. */
+export function measureOne(spectrum: Spectrum): MeasureResult {
+  return { measurement: withDerived(measureSpectrum(spectrum), spectrum) };
 }
 
 function findRow(spectra: RawSpectrum[], extension: number, row: number, fileName: string): RawSpectrum {

@@ -1,17 +1,15 @@
 import type { Instrument } from '$lib/domain/instrument';
-import type { Measurement } from '$lib/domain/measurement';
+import type { MeasureResult } from '$lib/domain/measure-result';
 import type { Problem } from '$lib/domain/problem';
 import { inTransaction } from '../database/in-transaction';
 import { countTry } from '../database/queries/files';
 import { findWaiting, storeMeasurements, type WaitingSpectrum } from '../database/queries/measurements';
-import { touchNightsOfFile } from '../database/queries/nights';
+import { touchNightsOfFiles } from '../database/queries/nights';
 import { log } from '../log/log';
 import { nudge } from '../queue/nudge';
 import { fulfil, wishFor } from '../queue/outbox';
 
 const TRIES = 3;
-
-export type MeasureResult = { measurement: Measurement } | { problem: Problem };
 
 /** Measures rows of one stored file, on another thread; one result a row, in order. */
 export type MeasureRows = (
@@ -48,11 +46,7 @@ export async function measureSpectra(spectrumIds: string[], jobId: string, measu
   const nights = await inTransaction(async (transaction) => {
     await storeMeasurements(results, transaction);
     await fulfil([jobId], transaction);
-    const touched = [];
-    for (const fileId of new Set(waiting.map((spectrum) => spectrum.fileId))) {
-      touched.push(...(await touchNightsOfFile(fileId, transaction)));
-    }
-    return new Set(touched);
+    return touchNightsOfFiles([...new Set(waiting.map(({ fileId }) => fileId))], transaction);
   });
   for (const nightId of nights) nudge('nights', nightId);
 }

@@ -2,7 +2,7 @@ import { z } from 'zod';
 
 /** Every job: its name and the schema of its payload, ids only. The worker has one handler for each. */
 export const JOBS = {
-  ingest: z.object({ fileId: z.uuid() }),
+  ingest: z.object({ fileIds: z.array(z.uuid()).min(1) }),
   measure: z.object({ spectrumIds: z.array(z.uuid()).min(1) }),
 } as const;
 

@@ -1,7 +1,7 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Instrument } from '$lib/domain/instrument';
 import type { LineFit, Measurement } from '$lib/domain/measurement';
-import type { Problem } from '$lib/domain/problem';
+import type { MeasureResult } from '$lib/domain/measure-result';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
 import { CandidateRecord, LineFitRecord, MeasurementRecord } from '../models/answers';
@@ -40,70 +40,61 @@ export function entropyBits({ candidates, rivals }: Pick<Measurement, 'candidate
 }
 
 /** Writes results; a spectrum whose measurement by this engine and settings stands already keeps it. */
-export async function storeMeasurements(
-  results: Map<string, { measurement: Measurement } | { problem: Problem }>,
-  transaction: Transaction,
-): Promise<void> {
+export async function storeMeasurements(results: Map<string, MeasureResult>, transaction: Transaction): Promise<void> {
+  const measured: { id: string; spectrumId: string; measurement: Measurement }[] = [];
   for (const [spectrumId, result] of results) {
-    if ('problem' in result) {
+    if ('measurement' in result) measured.push({ id: newIdentifier(), spectrumId, measurement: result.measurement });
+    else {
       const where = { id: spectrumId, state: 'waiting' };
       await SpectrumRecord.update({ state: 'failed', problem: result.problem }, { where, transaction });
-    } else {
-      await storeMeasurement(spectrumId, result.measurement, transaction);
-      await SpectrumRecord.update({ state: 'measured', problem: null }, { where: { id: spectrumId }, transaction });
     }
   }
+  if (measured.length === 0) return;
+  await MeasurementRecord.bulkCreate(measured.map(asRow), { ignoreDuplicates: true, transaction });
+  const ids = measured.map(({ id }) => id);
+  const written = await MeasurementRecord.findAll({ where: { id: ids }, attributes: ['id'], raw: true, transaction });
+  const isNew = new Set(written.map(({ id }) => id));
+  const fresh = measured.filter(({ id }) => isNew.has(id));
+  const candidates = fresh.flatMap(({ id, measurement }) =>
+    measurement.candidates.map(({ redshift, redshiftError, probability, objectClass }, place) => {
+      return { measurementId: id, place, redshift, redshiftError, probability, objectClass };
+    }),
+  );
+  const lines = fresh.flatMap(({ id, measurement }) =>
+    measurement.lines.map((line) => ({ measurementId: id, ...line })),
+  );
+  if (candidates.length) await CandidateRecord.bulkCreate(candidates, { transaction });
+  if (lines.length) await LineFitRecord.bulkCreate(lines, { transaction });
+  const where = { id: measured.map(({ spectrumId }) => spectrumId) };
+  await SpectrumRecord.update({ state: 'measured', problem: null }, { where, transaction });
 }
 
-function strongestOf(lines: LineFit[]): LineFit | null {
+function asRow({ id, spectrumId, measurement }: { id: string; spectrumId: string; measurement: Measurement }) {
+  const { engine, candidates, lines, redshift, redshiftError, redshiftErrorMeasured, redshiftSystemic } = measurement;
+  const { secondRedshift, probability, confidence, noiseFactor, fluxUnit, flags } = measurement;
   const stronger = (best: LineFit | null, line: LineFit) =>
     (line.signalToNoise ?? 0) > (best?.signalToNoise ?? 0) ? line : best;
-  return lines.reduce(stronger, null);
-}
-
-async function storeMeasurement(spectrumId: string, measurement: Measurement, transaction: Transaction): Promise<void> {
-  const { engine, candidates, lines } = measurement;
-  const found = await MeasurementRecord.findOne({
-    where: { spectrumId, engineVersion: engine.version, settingsHash: engine.settings },
-    attributes: ['id'],
-    transaction,
-  });
-  if (found) return;
-  const id = newIdentifier();
-  const strongest = strongestOf(lines);
-  const { redshift, redshiftError, redshiftErrorMeasured, redshiftSystemic, secondRedshift } = measurement;
-  const { probability, confidence, noiseFactor } = measurement;
-  await MeasurementRecord.create(
-    {
-      id,
-      spectrumId,
-      engineVersion: engine.version,
-      settingsHash: engine.settings,
-      lineList: engine.lineList,
-      redshift,
-      redshiftError,
-      redshiftErrorMeasured,
-      redshiftSystemic,
-      secondRedshift,
-      probability,
-      confidence,
-      noiseFactor,
-      entropyBits: entropyBits(measurement),
-      objectClass: redshift === null ? null : (candidates[0]?.objectClass ?? null),
-      fluxUnit: measurement.fluxUnit,
-      flags: measurement.flags,
-      strongestLine: strongest?.line ?? null,
-      strongestLineSignalToNoise: strongest?.signalToNoise ?? null,
-      detail: measurement,
-    },
-    { transaction },
-  );
-  await CandidateRecord.bulkCreate(
-    candidates.map((candidate, place) => ({ measurementId: id, place, ...candidate })),
-    { transaction, fields: ['measurementId', 'place', 'redshift', 'redshiftError', 'probability', 'objectClass'] },
-  );
-  await LineFitRecord.bulkCreate(
-    lines.map((line) => ({ measurementId: id, ...line })),
-    { transaction },
-  );
+  const strongest = lines.reduce(stronger, null);
+  return {
+    id,
+    spectrumId,
+    engineVersion: engine.version,
+    settingsHash: engine.settings,
+    lineList: engine.lineList,
+    redshift,
+    redshiftError,
+    redshiftErrorMeasured,
+    redshiftSystemic,
+    secondRedshift,
+    probability,
+    confidence,
+    noiseFactor,
+    entropyBits: entropyBits(measurement),
+    objectClass: redshift === null ? null : (candidates[0]?.objectClass ?? null),
+    fluxUnit,
+    flags,
+    strongestLine: strongest?.line ?? null,
+    strongestLineSignalToNoise: strongest?.signalToNoise ?? null,
+    detail: measurement,
+  };
 }

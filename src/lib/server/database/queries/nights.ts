@@ -1,5 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../connection';
+import { newIdentifier } from '../identifier';
 import { InstrumentVersion, Night, NightFile, SpectrumFile } from '../models/observing';
 import { Programme } from '../models/people';
 
@@ -31,10 +32,10 @@ export async function findNight(id: string): Promise<Night | null> {
   return UUID.test(id) ? Night.findByPk(id) : null;
 }
 
-/** Files of the night, by the nights a file stands in, are told of by their revision. */
-export async function touchNightsOfFile(fileId: string, transaction: Transaction): Promise<string[]> {
-  const rows = await NightFile.findAll({ where: { fileId }, attributes: ['nightId'], transaction });
-  const nightIds = rows.map((row) => row.nightId).sort();
+/** Raises the revision of every night that these files stand in; returns the nights. */
+export async function touchNightsOfFiles(fileIds: string[], transaction: Transaction): Promise<string[]> {
+  const rows = await NightFile.findAll({ where: { fileId: fileIds }, attributes: ['nightId'], raw: true, transaction });
+  const nightIds = [...new Set(rows.map((row) => row.nightId))].sort();
   await touchNights(nightIds, transaction);
   return nightIds;
 }
@@ -47,35 +48,64 @@ export async function touchNights(nightIds: string[], transaction: Transaction):
   });
 }
 
+export interface AddedFile {
+  id: string;
+  /** The bytes were never here, or their reading failed before and is worth a new try. */
+  isNew: boolean;
+  /** In this night before. */
+  already: boolean;
+}
+
 /**
- * The row of these bytes in the programme, made where there is none, linked to the night.
- * `isNew`: the bytes were never here, or their reading failed before and is worth a new try; `already`: in this night.
+ * Rows of these bytes in the programme, made where there are none and linked to the night; one answer an input, in
+ * order. The same bytes twice are one file.
  */
-export async function addFileToNight(
-  input: {
-    night: { id: string; programmeId: string; instrumentId: string | null };
-    name: string;
-    sha256: string;
-    sizeBytes: number;
-  },
+export async function addFilesToNight(
+  night: { id: string; programmeId: string; instrumentId: string | null },
+  inputs: { name: string; sha256: string; sizeBytes: number }[],
   transaction: Transaction,
-): Promise<{ id: string; isNew: boolean; already: boolean }> {
-  const { night, name, sha256, sizeBytes } = input;
-  const where = { programmeId: night.programmeId, sha256 };
-  const [file, isNew] = await SpectrumFile.findOrCreate({
-    where,
-    defaults: { ...where, sizeBytes, originalName: name, instrumentId: night.instrumentId, problems: [] } as never,
+): Promise<AddedFile[]> {
+  const { programmeId, instrumentId, id: nightId } = night;
+  const bySha = new Map(inputs.map((input) => [input.sha256, input]));
+  const shas = [...bySha.keys()].sort();
+  const made = shas.map((sha256) => {
+    const { name, sizeBytes } = bySha.get(sha256)!;
+    return { id: newIdentifier(), programmeId, sha256, sizeBytes, originalName: name, instrumentId, problems: [] };
+  });
+  await SpectrumFile.bulkCreate(made, { ignoreDuplicates: true, transaction });
+  const attributes = ['id', 'sha256', 'state'];
+  const files = await SpectrumFile.findAll({
+    where: { programmeId, sha256: shas },
+    attributes,
+    raw: true,
     transaction,
   });
-  const [, added] = await NightFile.findOrCreate({
-    where: { nightId: night.id, fileId: file.id },
-    defaults: { nightId: night.id, fileId: file.id, name },
+  const fileIds = files.map(({ id }) => id);
+  const linked = await NightFile.findAll({
+    where: { nightId, fileId: fileIds },
+    attributes: ['fileId'],
+    raw: true,
     transaction,
   });
-  const again = !isNew && file.state === 'failed';
-  if (again) await file.update({ state: 'waiting', problems: [], tries: 0 }, { transaction });
-  if (added || again) await touchNights([night.id], transaction);
-  return { id: file.id, isNew: isNew || again, already: !added };
+  const before = new Set(linked.map(({ fileId }) => fileId));
+  const links = files
+    .filter(({ id }) => !before.has(id))
+    .map(({ id, sha256 }) => ({ nightId, fileId: id, name: bySha.get(sha256)!.name }));
+  await NightFile.bulkCreate(links, { ignoreDuplicates: true, transaction });
+  const failed = files.filter(({ state }) => state === 'failed').map(({ id }) => id);
+  if (failed.length) {
+    await SpectrumFile.update({ state: 'waiting', problems: [], tries: 0 }, { where: { id: failed }, transaction });
+  }
+  if (links.length || failed.length) await touchNights([nightId], transaction);
+  const ours = new Set([...made.map(({ id }) => id), ...failed]);
+  const found = new Map(files.map(({ id, sha256 }) => [sha256, id]));
+  const answered = new Set<string>();
+  return inputs.map(({ sha256 }) => {
+    const id = found.get(sha256)!;
+    const repeat = answered.has(id);
+    answered.add(id);
+    return { id, isNew: ours.has(id) && !repeat, already: before.has(id) || repeat };
+  });
 }
 
 export interface NightListRow {

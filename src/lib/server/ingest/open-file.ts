@@ -15,15 +15,23 @@ function medianSignalToNoise(spectrum: Spectrum): number | null {
   return ratios.length ? ratios[ratios.length >> 1] : null;
 }
 
-/** Reads a file's bytes into summaries of its spectra; what is wrong with one of them loses none of the others. */
-export function summariseFile(bytes: Uint8Array, fileName: string, instrument?: Instrument): FileContent {
+/** What a file holds, and its spectra as the engine reads them, in the order of `content.spectra`. */
+export interface OpenedFile {
+  content: FileContent;
+  spectra: Spectrum[];
+}
+
+/** Reads a file's bytes; what is wrong with one spectrum loses none of the others. */
+export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instrument): OpenedFile {
   const { spectra: raws, problems: found } = readSpectra(bytes, fileName, instrument);
   const problems: Problem[] = [...found];
-  const spectra: FileContent['spectra'] = [];
+  const summaries: FileContent['spectra'] = [];
+  const spectra: Spectrum[] = [];
   for (const raw of raws) {
     try {
       const spectrum = toSpectrum(raw, instrument);
-      spectra.push({
+      spectra.push(spectrum);
+      summaries.push({
         extension: raw.extension,
         row: raw.row,
         name: raw.name,
@@ -42,5 +50,5 @@ export function summariseFile(bytes: Uint8Array, fileName: string, instrument?: 
       problems.push(error.problem);
     }
   }
-  return { spectra, problems };
+  return { content: { spectra: summaries, problems }, spectra };
 }
