@@ -5,6 +5,7 @@ import type { AssembledRows } from './assemble-rows';
 
 const EXAMPLES = 20;
 const named = (name: string) => ({ text: name, names: [name] });
+const orList = (words: readonly string[]) => words.join(', ').replace(/, ([^,]*)$/, ' or $1');
 const plural = (n: number, one: string, many: string) => `${n.toLocaleString('en-US')} ${n === 1 ? one : many}`;
 
 /** What stands against freezing these rows, and what doesn't but is worth knowing. */
@@ -66,7 +67,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
 export function notesOnRows({ rows, targetsWithChoice }: AssembledRows, selection: DraftSelection): string[] {
   const notes = [
     selection.engineAlone
-      ? `Rows that nobody has looked at carry the engine's answer where it calls it ${selection.confidence.join(' or ')}; decided_by tells them apart.`
+      ? `Rows that nobody has looked at carry the engine's answer where it calls it ${orList(selection.confidence)}; decided_by tells them apart.`
       : 'Every row was decided by people.',
   ];
   if (targetsWithChoice > 0) {
