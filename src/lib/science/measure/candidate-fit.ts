@@ -1,6 +1,6 @@
 import { equivalentWidthPrior } from './equivalent-width-prior';
 import { evidenceOfFamily } from './family-weight';
-import type { Feature } from './features';
+import { artefactLogOdds, type Feature } from './features';
 import { BROAD_COMPONENTS, CORE_COMPONENTS, type LineComponent } from './fit/components';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
@@ -71,19 +71,33 @@ export function fitCandidate(context: WeighContext, suspect: Suspect, steps: num
 }
 
 /** Goes on fitting a candidate from where it stands, and weighs it again; never worse than before. */
-export function refineCandidate(context: WeighContext, candidate: FittedCandidate, steps: number): FittedCandidate {
+export function refineCandidate(
+  context: WeighContext,
+  candidate: FittedCandidate,
+  steps: number,
+  scale?: number,
+): FittedCandidate {
   const start = { logScale: candidate.fit.logScale, sigmaKms: candidate.fit.sigmaKms };
   const fit = jointFit(context.data, candidate.fit.components, start, steps);
   if (!fit) return candidate;
-  const refined = weighFit(context, fit, candidate.kind);
+  const refined = weighFit(context, fit, candidate.kind, scale);
   return refined.logEvidence > -Infinity ? refined : candidate;
 }
 
-/** Weighs a fit; see `fitCandidate`. */
-export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind): FittedCandidate {
-  const { features, noiseFactor } = context;
+/**
+ * Weighs a fit; see `fitCandidate`.
+ *
+ * @param scale what errors are multiplied by; the fit's own misfit where left out
+ */
+export function weighFit(
+  context: WeighContext,
+  fit: JointFit,
+  kind: SuspectKind,
+  scale: number = misfitScale(fit, context.noiseFactor),
+): FittedCandidate {
+  const { features } = context;
   const errors = fitErrors(fit);
-  const errorScale = misfitScale(fit, noiseFactor);
+  const errorScale = scale;
   let best = -Infinity;
   let bestFamily: LineFamily = LINE_FAMILIES[0];
   for (const family of LINE_FAMILIES) {
@@ -97,9 +111,10 @@ export function weighFit(context: WeighContext, fit: JointFit, kind: SuspectKind
   const explained: number[] = [];
   let artefacts = 0;
   features.forEach((feature, index) => {
-    if (!explains(fit, feature)) return;
+    const own = significanceOn(fit, feature);
+    if (!(own > 2.5)) return;
     explained.push(index);
-    artefacts += feature.logArtefact;
+    artefacts += artefactLogOdds(feature, Math.min(feature.bounded, own) / errorScale);
   });
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
@@ -125,15 +140,29 @@ export function misfitScale(fit: JointFit, noiseFactor: number): number {
   return Math.max(noiseFactor, Math.sqrt(Math.max(0, reduced / chance)));
 }
 
-/** Whether a fitted line that stands out by 2.5 sigma or more lies on the feature. */
-export function explains(fit: JointFit, feature: Feature): boolean {
+/** Significance, before scaling, of the fitted lines that lie on a feature; 0 where none does. */
+export function significanceOn(fit: JointFit, feature: Feature): number {
   const stretch = Math.exp(fit.logScale);
   const n = fit.components.length;
-  return fit.components.some((component, i) => {
-    if (!(fit.amplitude[i] * Math.sqrt(fit.gram[i * n + i]) > 2.5)) return false;
+  const index: number[] = [];
+  const share: number[] = [];
+  fit.components.forEach((component, i) => {
+    if (!(fit.amplitude[i] > 0) || component.step) return;
     const sigma = Math.hypot(fit.sigmaKms[component.width], feature.sigmaKms, 60) / SPEED_OF_LIGHT_KMS;
-    return component.members.some(
-      (member) => Math.abs(Math.log((member.rest * stretch) / feature.wavelength)) < 2.5 * sigma,
-    );
+    let squares = 0;
+    let inside = 0;
+    for (const member of component.members) {
+      squares += member.share ** 2;
+      if (Math.abs(Math.log((member.rest * stretch) / feature.wavelength)) < 2.5 * sigma) inside += member.share ** 2;
+    }
+    if (inside > 0) {
+      index.push(i);
+      share.push(fit.amplitude[i] * Math.sqrt(inside / squares));
+    }
   });
+  let total = 0;
+  for (let a = 0; a < index.length; a++) {
+    for (let b = 0; b < index.length; b++) total += share[a] * fit.gram[index[a] * n + index[b]] * share[b];
+  }
+  return Math.sqrt(Math.max(0, total));
 }

@@ -5,7 +5,6 @@ import type { FittedCandidate } from './candidate-fit';
 import { confidenceOf, type ConfidenceInput } from './confidence';
 import { doubletAdvantage } from './doublet-test';
 import { asFinal, finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
-import type { FitData } from './fit/fit-windows';
 import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
 import { lineFitsOf } from './line-fits';
 import { breakLogRatio, systemicRedshift } from './lyman-alpha';
@@ -71,7 +70,7 @@ export function decide(
   ].sort((a, b) => b.probability - a.probability);
   const top = entries[0];
   const refit0 = top?.emission ? finalFit(prepared.working, hypotheses.context.noiseFactor, top.emission, 12) : null;
-  const evidence = top ? evidenceOf(prepared.working, hypotheses, top, refit0) : null;
+  const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
   const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;
   const rivals = {
@@ -164,7 +163,7 @@ function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null)
 /** What the confidence word is decided from besides probabilities. */
 type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy'>;
 
-function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null): Evidence {
+function evidenceOf(prepared: PreparedSpectrum, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null): Evidence {
   if (!top.emission || !refit) {
     return {
       independentLines: 0,
@@ -174,7 +173,11 @@ function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: Fi
       absorptionFeatures: top.absorption?.strongFeatures ?? 0,
     };
   }
-  const support = supportingLines(refit, hypotheses.banks.lines);
+  const data = prepared.working;
+  const support = supportingLines(refit, hypotheses.banks.lines, data);
+  const clean = support.filter((line) => !line.nearSky).length;
+  // Residuals of the night sky come in crowds: lines that all lie on it count as one unless there are many.
+  const independentLines = clean > 0 || support.length >= 4 ? support.length : Math.min(1, support.length);
   const oxygen = refit.fit.components.findIndex((c) => c.name === '[O II] 3730' && c.width === 0);
   const resolvedDoublet =
     support.length < 2 &&
@@ -186,7 +189,7 @@ function evidenceOf(data: FitData, hypotheses: Hypotheses, top: Entry, refit: Fi
     refit.lyman !== null && refit.lyman.wingShare > 0.25 && broken.logRatio > 4 && broken.significance > 5;
   const onlyCarbon = support.length === 1 && support[0].name.startsWith('C IV');
   return {
-    independentLines: support.length,
+    independentLines,
     resolvedDoublet,
     unmistakableProfile,
     unknownIdentity: onlyCarbon,
@@ -203,7 +206,7 @@ function emissionCandidate(
   first: boolean,
 ): Candidate {
   const data = prepared.working;
-  const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines);
+  const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines, data);
   const errors = redshiftErrors(refit, candidate.kind === 'broad');
   const scale = { flux: prepared.working.scale, errors: refit.errorScale };
   const lyman = candidate.kind === 'lyman';

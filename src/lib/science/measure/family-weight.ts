@@ -1,5 +1,6 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { familyEvidence, type FluxLikelihood } from './evidence';
+import { RATIO_PRIORS } from './fit/components';
 import { invertPositiveDefinite } from './fit/solve';
 import { pixelOf } from './fit/line-profile';
 import type { WeighContext } from './weigh-context';
@@ -25,6 +26,8 @@ interface Row {
   fault: number;
   logRatio: number;
   scatter: number;
+  /** Log prior of a doublet's fitted ratio. */
+  logPrior: number;
 }
 
 /**
@@ -60,23 +63,63 @@ export function evidenceOfFamily(
 function rowsOf(fit: JointFit, family: LineFamily, width: 0 | 1, profile: number, context: WeighContext): Row[] {
   const n = fit.components.length;
   const rows: Row[] = [];
+  const taken = new Set<number>();
   let profileFlux = 0;
   for (let k = 0; k < profile; k++) profileFlux += fit.amplitude[k];
   fit.components.forEach((component, i) => {
     const line = family.lines[component.name];
-    if (!line || component.width !== width || !(fit.gram[i * n + i] > 0)) return;
-    const members =
-      i === 0 && profileFlux > 0
-        ? Array.from({ length: profile }, (_, k) => ({ index: k, share: fit.amplitude[k] / profileFlux }))
-        : [{ index: i, share: 1 }];
-    const centre = component.members[0].rest * Math.exp(fit.logScale);
-    const pixel = pixelOf(context.data.edges, centre);
-    const sigma = Math.hypot(context.data.lsfSigma[pixel], (centre * fit.sigmaKms[width]) / SPEED_OF_LIGHT_KMS);
-    const level = Math.abs((width === 1 ? context.stiffContinuum : context.continuum)[pixel]);
-    const fault = (CONTINUUM_FAULT[width] * level * 2.3548 * sigma) ** 2;
-    rows.push({ members, fault, logRatio: Math.log(line[0]), scatter: line[1] });
+    if (!line || taken.has(i) || component.width !== width || !(fit.gram[i * n + i] > 0)) return;
+    const pair = width === 0 ? doubletOf(fit, i) : null;
+    let members = [{ index: i, share: 1 }];
+    let ratio = line[0];
+    let logPrior = 0;
+    if (i === 0 && profileFlux > 0) {
+      members = Array.from({ length: profile }, (_, k) => ({ index: k, share: fit.amplitude[k] / profileFlux }));
+    } else if (pair && family.lines[fit.components[pair.other].name]) {
+      taken.add(pair.other);
+      members = [
+        { index: i, share: pair.share },
+        { index: pair.other, share: 1 - pair.share },
+      ];
+      ratio += family.lines[fit.components[pair.other].name][0];
+      logPrior = pair.logPrior;
+    }
+    const fault = faultOf(fit, component.members[0].rest, width, context);
+    rows.push({ members, fault, logRatio: Math.log(ratio), scatter: line[1], logPrior });
   });
   return rows;
+}
+
+/** Variance of a line's flux from faults of the continuum under it. */
+function faultOf(fit: JointFit, rest: number, width: 0 | 1, context: WeighContext): number {
+  const centre = rest * Math.exp(fit.logScale);
+  const pixel = pixelOf(context.data.edges, centre);
+  const sigma = Math.hypot(context.data.lsfSigma[pixel], (centre * fit.sigmaKms[width]) / SPEED_OF_LIGHT_KMS);
+  const level = Math.abs((width === 1 ? context.stiffContinuum : context.continuum)[pixel]);
+  // The wider a line, the more it looks like continuum.
+  const wide = width === 1 ? Math.max(1, (2.3548 * fit.sigmaKms[1]) / 5000) : 1;
+  return (CONTINUUM_FAULT[width] * wide * level * 2.3548 * sigma) ** 2;
+}
+
+/**
+ * The doublet that a component belongs to: its partner, the component's share of the sum, bounded by atomic physics, and
+ * the log prior of the fitted ratio. Null where it has no covered partner.
+ */
+function doubletOf(fit: JointFit, i: number): { other: number; share: number; logPrior: number } | null {
+  const n = fit.components.length;
+  const name = fit.components[i].name;
+  const prior = RATIO_PRIORS.find((p) => p.numerator === name || p.denominator === name);
+  if (!prior) return null;
+  const partner = prior.numerator === name ? prior.denominator : prior.numerator;
+  const other = fit.components.findIndex((c) => c.name === partner && c.width === 0);
+  if (other < 0 || !(fit.gram[other * n + other] > 0)) return null;
+  const top = prior.numerator === name ? fit.amplitude[i] : fit.amplitude[other];
+  const bottom = prior.numerator === name ? fit.amplitude[other] : fit.amplitude[i];
+  const fitted = bottom > 0 ? top / bottom : top > 0 ? Infinity : prior.mean;
+  const ratio = Math.min(prior.high, Math.max(prior.low, fitted));
+  const deviation = (ratio - prior.mean) / prior.sigma;
+  const share = prior.numerator === name ? ratio / (1 + ratio) : 1 / (1 + ratio);
+  return { other, share, logPrior: -0.5 * deviation * deviation };
 }
 
 function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: WeighContext, scale: number): number {
@@ -102,7 +145,8 @@ function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: Wei
     gram[a * m + a] *= 1 + 1e-9;
   });
   const likelihood = withFaults(gram, right, rows);
-  return familyEvidence(
+  const logPrior = rows.reduce((sum, row) => sum + row.logPrior, 0);
+  const evidence = familyEvidence(
     likelihood,
     {
       logRatio: Float64Array.from(rows, (row) => row.logRatio),
@@ -110,6 +154,7 @@ function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: Wei
     },
     context.logNoiseFlux,
   ).logEvidence;
+  return evidence + logPrior;
 }
 
 /** Adds the fault variances to the covariance of the fluxes and turns the likelihood back into normal equations. */

@@ -18,8 +18,10 @@ export interface Feature {
   nearSky: boolean;
   /** Lies at the edge of a gap or of the data. */
   nearEdge: boolean;
-  /** Log odds that something that is no line made it, against one resolution element without any feature. */
-  logArtefact: number;
+  /** Significance before the filter's noise factor, continuum faults counted as noise. */
+  bounded: number;
+  /** How often something that is no line makes a feature here, per resolution element. */
+  artefactRate: number;
 }
 
 /**
@@ -73,9 +75,6 @@ export function findFeatures(
       (nearSky ? rates.sky : nearEdge ? ARTEFACT_RATE.edge : rates.clean) +
       ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike)));
     const s = bounded(best[k], filters[which[k]].information[k], continuum[pixel], wavelength * (reach / 2.5));
-    // A positive bump of unknown height, log-uniform over a factor 1,000, as likelihood odds times its rate.
-    const logOdds = 0.5 * s * s - Math.log((s * Math.log(1000)) / 2.507);
-    const logArtefact = softPlus(Math.log(rate) + logOdds);
     features.push({
       wavelength,
       logWavelength,
@@ -84,11 +83,21 @@ export function findFeatures(
       sigmaKms,
       nearSky,
       nearEdge,
-      logArtefact,
+      bounded: s,
+      artefactRate: rate,
     });
     if (features.length >= 60) break;
   }
   return features;
+}
+
+/**
+ * Log odds that something that is no line made a bump of a given significance, against nothing there: a height
+ * log-uniform over a factor of 1,000, times the rate of such bumps.
+ */
+export function artefactLogOdds(feature: Feature, significance: number): number {
+  const s = Math.max(1, significance);
+  return softPlus(Math.log(feature.artefactRate) + 0.5 * s * s - Math.log((s * Math.log(1000)) / 2.507));
 }
 
 /** Significance with the faults of the continuum counted as noise (see `CONTINUUM_FAULT`). */

@@ -1,10 +1,13 @@
+import { MASK } from '$lib/domain/spectrum';
 import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candidate-fit';
 import type { FilterBank } from './detect';
 import { FULL_COMPONENTS, type LineComponent } from './fit/components';
 import type { FitData } from './fit/fit-windows';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
+import { pixelOf } from './fit/line-profile';
 import { lymanAlphaPeak } from './lyman-alpha';
+import type { WorkingSpectrum } from './working-spectrum';
 
 /** The answer's fit at full depth. */
 export interface FinalFit {
@@ -63,13 +66,15 @@ export interface LineSupport {
   name: string;
   significance: number;
   wavelengthObserved: number;
+  /** Lies under a strong sky line or in a telluric band. */
+  nearSky: boolean;
 }
 
 /**
  * Lines of signal-to-noise 4 or more from different transitions: each in the joint fit and, on its own, in the filter
  * (3 sigma); tied lines count when the filter sees them, an unresolved doublet counts once.
  */
-export function supportingLines(final: FinalFit, bank: FilterBank): LineSupport[] {
+export function supportingLines(final: FinalFit, bank: FilterBank, working: WorkingSpectrum): LineSupport[] {
   const { fit, errors } = final;
   const support: LineSupport[] = [];
   fit.components.forEach((component, i) => {
@@ -86,7 +91,12 @@ export function supportingLines(final: FinalFit, bank: FilterBank): LineSupport[
           Math.abs(Math.log(other.wavelengthObserved / wavelengthObserved)) < mergeDistance(fit, component.width),
       );
       if (!merged)
-        support.push({ name: member.entry.name, significance: significance * member.share, wavelengthObserved });
+        support.push({
+          name: member.entry.name,
+          significance: significance * member.share,
+          wavelengthObserved,
+          nearSky: nearSky(working, wavelengthObserved),
+        });
     }
   });
   return support;
@@ -95,4 +105,12 @@ export function supportingLines(final: FinalFit, bank: FilterBank): LineSupport[
 /** Lines nearer than this (in ln wavelength) can't be told to be two. */
 function mergeDistance(fit: JointFit, width: 0 | 1): number {
   return width === 1 ? 0.02 : Math.max(350, 2.5 * fit.sigmaKms[0]) / 299792.458;
+}
+
+function nearSky(working: WorkingSpectrum, wavelength: number): boolean {
+  const pixel = pixelOf(working.edges, wavelength);
+  for (let i = Math.max(0, pixel - 1); i <= Math.min(working.count - 1, pixel + 1); i++) {
+    if (working.mask[i] & (MASK.skyLine | MASK.telluric)) return true;
+  }
+  return false;
 }

@@ -1,7 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
-import { fitCandidate, refineCandidate, type FittedCandidate } from './candidate-fit';
+import { fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
 import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
@@ -90,11 +90,17 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   });
   const candidates: FittedCandidate[] = [];
   const tried = suspects
-    .map((suspect) => ({ suspect, fitted: fitCandidate(context, suspect, FIRST_STEPS) }))
-    .filter((trial): trial is { suspect: Suspect; fitted: FittedCandidate } => trial.fitted !== null)
-    .sort((a, b) => b.fitted.logEvidence - a.fitted.logEvidence);
-  for (let rank = 0; rank < tried.length; rank++) {
-    const fitted = rank < REFINED ? refineCandidate(context, tried[rank].fitted, MORE_STEPS) : tried[rank].fitted;
+    .map((suspect) => fitCandidate(context, suspect, FIRST_STEPS))
+    .filter((fitted): fitted is FittedCandidate => fitted !== null);
+  // Forest, iron and absorption roughen some identities of a quasar more than others: the best fit's misfit serves all.
+  const broadScale = Math.min(...tried.filter((t) => t.kind === 'broad').map((t) => t.noiseFactor));
+  const weighed = tried
+    .map((t) => (t.kind === 'broad' ? weighFit(context, t.fit, 'broad', broadScale) : t))
+    .sort((a, b) => b.logEvidence - a.logEvidence);
+  for (let rank = 0; rank < weighed.length; rank++) {
+    const one = weighed[rank];
+    const scale = one.kind === 'broad' ? broadScale : undefined;
+    const fitted = rank < REFINED ? refineCandidate(context, one, MORE_STEPS, scale) : one;
     fitted.logEvidence += Math.max(0, absorptionAt(fitted.fit.logScale, false).logEvidence);
     candidates.push(fitted);
   }

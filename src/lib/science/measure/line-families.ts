@@ -114,9 +114,9 @@ export const LINE_FAMILIES: readonly LineFamily[] = [
       '[Ne III] 3870': [0.2, 0.6],
       '[Ne V] 3427': [0.12, 1],
       'He II 1640': [0.15, 1],
-      'C IV 1548': [0.3, 1.2],
-      'C IV 1551': [0.2, 1.2],
-      '[C III] 1907': [0.12, 1],
+      'C IV 1548': [0.15, 1],
+      'C IV 1551': [0.1, 1],
+      '[C III] 1907': [0.1, 1],
       'C III] 1909': [0.1, 1],
       'Mg II 2796': [0.05, 1],
       'Mg II 2804': [0.03, 1],
@@ -143,7 +143,7 @@ export const LINE_FAMILIES: readonly LineFamily[] = [
   {
     name: 'Lyman-alpha emitter',
     objectClass: 'lyman-alpha emitter',
-    weight: 0.6,
+    weight: 1,
     kind: 'lyman',
     lines: {
       'Lyman-alpha 1216': [1, 0.3],

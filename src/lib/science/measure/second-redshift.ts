@@ -1,5 +1,5 @@
 import type { FittedCandidate } from './candidate-fit';
-import type { Feature } from './features';
+import { artefactLogOdds, type Feature } from './features';
 
 /** Least significance of a feature that a second redshift may rest on. */
 const LEAST_SIGNIFICANCE = 5;
@@ -21,7 +21,7 @@ export function secondRedshiftOf(
       return (
         !first.explained.includes(index) &&
         feature.significance >= LEAST_SIGNIFICANCE &&
-        feature.logArtefact < 0.5 * feature.significance ** 2 - 6
+        artefactLogOdds(feature, feature.bounded) < 0.5 * feature.bounded ** 2 - 6
       );
     });
     if (fresh.filter((index) => !features[index].nearSky).length >= 2) return other;

@@ -57,7 +57,7 @@ export function cutWindows(
       const intrinsic = (centre * sigmaKms[component.width]) / SPEED_OF_LIGHT_KMS;
       const sigma = Math.sqrt(data.lsfSigma[pixel] ** 2 + intrinsic * intrinsic);
       const broad = component.width === 1;
-      const half = broad ? 4.5 * sigma : Math.max(14 * width, 7 * sigma, (centre * 1100) / SPEED_OF_LIGHT_KMS);
+      const half = broad ? 4.5 * sigma : Math.max(16 * width, 9 * sigma, (centre * 1500) / SPEED_OF_LIGHT_KMS);
       let covered = 0;
       const reach = Math.max(1, Math.round((1.2 * sigma) / width));
       for (let i = Math.max(0, pixel - reach); i <= Math.min(data.count - 1, pixel + reach); i++) {

@@ -8,7 +8,7 @@ import { shapeEquations } from './shape-equations';
 /** Priors on ln sigma (km/s): mean and standard deviation, narrow and broad; and hard bounds. */
 const WIDTH_PRIOR = [
   { mean: Math.log(75), sigma: 0.8, low: Math.log(8), high: Math.log(450) },
-  { mean: Math.log(1900), sigma: 0.5, low: Math.log(600), high: Math.log(5500) },
+  { mean: Math.log(1900), sigma: 0.5, low: Math.log(600), high: Math.log(4300) },
 ] as const;
 
 /** State and result of a joint fit. */
