@@ -14,6 +14,14 @@ export class Cards {
     if (!this.values.has(key)) this.values.set(key, value);
   }
 
+  /** The same header with some cards of other values. */
+  with(changes: Record<string, CardValue>): Cards {
+    const changed = new Cards(this.inherited);
+    for (const [keyword, value] of Object.entries(changes)) changed.set(keyword, value);
+    for (const [keyword, value] of this.values) changed.set(keyword, value);
+    return changed;
+  }
+
   /** Adds to the text of a card already there (CONTINUE). */
   append(keyword: string, more: string): void {
     const key = keyword.toUpperCase();

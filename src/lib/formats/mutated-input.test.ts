@@ -1,3 +1,5 @@
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
 import { gzipSync } from 'fflate';
 import { expect, it } from 'vitest';
 import { InputProblem } from '$lib/domain/input-problem';
@@ -62,6 +64,12 @@ const seeds = [
   encoder.encode(writeSpectrumEcsv(spectrum)),
   encoder.encode(writeSpectrumCsv(spectrum).replaceAll(',', '  ')),
   gzipSync(writeSpectrumFits(spectrum)),
+  ...[
+    'made-table-tiled.fits',
+    'compressed-rice-dither2.fits',
+    'compressed-gzip2-int16.fits',
+    'variable_length_table.fits',
+  ].map((name) => new Uint8Array(readFileSync(join('tests/reference/data/fits', name)))),
 ];
 
 /** Values that have hurt readers: sizes, signs, units, types, quotes. */

@@ -98,6 +98,12 @@ export class BinaryColumn implements Column {
     return values;
   }
 
+  /** The bytes of one cell, as they are stored. */
+  bytes(row: number): Uint8Array {
+    const { start, count } = this.extent(row);
+    return this.layout.data.subarray(start, start + count * Math.max(1, elementBytes(this.elementType)));
+  }
+
   text(row: number): string | null {
     if (this.elementType !== 'A') {
       const value = this.isVector ? Number.NaN : this.value(row * this.layout.rowBytes + this.offset);

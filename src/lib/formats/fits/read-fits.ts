@@ -7,6 +7,8 @@ import { collectProblem, problemAt } from '../place';
 import { imageSpectra } from './image-spectra';
 import { readHdus, type Hdu } from './read-hdus';
 import { readTable } from './read-table';
+import { uncompressImage } from './uncompress-image';
+import { uncompressTable } from './uncompress-table';
 
 function isWanted(hdu: Hdu, instrument?: Instrument): boolean {
   const wanted = instrument?.columns?.extension;
@@ -15,14 +17,18 @@ function isWanted(hdu: Hdu, instrument?: Instrument): boolean {
   return hdu.name.toLowerCase() === wanted.toLowerCase();
 }
 
-function compressed(hdu: Hdu, file: string): Problem {
-  const tool = hdu.kind === 'compressed image' ? 'image' : 'table';
-  return problemAt(
-    { file, extension: hdu.extension },
-    'fits-tile-compressed',
-    `This ${tool} is tile-compressed, a form that is not read here.`,
-    'Unpack it first (any FITS library writes it back without compression); gzip of the whole file is read.',
-  ).problem;
+/**
+ * The HDU itself, or what a compressed one unpacks to; null where it can't be unpacked. A method that is not read only
+ * matters where the file has no other spectra, damage always does.
+ */
+function unpacked(hdu: Hdu, file: string, problems: Problem[], notRead: Problem[]): Hdu | null {
+  if (hdu.kind !== 'compressed table' && hdu.kind !== 'compressed image') return hdu;
+  const faults: Problem[] = [];
+  const whole = collectProblem(faults, () =>
+    hdu.kind === 'compressed table' ? uncompressTable(hdu, file) : uncompressImage(hdu, file),
+  );
+  for (const fault of faults) (fault.code === 'fits-tile-compressed' ? notRead : problems).push(fault);
+  return whole;
 }
 
 /**
@@ -35,13 +41,12 @@ export function readFits(
   instrument: Instrument | undefined,
   problems: Problem[],
 ): RawSpectrum[] {
-  const hdus = readHdus(bytes, file, problems);
-  const wanted = hdus.filter((hdu) => isWanted(hdu, instrument));
   const notSpectra: Problem[] = [];
+  const hdus = readHdus(bytes, file, problems).flatMap((hdu) => unpacked(hdu, file, problems, notSpectra) ?? []);
+  const wanted = hdus.filter((hdu) => isWanted(hdu, instrument));
   const tables: Table[] = [];
   const spectra: RawSpectrum[] = [];
   for (const hdu of wanted) {
-    if (hdu.kind === 'compressed image' || hdu.kind === 'compressed table') notSpectra.push(compressed(hdu, file));
     if (hdu.kind !== 'binary table' && hdu.kind !== 'ascii table') continue;
     const table = collectProblem(problems, () => readTable(hdu, file));
     if (!table) continue;

@@ -87,7 +87,7 @@ def axes(path):
 os.chdir(os.path.dirname(os.path.abspath(__file__)))
 result = {
     "generator": f"astropy {astropy.__version__}",
-    "files": {name: describe(name) for name in sorted(glob.glob("*.fits") + glob.glob("*.fits.gz"))},
+    "files": {name: describe(name) for name in sorted(glob.glob("*.fits") + glob.glob("*.fits.gz")) if not name.startswith("compressed-")},
     "axes": {name: axes(name) for name in sorted(glob.glob("*.hdr"))},
 }
 with open("expected-astropy.json", "w") as file:
