@@ -11,7 +11,7 @@ import { breakLogRatio, systemicRedshift } from './lyman-alpha';
 import type { Posterior } from './posterior';
 import type { PreparedSpectrum } from './prepare';
 import { reasonsAgainst, reasonsFor } from './reasons';
-import { redshiftErrors } from './redshift-error';
+import { redshiftWithErrors } from './redshift-error';
 import { secondRedshiftOf } from './second-redshift';
 
 /** The first candidate's redshift as reported. */
@@ -151,7 +151,7 @@ function ceilingOf(evidence: Evidence): number {
 
 function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null): FirstRedshift {
   const measured =
-    top.emission && refit ? redshiftErrors(refit, top.emission.kind === 'broad').measured : candidate.redshiftError;
+    top.emission && refit ? redshiftWithErrors(refit, top.emission.kind === 'broad').measured : candidate.redshiftError;
   return {
     redshift: candidate.redshift,
     redshiftError: candidate.redshiftError,
@@ -207,12 +207,12 @@ function emissionCandidate(
 ): Candidate {
   const data = prepared.working;
   const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines, data);
-  const errors = redshiftErrors(refit, candidate.kind === 'broad');
+  const stated = redshiftWithErrors(refit, candidate.kind === 'broad');
   const scale = { flux: prepared.working.scale, errors: refit.errorScale };
   const lyman = candidate.kind === 'lyman';
   return {
-    redshift: Math.expm1(refit.logScale),
-    redshiftError: errors.total,
+    redshift: stated.redshift,
+    redshiftError: stated.total,
     probability,
     objectClass: candidate.family.objectClass,
     fwhmKms: refit.lyman?.fwhmKms ?? FWHM_PER_SIGMA * refit.fit.sigmaKms[candidate.kind === 'broad' ? 1 : 0],

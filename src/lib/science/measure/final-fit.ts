@@ -1,6 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candidate-fit';
 import type { FilterBank } from './detect';
+import { componentShifts, type ComponentShift } from './fit/component-shifts';
 import { FULL_COMPONENTS, type LineComponent } from './fit/components';
 import type { FitData } from './fit/fit-windows';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
@@ -18,6 +19,8 @@ export interface FinalFit {
   /** ln(1+z) that is reported: that of the fit, or of Lyman-alpha's peak. */
   logScale: number;
   lyman: { fwhmKms: number; wingShare: number } | null;
+  /** Broad-line quasars alone: each component's own shift. */
+  shifts: ComponentShift[] | null;
 }
 
 const FULL_NARROW = FULL_COMPONENTS.filter((component) => component.name !== 'Lyman-alpha 1216');
@@ -37,15 +40,18 @@ export function finalFit(data: FitData, noiseFactor: number, candidate: FittedCa
   const fit = jointFit(data, componentsFor(candidate.kind), start, steps) ?? candidate.fit;
   const errors = fitErrors(fit);
   const errorScale = misfitScale(fit, noiseFactor);
-  if (candidate.kind !== 'lyman') return { fit, errors, errorScale, logScale: fit.logScale, lyman: null };
+  if (candidate.kind !== 'lyman') {
+    const shifts = candidate.kind === 'broad' ? componentShifts(data, fit) : null;
+    return { fit, errors, errorScale, logScale: fit.logScale, lyman: null, shifts };
+  }
   const peak = lymanAlphaPeak(data, fit);
-  return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak };
+  return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak, shifts: null };
 }
 
 /** A candidate's own fit in the form of a final one. */
 export function asFinal(candidate: FittedCandidate): FinalFit {
   const { fit, errors, noiseFactor } = candidate;
-  return { fit, errors, errorScale: noiseFactor, logScale: fit.logScale, lyman: null };
+  return { fit, errors, errorScale: noiseFactor, logScale: fit.logScale, lyman: null, shifts: null };
 }
 
 /** Significance of a bank's best-matching narrow filter at an observed wavelength; 0 outside. */
