@@ -10,6 +10,7 @@ import {
   tableOfPulls,
   tableOfReliability,
 } from './break-down';
+import { listFaults } from './list-faults';
 import type { Outcome } from './outcome';
 import { FLAVOURS, planSpectra } from './plan-spectra';
 import { layOutTable, percent, short } from './print-table';
@@ -85,7 +86,8 @@ function report(title: string, outcomes: readonly Outcome[], extra: readonly Sco
 }
 
 /**
- * Simulates, measures and scores; prints the tables and writes `accuracy.json` (every outcome) and `reliability.svg` into `out`.
+ * Simulates, measures and scores; prints the tables and writes `accuracy.json` (every outcome), `faults.txt` and
+ * `reliability.svg` into `out`.
  *
  * @throws where the engine throws on a spectrum: an accuracy bench must not swallow that
  */
@@ -124,23 +126,14 @@ export async function runAccuracy(options: AccuracyOptions): Promise<void> {
     reliabilitySvg(reliabilityBins(forecastsOf(outcomes)), 'Reliability, simulated spectra'),
   );
   writeFileSync(join(out, 'accuracy.json'), JSON.stringify({ count, seed, rows: score(outcomes), outcomes }));
-  process.stdout.write(`\nWritten: ${join(out, 'accuracy.json')}, ${join(out, 'reliability.svg')}\n`);
+  const faults = listFaults(outcomes);
+  writeFileSync(join(out, 'faults.txt'), faults.map((line) => `${line}\n`).join(''));
+  process.stdout.write(`\n${faults.length} spectra worth a look: ${join(out, 'faults.txt')}\n`);
+  process.stdout.write(`Also written: ${join(out, 'accuracy.json')}, ${join(out, 'reliability.svg')}\n`);
   if (sampleNight) {
     const { outcomes: sample, failures } = scoreSampleNight(sampleNight);
     process.stdout.write(report(`The sample night in ${sampleNight}: ${sample.length} spectra`, sample));
     for (const failure of failures) process.stdout.write(`not read: ${failure}\n`);
-    for (const line of describeEach(sample)) process.stdout.write(`${line}\n`);
+    for (const line of listFaults(sample)) process.stdout.write(`${line}\n`);
   }
-}
-
-/** One line for each spectrum whose answer is not right, or is claimed where there is none. */
-function describeEach(outcomes: readonly Outcome[]): string[] {
-  return outcomes
-    .filter((o) => (o.known.redshift !== null ? !o.judged.right : o.answer.redshift !== null))
-    .map((o) => {
-      const answered = o.answer.redshift === null ? 'no answer' : o.answer.redshift.toFixed(5);
-      const truth = o.known.redshift === null ? 'none' : o.known.redshift.toFixed(5);
-      const listed = o.judged.rightAnywhere ? ', listed' : '';
-      return `${o.label} ${o.answer.confidence}: ${answered}, true ${truth}${listed}, best S/N ${o.known.bestSignalToNoise.toFixed(1)}`;
-    });
 }

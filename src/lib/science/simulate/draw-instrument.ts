@@ -86,14 +86,15 @@ export function drawNoise(random: Random): NoiseRecipe {
     level: random.logUniform(0.02, 0.6),
     endRise: random.uniform(0.2, 0.9),
     skyLines: random.logUniform(8, 60),
-    skyResidual: random.chance(0.6) ? random.normal(0, 0.012) : 0,
-    skyShiftPixels: random.chance(0.5) ? random.normal(0, 0.03) : 0,
+    // half a per cent of a bright sky line is about its own photon noise
+    skyResidual: random.chance(0.6) ? random.normal(0, 0.005) : 0,
+    skyShiftPixels: random.chance(0.5) ? random.normal(0, 0.012) : 0,
     telluric: random.chance(0.4) ? random.uniform(0.4, 1.2) : 0,
     resampled: random.chance(0.3),
     declaredErrorFactor: random.chance(0.25) ? random.logUniform(0.65, 1.4) : 1,
-    cosmicRays: random.chance(0.35) ? random.integer(1, 4) : 0,
+    cosmicRays: random.chance(0.35) ? random.integer(1, 2) : 0,
     badRuns: random.chance(0.4) ? random.integer(1, 4) : 0,
-    lsfError: random.chance(0.3) ? random.uniform(0.93, 1.07) : 1,
+    lsfError: random.chance(0.2) ? random.uniform(0.93, 1.07) : 1,
   };
 }
 

@@ -129,9 +129,9 @@ export function drawRecipe(spectrumClass: SpectrumClass, seed: number): Recipe {
       recipe.objects.push(drawStar(random));
       break;
     case 'empty sky':
-      recipe.noise.skyResidual = random.normal(0, 0.02);
-      recipe.noise.skyShiftPixels = random.normal(0, 0.04);
-      recipe.noise.cosmicRays = random.integer(0, 5);
+      recipe.noise.skyResidual = random.normal(0, 0.01);
+      recipe.noise.skyShiftPixels = random.normal(0, 0.02);
+      recipe.noise.cosmicRays = random.integer(0, 4);
       break;
     case 'pure noise':
       recipe.noise = plainNoise(random);
