@@ -65,9 +65,10 @@ export const statements: string[] = [
     redshift DOUBLE NOT NULL, redshift_error DOUBLE NOT NULL, probability DOUBLE NOT NULL, object_class VARCHAR(40) NOT NULL,
     PRIMARY KEY (measurement_id, place), FOREIGN KEY (measurement_id) REFERENCES measurements (id)) ${TABLE}`,
   `CREATE TABLE IF NOT EXISTS line_fits (measurement_id UUID NOT NULL, line VARCHAR(40) NOT NULL,
+    component TINYINT UNSIGNED NOT NULL,
     wavelength_rest DOUBLE NOT NULL, wavelength_observed DOUBLE NOT NULL, flux DOUBLE NULL, flux_error DOUBLE NULL,
     equivalent_width_rest DOUBLE NULL, equivalent_width_rest_error DOUBLE NULL, fwhm_kms DOUBLE NULL,
-    fwhm_kms_error DOUBLE NULL, signal_to_noise DOUBLE NULL, PRIMARY KEY (measurement_id, line),
+    fwhm_kms_error DOUBLE NULL, signal_to_noise DOUBLE NULL, PRIMARY KEY (measurement_id, line, component),
     FOREIGN KEY (measurement_id) REFERENCES measurements (id)) ${TABLE}`,
   // what people say: append-only
   `CREATE TABLE IF NOT EXISTS verdicts (id ${ID}, spectrum_id UUID NOT NULL, measurement_id UUID NULL, user_id UUID NOT NULL,

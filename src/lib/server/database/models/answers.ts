@@ -56,6 +56,8 @@ export class LineFitRecord
 {
   declare measurementId: string;
   declare line: string;
+  /** 0, and 1 for a broad component under the same line. */
+  declare component: number;
   declare wavelengthRest: number;
   declare wavelengthObserved: number;
   declare flux: number | null;
@@ -128,6 +130,7 @@ export function defineAnswers(sequelize: Sequelize): void {
     {
       measurementId: { type: UUID, primaryKey: true },
       line: { type: STRING(40), primaryKey: true },
+      component: { type: TINYINT, primaryKey: true },
       wavelengthRest: DOUBLE,
       wavelengthObserved: DOUBLE,
       flux: DOUBLE,

@@ -61,7 +61,10 @@ export async function storeMeasurements(results: Map<string, MeasureResult>, tra
     }),
   );
   const lines = fresh.flatMap(({ id, measurement }) =>
-    measurement.lines.map((line) => ({ measurementId: id, ...line })),
+    measurement.lines.map((line, i, all) => {
+      const component = all.slice(0, i).filter((other) => other.line === line.line).length;
+      return { measurementId: id, component, ...line };
+    }),
   );
   if (candidates.length) await CandidateRecord.bulkCreate(candidates, { transaction });
   if (lines.length) await LineFitRecord.bulkCreate(lines, { transaction });
