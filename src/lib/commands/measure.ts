@@ -7,8 +7,9 @@ import { parseArguments, USAGE, type MeasureArguments } from './measure/parse-ar
 import { readInput } from './measure/read-input';
 import { ThreadPool } from './measure/thread-pool';
 
-/** Files from this size on may hold many spectra, so their spectra are shared among the threads. */
-const SHARED_FROM_BYTES = 4 * 1024 * 1024;
+/** Larger files may hold many spectra, so their rows are shared among the threads: a share for each of these bytes. */
+const BYTES_A_SHARE = 4 * 1024 * 1024;
+const MAX_SHARES = 16;
 /** Files read ahead of the fits, a thread. */
 const READ_AHEAD = 4;
 
@@ -27,13 +28,13 @@ let nextId = 0;
 async function measurePath(
   path: string,
   pool: ThreadPool,
-  threads: number,
   explain: boolean,
   instrument?: Instrument,
 ): Promise<MeasuredLine[]> {
   try {
     const bytes = await readInput(path);
-    const parts = bytes.length >= SHARED_FROM_BYTES ? threads : 1;
+    // The file alone decides, so that the output is the same for any number of threads.
+    const parts = Math.min(MAX_SHARES, 1 + Math.floor(bytes.length / BYTES_A_SHARE));
     const tasks = Array.from({ length: parts }, (_, part) =>
       pool.run({ id: nextId++, source: path, bytes, instrument, explain, part, parts }),
     );
@@ -54,7 +55,7 @@ async function measureAll(args: MeasureArguments, instrument?: Instrument): Prom
   let allRead = true;
   for (let at = 0; at < args.files.length; at++) {
     while (started < args.files.length && started < at + ahead) {
-      running[started] = measurePath(args.files[started], pool, threads, args.explain, instrument);
+      running[started] = measurePath(args.files[started], pool, args.explain, instrument);
       started++;
     }
     const lines = await running[at];

@@ -6,6 +6,7 @@ import { readFits } from './fits/read-fits';
 import { looksLikeFits } from './fits/read-hdus';
 import { inflateGzip, looksLikeGzip, MAX_FILE_BYTES } from './inflate';
 import { collectProblem, problemAt, type Place } from './place';
+import type { ReadContext } from './read-context';
 import { readTextTable } from './text/read-text-table';
 
 /** Text tables beyond this size are no spectra; it bounds the memory that their cells take. */
@@ -29,12 +30,7 @@ function isText(bytes: Uint8Array): boolean {
   return control <= head.length / 100;
 }
 
-function readText(
-  bytes: Uint8Array,
-  place: Place,
-  instrument: Instrument | undefined,
-  problems: Problem[],
-): RawSpectrum[] {
+function readText(bytes: Uint8Array, place: Place, context: ReadContext): RawSpectrum[] {
   if (bytes.length > MAX_TEXT_BYTES) {
     throw problemAt(
       place,
@@ -54,18 +50,13 @@ function readText(
     );
   }
   const { table, warnings } = readTextTable(new TextDecoder().decode(bytes), place);
-  const { spectra, notSpectra } = tableSpectra(table, place.file, instrument, problems);
-  if (notSpectra) problems.push(notSpectra);
+  const { spectra, notSpectra } = tableSpectra(table, context);
+  if (notSpectra) context.problems.push(notSpectra);
   for (const spectrum of spectra) spectrum.warnings.push(...warnings);
   return spectra;
 }
 
-function readBytes(
-  bytes: Uint8Array,
-  place: Place,
-  instrument: Instrument | undefined,
-  problems: Problem[],
-): RawSpectrum[] {
+function readBytes(bytes: Uint8Array, place: Place, context: ReadContext): RawSpectrum[] {
   if (bytes.length === 0 || bytes.every((byte) => byte === 0)) {
     throw problemAt(
       place,
@@ -87,9 +78,9 @@ function readBytes(
     if (looksLikeGzip(inflated)) {
       throw problemAt(place, 'gzip-twice', 'The file is packed twice.', 'Unpack it once before handing it in.');
     }
-    return readBytes(inflated, place, instrument, problems);
+    return readBytes(inflated, place, context);
   }
-  if (looksLikeFits(bytes)) return readFits(bytes, place.file, instrument, problems);
+  if (looksLikeFits(bytes)) return readFits(bytes, context);
   if (/\.fits?(\.gz)?$/i.test(place.file) || !isText(bytes)) {
     throw problemAt(
       place,
@@ -98,7 +89,7 @@ function readBytes(
       'Hand in FITS, CSV, ECSV, or columns of numbers; copy the file again if it was FITS.',
     );
   }
-  return readText(bytes, place, instrument, problems);
+  return readText(bytes, place, context);
 }
 
 /**
@@ -108,9 +99,16 @@ function readBytes(
  *
  * @param fileName the name that problems carry
  * @param instrument supplies what headers lack: columns, units, HDU (see the instrument description)
+ * @param wantsRow which spectra to read, by HDU (from 0) and row (from 1), where not all of a large stack are needed
  */
-export function readSpectra(bytes: Uint8Array, fileName: string, instrument?: Instrument): ReadSpectra {
+export function readSpectra(
+  bytes: Uint8Array,
+  fileName: string,
+  instrument?: Instrument,
+  wantsRow: ReadContext['wantsRow'] = () => true,
+): ReadSpectra {
   const problems: Problem[] = [];
-  const spectra = collectProblem(problems, () => readBytes(bytes, { file: fileName }, instrument, problems)) ?? [];
+  const context: ReadContext = { file: fileName, instrument, problems, wantsRow, recognised: false };
+  const spectra = collectProblem(problems, () => readBytes(bytes, { file: fileName }, context)) ?? [];
   return { spectra, problems };
 }

@@ -9,7 +9,7 @@ import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
 import { explainMeasurement } from './explain-measurement';
 import { problemLine, type MeasuredLine } from './measured-line';
 
-/** What a thread is asked to do: one file, or every `parts`-th spectrum of it from `part` on. */
+/** What a thread is asked to do: one file, or of its rows those whose number modulo `parts` is `part`. */
 export interface MeasureTask {
   id: number;
   source: string;
@@ -57,18 +57,20 @@ function measureRaw(raw: RawSpectrum, task: MeasureTask): Omit<MeasuredLine, 'or
   }
 }
 
-/** Reads and measures one task's spectra; lines are numbered by HDU and row, problems among them. */
+/** Rows of one HDU, at most, by which lines are numbered. */
+const ROWS_AN_HDU = 2 ** 20;
+
+/** Reads and measures one task's share of a file; lines are numbered by HDU and row, problems among them. */
 export function measureFile(task: MeasureTask): MeasuredLine[] {
-  const { spectra, problems } = readSpectra(task.bytes, task.source, task.instrument);
-  const entries = [
-    ...problems.map((problem) => ({ extension: problem.extension ?? 0, row: problem.row ?? 1, problem, raw: null })),
-    ...spectra.map((raw) => ({ extension: raw.extension, row: raw.row, problem: null, raw })),
-  ].sort((a, b) => a.extension - b.extension || a.row - b.row);
+  const isOurs = (row: number) => row % task.parts === task.part;
+  const { spectra, problems } = readSpectra(task.bytes, task.source, task.instrument, (_, row) => isOurs(row));
+  const order = (extension = 0, row = 1) => extension * ROWS_AN_HDU + row;
   const lines: MeasuredLine[] = [];
-  entries.forEach((entry, order) => {
-    if (order % task.parts !== task.part) return;
-    const line = entry.raw ? measureRaw(entry.raw, task) : problemLine(task.source, entry.problem!);
-    lines.push({ order, ...line });
-  });
-  return lines;
+  for (const problem of problems) {
+    // What is wrong with the whole file or an HDU is found by every share, and told by one.
+    if (!isOurs(problem.row ?? 1)) continue;
+    lines.push({ order: order(problem.extension, problem.row), ...problemLine(task.source, problem) });
+  }
+  for (const raw of spectra) lines.push({ order: order(raw.extension, raw.row), ...measureRaw(raw, task) });
+  return lines.sort((a, b) => a.order - b.order);
 }

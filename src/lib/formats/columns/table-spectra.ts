@@ -6,7 +6,8 @@ import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wa
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
 import { readObservation } from '../observation/read-observation';
 import { rowObservation } from '../observation/row-observation';
-import { checkRowCount, collectProblem, problemAt, readRows, type Place } from '../place';
+import { problemAt, type Place } from '../place';
+import { checkRowCount, readRows, type ReadContext } from '../read-context';
 import { makeRawSpectrum, type Quantity, type SpectrumArrays } from '../raw-spectrum';
 import { parseSpectralUnit, type SpectralUnit } from '../units/spectral-unit';
 import { assignRoles, type Role, type Roles } from './roles';
@@ -73,12 +74,8 @@ function notSpectra(table: Table, file: string, roles: Roles): Problem {
  * Spectra of a table: one where every row is a pixel, one a row where cells are vectors. A fault in one row is added
  * to `problems` and the other rows stand.
  */
-export function tableSpectra(
-  table: Table,
-  file: string,
-  instrument: Instrument | undefined,
-  problems: Problem[],
-): TableSpectra {
+export function tableSpectra(table: Table, context: ReadContext): TableSpectra {
+  const { file, instrument } = context;
   const roles = assignRoles(table, instrument);
   const { wavelength, flux } = roles.columns;
   const place: Place = { file, extension: table.extension };
@@ -106,9 +103,9 @@ export function tableSpectra(
 
   if (flux.isVector || wavelength?.isVector) {
     checkRowCount(table.rows, place);
-    readRows(problems, table.rows, place, (row, at) => readOne((column) => column.cell(row), at, row));
+    readRows(context, table.rows, place, (row, at) => readOne((column) => column.cell(row), at, row));
   } else {
-    collectProblem(problems, () => readOne((column) => column.scalars(), { ...place, row: 1 }, null));
+    readRows(context, 1, place, (_, at) => readOne((column) => column.scalars(), at, null));
   }
   return { spectra, notSpectra: null };
 }

@@ -293,6 +293,17 @@ describe('tables', () => {
   });
 });
 
+it('reads only the rows that are asked for, and says nothing of the others', () => {
+  const stack = new Float64Array(n * 5).fill(1);
+  stack.fill(Number.NaN, n, 2 * n);
+  const bytes = imageUnit(stack, [n, 5], null, axis);
+  const even = readSpectra(bytes, 'a.fits', undefined, (_, row) => row % 2 === 0);
+  expect(even.spectra.map((raw) => raw.row)).toEqual([4]);
+  expect(even.problems.map((problem) => problem.row)).toEqual([2]);
+  const none = readSpectra(bytes, 'a.fits', undefined, () => false);
+  expect(none).toEqual({ spectra: [], problems: [] });
+});
+
 it('stops telling faulty rows one by one after a thousand', () => {
   const stack = new Float64Array(16 * 3000).fill(Number.NaN);
   const { problems } = readSpectra(imageUnit(stack, [16, 3000], null, axis), 'a.fits');

@@ -8,7 +8,8 @@ import type { Table } from '../columns/table';
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
 import { readObservation } from '../observation/read-observation';
 import { rowObservation, tellsRows } from '../observation/row-observation';
-import { checkRowCount, collectProblem, problemAt, readRows, type Place } from '../place';
+import { collectProblem, problemAt, type Place } from '../place';
+import { checkRowCount, readRows, type ReadContext } from '../read-context';
 import { makeRawSpectrum, type SpectrumArrays } from '../raw-spectrum';
 import { parseSpectralUnit } from '../units/spectral-unit';
 import { imageLayout, imageRow, type ImageLayout } from './image-layout';
@@ -119,11 +120,11 @@ function tooLarge(hdu: Hdu, file: string): Problem {
  */
 export function imageSpectra(
   hdus: Hdu[],
+  wanted: ReadonlySet<number>,
   tables: Table[],
-  file: string,
-  instrument: Instrument | undefined,
-  problems: Problem[],
+  context: ReadContext,
 ): { spectra: RawSpectrum[]; notSpectra: Problem[] } {
+  const { file, instrument, problems } = context;
   const images = hdus.filter((hdu) => hdu.kind === 'image' && hdu.axes.length > 0);
   const fluxes = images.filter((hdu) => {
     const role = imageRole(hdu, instrument);
@@ -132,6 +133,8 @@ export function imageSpectra(
   const spectra: RawSpectrum[] = [];
   const unusable: Problem[] = [];
   for (const flux of fluxes) {
+    // Errors and masks may stand outside the HDU that a description names; the flux may not.
+    if (!wanted.has(flux.extension)) continue;
     const layout = imageLayout(flux);
     const companions = layout ? findCompanions(flux, images, fluxes, layout, instrument) : {};
     if (!layout || (!layout.axis && !companions.wavelength)) {
@@ -142,9 +145,7 @@ export function imageSpectra(
       unusable.push(tooLarge(flux, file));
       continue;
     }
-    const read = collectProblem(problems, () =>
-      readImage(flux, layout, companions, tables, file, instrument, problems),
-    );
+    const read = collectProblem(problems, () => readImage(flux, layout, companions, tables, context));
     for (const raw of read ?? []) spectra.push(raw);
   }
   return { spectra, notSpectra: unusable };
@@ -155,10 +156,9 @@ function readImage(
   layout: ImageLayout,
   companions: Companions,
   tables: Table[],
-  file: string,
-  instrument: Instrument | undefined,
-  problems: Problem[],
+  context: ReadContext,
 ): RawSpectrum[] {
+  const { file, instrument } = context;
   const place: Place = { file, extension: flux.extension };
   const observation = readObservation(flux.cards);
   const rowTable = layout.rows > 1 ? tables.find((table) => table.rows === layout.rows && tellsRows(table)) : undefined;
@@ -179,7 +179,7 @@ function readImage(
       : readSpectralAxis(flux.cards, layout.axis!, place);
   let shared: Wavelengths | null = null;
   const spectra: RawSpectrum[] = [];
-  readRows(problems, layout.rows, place, (row, at) => {
+  readRows(context, layout.rows, place, (row, at) => {
     // One axis serves all rows, unless every row has wavelengths of its own.
     if (ownWavelengths) shared = null;
     shared ??= wavelengthsOf(row, at);

@@ -4,6 +4,7 @@ import type { RawSpectrum } from '$lib/domain/spectrum';
 import type { Table } from '../columns/table';
 import { tableSpectra } from '../columns/table-spectra';
 import { collectProblem, problemAt } from '../place';
+import type { ReadContext } from '../read-context';
 import { imageSpectra } from './image-spectra';
 import { readHdus, type Hdu } from './read-hdus';
 import { readTable } from './read-table';
@@ -35,12 +36,8 @@ function unpacked(hdu: Hdu, file: string, problems: Problem[], notRead: Problem[
  * Reads every spectrum of a FITS file (FITS 4.0): image HDUs and tables. Faults of one HDU or row are added to
  * `problems`; HDUs that hold no spectra are passed over when others do, and explained when none does.
  */
-export function readFits(
-  bytes: Uint8Array,
-  file: string,
-  instrument: Instrument | undefined,
-  problems: Problem[],
-): RawSpectrum[] {
+export function readFits(bytes: Uint8Array, context: ReadContext): RawSpectrum[] {
+  const { file, instrument, problems } = context;
   const notSpectra: Problem[] = [];
   const hdus = readHdus(bytes, file, problems).flatMap((hdu) => unpacked(hdu, file, problems, notSpectra) ?? []);
   const wanted = hdus.filter((hdu) => isWanted(hdu, instrument));
@@ -51,18 +48,17 @@ export function readFits(
     const table = collectProblem(problems, () => readTable(hdu, file));
     if (!table) continue;
     tables.push(table);
-    const read = collectProblem(problems, () => tableSpectra(table, file, instrument, problems));
+    const read = collectProblem(problems, () => tableSpectra(table, context));
     for (const raw of read?.spectra ?? []) spectra.push(raw);
     if (read?.notSpectra) notSpectra.push(read.notSpectra);
   }
-  // An error or mask image stands beside the one that the description names, so images are filtered by their flux only.
-  const images = imageSpectra(hdus, tables, file, instrument, problems);
   const extensions = new Set(wanted.map((hdu) => hdu.extension));
-  for (const raw of images.spectra) if (extensions.has(raw.extension)) spectra.push(raw);
+  const images = imageSpectra(hdus, extensions, tables, context);
+  for (const raw of images.spectra) spectra.push(raw);
   notSpectra.push(...images.notSpectra);
   spectra.sort((a, b) => a.extension - b.extension || a.row - b.row);
-  if (spectra.length === 0 && problems.length === 0) problems.push(...notSpectra);
-  if (spectra.length === 0 && problems.length === 0) problems.push(nothingThere(hdus, wanted, file, instrument));
+  if (!context.recognised && problems.length === 0) problems.push(...notSpectra);
+  if (!context.recognised && problems.length === 0) problems.push(nothingThere(hdus, wanted, file, instrument));
   return spectra;
 }
 
