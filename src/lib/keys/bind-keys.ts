@@ -1,4 +1,4 @@
-import type { CommandId, Scope } from './commands';
+import { COMMANDS, type CommandId, type Scope } from './commands';
 import { keyOfEvent } from './key-of-event';
 import { keyChoices } from './key-choices.svelte';
 import { commandOfKey } from './resolve-key';
@@ -15,12 +15,18 @@ export function bindKeys(scope: Scope, handlers: KeyHandlers) {
     keyChoices.load();
     function press(event: KeyboardEvent) {
       const key = keyOfEvent(event);
-      if (key === null || event.defaultPrevented || takesKey(event.target instanceof Element ? event.target : null, key)) return;
+      if (
+        key === null ||
+        event.defaultPrevented ||
+        takesKey(event.target instanceof Element ? event.target : null, key)
+      )
+        return;
       const command = commandOfKey(key, scope, keyChoices.choices);
       const handler = command && handlers[command];
       if (!handler) return;
       event.preventDefault();
-      handler();
+      // A key held down may move and zoom on, but gives one verdict, not one to every spectrum of the queue.
+      if (!event.repeat || COMMANDS[command].mayRepeat) handler();
     }
     document.addEventListener('keydown', press);
     return () => document.removeEventListener('keydown', press);

@@ -7,21 +7,22 @@ interface Command {
   scope: Scope;
   /** Key names as keyOfEvent gives them; the first is shown on buttons. */
   keys: readonly string[];
+  /** Whether holding the key down does it again and again. */
+  mayRepeat?: boolean;
 }
 
-/** Every command that has a key. The bindings, the help sheet and `aria-keyshortcuts` are all made from this table. */
-export const COMMANDS = {
+const TABLE = {
   help: { label: 'keys', scope: 'everywhere', keys: ['?'] },
-  left: { label: 'redshift 30 km/s down', scope: 'review', keys: ['ArrowLeft'] },
-  right: { label: 'redshift 30 km/s up', scope: 'review', keys: ['ArrowRight'] },
-  farLeft: { label: 'redshift 300 km/s down', scope: 'review', keys: ['Shift+ArrowLeft'] },
-  farRight: { label: 'redshift 300 km/s up', scope: 'review', keys: ['Shift+ArrowRight'] },
+  left: { label: 'redshift 30 km/s down', scope: 'review', keys: ['ArrowLeft'], mayRepeat: true },
+  right: { label: 'redshift 30 km/s up', scope: 'review', keys: ['ArrowRight'], mayRepeat: true },
+  farLeft: { label: 'redshift 300 km/s down', scope: 'review', keys: ['Shift+ArrowLeft'], mayRepeat: true },
+  farRight: { label: 'redshift 300 km/s up', scope: 'review', keys: ['Shift+ArrowRight'], mayRepeat: true },
   candidateUp: { label: 'candidate above', scope: 'review', keys: ['ArrowUp'] },
   candidateDown: { label: 'candidate below', scope: 'review', keys: ['ArrowDown'] },
   snap: { label: 'snap to the best fit near', scope: 'review', keys: ['v'] },
   namePeak: { label: 'name the peak under the cursor', scope: 'review', keys: ['t'] },
-  zoomIn: { label: 'zoom in', scope: 'review', keys: ['+', '='] },
-  zoomOut: { label: 'zoom out', scope: 'review', keys: ['-'] },
+  zoomIn: { label: 'zoom in', scope: 'review', keys: ['+', '='], mayRepeat: true },
+  zoomOut: { label: 'zoom out', scope: 'review', keys: ['-'], mayRepeat: true },
   whole: { label: 'all of the spectrum', scope: 'review', keys: ['0'] },
   smooth: { label: 'smooth', scope: 'review', keys: ['m'] },
   lines: { label: 'table of lines', scope: 'review', keys: ['l'] },
@@ -39,5 +40,7 @@ export const COMMANDS = {
   next: { label: 'next, without a verdict', scope: 'review', keys: ['.'] },
 } as const satisfies Record<string, Command>;
 
-export type CommandId = keyof typeof COMMANDS;
-export const COMMAND_IDS = Object.keys(COMMANDS) as CommandId[];
+export type CommandId = keyof typeof TABLE;
+/** Every command that has a key. The bindings, the help sheet and `aria-keyshortcuts` are all made from this table. */
+export const COMMANDS: Readonly<Record<CommandId, Command>> = TABLE;
+export const COMMAND_IDS = Object.keys(TABLE) as CommandId[];

@@ -12,6 +12,10 @@ describe('COMMANDS', () => {
     const keys = COMMAND_IDS.flatMap((id) => [...COMMANDS[id].keys]);
     expect(new Set(keys).size).toBe(keys.length);
   });
+  it('lets no key that decides repeat while it is held down', () => {
+    const repeating = COMMAND_IDS.filter((id) => COMMANDS[id].mayRepeat);
+    expect(repeating).toEqual(['left', 'right', 'farLeft', 'farRight', 'zoomIn', 'zoomOut']);
+  });
   it('has a confidence key for each of the four words', () => {
     expect((['secure', 'probable', 'ambiguous', 'none'] as const).map((word) => COMMANDS[word].keys[0])).toEqual([
       's',

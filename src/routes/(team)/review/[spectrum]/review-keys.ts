@@ -5,8 +5,8 @@ interface Desk {
   review: ReviewState;
   bar: {
     give: (kind: 'candidate' | 'by hand' | 'no redshift') => void;
-    focusComment: () => void;
-    focusFlags: () => void;
+    focusComment: () => void | Promise<void>;
+    focusFlags: () => void | Promise<void>;
   };
   help: { open: () => void };
   lines: { open: () => void };
@@ -42,8 +42,8 @@ export function reviewKeys(desk: () => Desk): KeyHandlers {
     setByHand: judged(({ bar }) => bar.give('by hand')),
     noRedshift: judged(({ bar }) => bar.give('no redshift')),
     undo: judged(() => document.querySelector<HTMLFormElement>('#undo-verdict')?.requestSubmit()),
-    flags: judged(({ bar }) => bar.focusFlags()),
-    comment: judged(({ bar }) => bar.focusComment()),
+    flags: judged(({ bar }) => void bar.focusFlags()),
+    comment: judged(({ bar }) => void bar.focusComment()),
     previous: () => desk().leaf(-1),
     next: () => desk().leaf(1),
   };

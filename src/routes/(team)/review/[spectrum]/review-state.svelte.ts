@@ -49,6 +49,8 @@ export class ReviewState {
   confidence = $state<Confidence | null>(null);
   flags = $state<Flag[]>([]);
   comment = $state('');
+  /** A verdict is on its way: the same key once more is not a second one. */
+  given = $state(false);
 
   constructor(spectrum: { id: string; measurement: Measurement }) {
     this.id = spectrum.id;

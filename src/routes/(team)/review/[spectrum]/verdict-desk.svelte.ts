@@ -32,6 +32,8 @@ export class VerdictDesk {
   warning = $state<string | null>(null);
   unstored = $state.raw<UnstoredVerdict[]>([]);
   undoing = $state(false);
+  /** Verdicts sent and not yet answered. */
+  pending = $state(0);
   #context: () => Context;
 
   constructor(context: () => Context) {
@@ -40,17 +42,24 @@ export class VerdictDesk {
 
   submit: SubmitFunction = ({ formData, submitter, cancel, action }) => {
     const { review, name, next, addressOf } = this.#context();
+    if (review.given) return cancel();
     const kind = (submitter?.getAttribute('value') ?? 'candidate') as Kind;
     this.warning = review.missing(kind);
     if (this.warning) {
       announcer.say(this.warning);
       return cancel();
     }
+    review.given = true;
+    this.pending++;
     const said = kind === 'no redshift' ? 'no redshift' : `${review.redshift.toFixed(5)}, ${review.confidence}`;
     const sent = { spectrumId: review.id, name, action: action.toString(), form: formData };
     announcer.say(next ? `${said}, ${name}. Next spectrum.` : `${said}, ${name}. That was the last of this queue.`);
     if (next) void goto(addressOf(next), { keepFocus: true, noScroll: true });
-    return async ({ result }) => this.#settle(result, sent, next);
+    return async ({ result }) => {
+      review.given = false;
+      this.pending--;
+      await this.#settle(result, sent, next);
+    };
   };
 
   undo: SubmitFunction = ({ cancel }) => {
