@@ -30,7 +30,7 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page }
         })),
         { name: 'not-a-spectrum.fits', mimeType: 'application/fits', buffer: Buffer.from('a sentence, no spectrum') },
       ]);
-    await expect(page.getByText('6 of 6 spectra measured')).toBeVisible({ timeout: 60_000 });
+    await expect(page.getByText('Nothing waits: 6 of 6 spectra measured, 1 problem')).toBeAttached({ timeout: 60_000 });
     await expect(page.getByText('not-a-spectrum.fits').first()).toBeVisible();
     await expect(page.getByRole('link', { name: 'HZ-0003' })).toBeVisible();
   });

@@ -23,7 +23,8 @@ export class FolderStorage implements ObjectStore {
     const file = await open(temporary, 'wx', 0o640);
     try {
       try {
-        for await (const chunk of stream as AsyncIterable<Buffer>) {
+        // The stream stays open past a refusal: the rest of a multipart body still has to flow through it.
+        for await (const chunk of stream.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>) {
           sizeBytes += chunk.length;
           if (sizeBytes > maxBytes) {
             throw new Refusal(
