@@ -132,7 +132,10 @@ export const ROLE_NAMES: Record<Role, readonly string[]> = {
 
 /** A name without case, signs and blanks: `Flux_Err` and `flux err` are one. */
 export function plainName(name: string): string {
-  return name.toLowerCase().replaceAll(/[^a-z0-9]/g, '');
+  return name
+    .toLowerCase()
+    .replaceAll('\u03bb', 'lambda')
+    .replaceAll(/[^a-z0-9]/g, '');
 }
 
 /** The role a generic name stands for, or null. */

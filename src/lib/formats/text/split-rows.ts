@@ -7,7 +7,8 @@ const MAX_CELLS = 1000;
 /** The character between cells: what the middle line uses most plainly; null for blanks. */
 function findDelimiter(lines: string[]): string | null {
   const line = lines[lines.length >> 1] ?? '';
-  for (const delimiter of [',', ';', '\t', '|']) if (line.includes(delimiter)) return delimiter;
+  // A semicolon beside commas sets apart numbers with decimal commas.
+  for (const delimiter of [';', '\t', '|', ',']) if (line.includes(delimiter)) return delimiter;
   return null;
 }
 

@@ -20,6 +20,7 @@ export function cellNumber(text: string): number | undefined {
   if (EMPTY.test(trimmed)) return Number.NaN;
   if (/^[+-]?inf(inity)?$/i.test(trimmed)) return trimmed.startsWith('-') ? -Infinity : Infinity;
   if (/^[+-]?[\d.]+[dD][+-]?\d+$/.test(trimmed)) return Number(trimmed.replace(/[dD]/, 'e'));
+  if (/^[+-]?\d*,\d+(?:[eE][+-]?\d+)?$/.test(trimmed)) return Number(trimmed.replace(',', '.'));
   if (TRUE.test(trimmed)) return 1;
   return FALSE.test(trimmed) ? 0 : undefined;
 }

@@ -1,6 +1,7 @@
 import type { CardValue } from '../cards';
 import { Cards } from '../cards';
 import { roleOfName, type Role } from '../columns/roles';
+import { parseUnit } from '../units/parse-unit';
 import type { TextColumnWords } from './text-column';
 
 /** What the comments of a text table say. */
@@ -57,6 +58,8 @@ export function readHeading(text: string): TextColumnWords {
   if (match && match[1] !== '' && !/^(log|log10|ln|dex)$/i.test(match[1])) {
     return { name: match[1].trim(), unit: match[2] || null, description: null, ucd: null };
   }
+  const divided = /^([^\s/]+)\s*\/\s*(\S+)$/.exec(trimmed);
+  if (divided && parseUnit(divided[2])) return { name: divided[1], unit: divided[2], description: null, ucd: null };
   const suffix = /^(wave(?:length)?|lambda)_(a|aa|ang|angstroms?|nm|um|micron|mum|m)$/i.exec(trimmed);
   if (suffix) return { name: suffix[1], unit: suffix[2] === 'mum' ? 'um' : suffix[2], description: null, ucd: null };
   return { name: trimmed, unit: null, description: null, ucd: null };

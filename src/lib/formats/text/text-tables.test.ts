@@ -37,6 +37,7 @@ describe('tables of text', () => {
 
   it('read units from headings, from a row of units and from remarks', () => {
     expect(read(['wavelength (nm),flux,error', ...rows(',')]).spectra[0].wavelengthScaleAngstrom).toBe(10);
+    expect(read(['\u03bb / nm,flux,error', ...rows(',')]).spectra[0].wavelengthScaleAngstrom).toBe(10);
     expect(read(['wave_nm,flux,error', ...rows(',')]).spectra[0].wavelengthScaleAngstrom).toBe(10);
     expect(read(['wavelength,flux,error', 'nm,Jy,Jy', ...rows(',')]).spectra[0].wavelengthScaleAngstrom).toBe(10);
     expect(read(['# wavelength unit: nm', 'wave,flux,sigma', ...rows(',')]).spectra[0].wavelengthScaleAngstrom).toBe(
@@ -86,6 +87,13 @@ describe('tables of text', () => {
     const { spectra, problems } = read(['"wave","flux","err","mask"', ...lines]);
     expect(problems).toEqual([]);
     expect(Array.from(spectra[0].bad!).indexOf(1)).toBe(3);
+  });
+
+  it('read decimal commas between semicolons', () => {
+    const lines = rows(';').map((line) => line.replaceAll('.', ','));
+    const { spectra, problems } = read(['wave;flux;err', ...lines]);
+    expect(problems).toEqual([]);
+    expect(spectra[0].variance![0]).toBe(0.0625);
   });
 
   it('read a wavelength that runs down, and one in log10', () => {

@@ -128,6 +128,14 @@ describe('frames that are not known', () => {
     expectSameWavelengths(said.wavelength, angstrom);
   });
 
+  it('takes out all but the rotation of the Earth where the position of the telescope is missing', () => {
+    const whole = toSpectrum(raw(frame({ specsys: 'TOPOCENT' })));
+    const said = toSpectrum(raw(frame({ specsys: 'TOPOCENT', observatoryMetres: null })));
+    expect(said.wavelengthDoubt).toBe(true);
+    expect(Math.abs(said.barycentricKms! - whole.barycentricKms!)).toBeLessThan(0.5);
+    expect(said.barycentricKms).not.toBe(whole.barycentricKms);
+  });
+
   it('takes heliocentric wavelengths for barycentric ones without a doubt: they differ by 0.02 km/s at most', () => {
     const said = toSpectrum(raw({ ...frame({ specsys: 'HELIOCEN', midExposureJulianDateUtc: null }) }));
     expect(said.wavelengthDoubt).toBe(false);

@@ -67,7 +67,14 @@ export function velocityFrame(raw: RawSpectrum, instrument?: Instrument): Veloci
 
   if (specsys === 'BARYCENT') return frame;
   if (specsys === 'TOPOCENT' && lacking.length === 0) frame.barycentricKms = observerKms;
-  else if (specsys === 'GEOCENTR' && sighting)
+  else if (specsys === 'TOPOCENT' && sighting) {
+    // Without the telescope's place the motion of the Earth's centre still takes out all but its rotation.
+    frame.barycentricKms = observerKms;
+    frame.doubt = true;
+    frame.warnings.push(
+      "The position of the telescope is missing, so the Earth's rotation (0.5 km/s at most) stays in the wavelengths.",
+    );
+  } else if (specsys === 'GEOCENTR' && sighting)
     frame.barycentricKms = barycentricVelocityKms({ ...sighting, observatoryMetres: null });
   else if (specsys === 'HELIOCEN' && sighting) frame.barycentricKms = heliocentricToBarycentricKms(sighting);
   else if (specsys === 'HELIOCEN')
