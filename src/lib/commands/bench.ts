@@ -1,15 +1,19 @@
 import { parseArgs } from 'node:util';
 import { runAccuracy } from './bench/accuracy';
+import { runCalibrate } from './bench/calibrate';
 import { runSpeed } from './bench/speed';
 
 const USAGE = `npm run bench -- accuracy [--count 13000] [--seed 1] [--flavour-count 170] [--threads N]
                           [--sample-night FOLDER] [--out FOLDER]
 npm run bench -- speed    [--count 400] [--seed 1]
+npm run bench -- calibrate [--count 13000] [--seed 1001] [--map FILE]
 
 accuracy  simulates spectra, measures them and prints what came out beside the bar:
           measured figure, count, floor, goal, reached or not.
           --sample-night scores a folder of files with a truth.csv by the same rules.
-speed     spectra per second on one core, beside a plain fit by general tools, and memory.`;
+speed     spectra per second on one core, beside a plain fit by general tools, and memory.
+calibrate fits the map from raw to calibrated probability on simulated spectra; prints it or
+          writes it to --map. Use another seed than the accuracy runs.`;
 
 function whole(text: string | undefined, usual: number, name: string): number {
   const value = text === undefined ? usual : Number(text);
@@ -27,19 +31,23 @@ function parse() {
       threads: { type: 'string' },
       'sample-night': { type: 'string' },
       out: { type: 'string' },
+      map: { type: 'string' },
       help: { type: 'boolean' },
     },
   });
   const what = positionals[0];
-  if (!values.help && what !== 'accuracy' && what !== 'speed') throw new Error(`there is no bench '${what ?? ''}'.`);
+  if (!values.help && !['accuracy', 'speed', 'calibrate'].includes(what))
+    throw new Error(`there is no bench '${what ?? ''}'.`);
   return {
     what: values.help ? 'help' : what,
     count: whole(values.count, what === 'speed' ? 400 : 13000, 'count'),
-    seed: whole(values.seed, 1, 'seed'),
+    // a map must not be judged on the spectra that it was fitted on
+    seed: whole(values.seed, what === 'calibrate' ? 1001 : 1, 'seed'),
     perFlavour: whole(values['flavour-count'], 170, 'flavour-count'),
     threads: values.threads === undefined ? null : whole(values.threads, 1, 'threads'),
     sampleNight: values['sample-night'] ?? null,
     out: values.out ?? 'build/bench',
+    map: values.map ?? null,
   };
 }
 
@@ -53,3 +61,4 @@ try {
 if (options?.what === 'help') process.stderr.write(`${USAGE}\n`);
 else if (options?.what === 'accuracy') await runAccuracy(options);
 else if (options?.what === 'speed') await runSpeed(options);
+else if (options?.what === 'calibrate') await runCalibrate(options);

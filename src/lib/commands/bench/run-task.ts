@@ -1,3 +1,4 @@
+import type { Spectrum } from '$lib/domain/spectrum';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
 import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
@@ -32,12 +33,15 @@ function withoutAnswer(truth: Truth): Truth {
   };
 }
 
-function runOne(group: Group, seed: number): Outcome {
+/** The spectrum and truth of one seed of a group. */
+export function simulateFor(group: Group, seed: number): { spectrum: Spectrum; truth: Truth } {
   const inverted = group === 'sign-inverted';
-  const recipe = drawRecipe(inverted ? 'star-forming' : group, seed);
-  const made = simulateSpectrum(recipe, seed);
-  const spectrum = inverted ? invertSign(made.spectrum) : made.spectrum;
-  const truth = inverted ? withoutAnswer(made.truth) : made.truth;
+  const { spectrum, truth } = simulateSpectrum(drawRecipe(inverted ? 'star-forming' : group, seed), seed);
+  return inverted ? { spectrum: invertSign(spectrum), truth: withoutAnswer(truth) } : { spectrum, truth };
+}
+
+function runOne(group: Group, seed: number): Outcome {
+  const { spectrum, truth } = simulateFor(group, seed);
   const start = performance.now();
   const measurement = measureSpectrum(spectrum);
   const milliseconds = performance.now() - start;
