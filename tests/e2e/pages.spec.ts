@@ -1,0 +1,58 @@
+import AxeBuilder from '@axe-core/playwright';
+import { expect, test, type Page } from '@playwright/test';
+import { readState } from './installation';
+import { signIn } from './people';
+
+const THEMES = ['light', 'dark', 'dome'];
+const WIDTHS = [1440, 390];
+
+/** Pages by whoever sees them; `first` follows the first link of that kind. */
+const PAGES: { name: string; who: string | null; path: string; first?: string }[] = [
+  { name: 'landing', who: null, path: '/' },
+  { name: 'sign-in', who: null, path: '/sign-in' },
+  { name: 'catalogues', who: null, path: '/catalogues' },
+  { name: 'catalogue', who: null, path: '/catalogues/halloran-lines' },
+  { name: 'nights', who: 'Rua', path: '/nights' },
+  { name: 'night', who: 'Rua', path: '/nights', first: 'a[href^="/nights/"]' },
+  { name: 'review list', who: 'Ines', path: '/review' },
+  { name: 'review', who: 'Ines', path: '/review', first: 'a[href^="/review/"]' },
+  { name: 'programmes', who: 'Maren', path: '/programmes' },
+  { name: 'drafts', who: 'Maren', path: '/drafts' },
+];
+
+async function settle(page: Page, first?: string): Promise<void> {
+  await page.locator('[data-ready]').waitFor({ state: 'attached' });
+  if (!first) return;
+  const href = await page.locator(first).first().getAttribute('href');
+  await page.goto(`${readState().origin}${href}`);
+  await page.locator('[data-ready]').waitFor({ state: 'attached' });
+  await page.waitForLoadState('networkidle').catch(() => {});
+}
+
+for (const { name, who, path, first } of PAGES) {
+  test(`${name}: no axe violation in any theme or width, nothing wider than the screen, no fault in the console`, async ({
+    page,
+  }) => {
+    const { origin } = readState();
+    const faults: string[] = [];
+    page.on('pageerror', (error) => faults.push(error.message));
+    page.on('console', (message) => message.type() === 'error' && faults.push(message.text()));
+    if (who) await signIn(page, who);
+    for (const theme of THEMES) {
+      await page.context().addCookies([{ name: 'farglow-theme', value: theme, url: origin }]);
+      for (const width of WIDTHS) {
+        await page.setViewportSize({ width, height: 900 });
+        await page.goto(`${origin}${path}`);
+        await settle(page, first);
+        const { violations } = await new AxeBuilder({ page }).analyze();
+        expect(
+          violations.map(({ id, nodes }) => `${id}: ${nodes[0].html}`),
+          `${name} in ${theme} at ${width}`,
+        ).toEqual([]);
+        const overflow = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
+        expect(overflow, `${name} in ${theme} at ${width}`).toBeLessThanOrEqual(0);
+      }
+    }
+    expect(faults).toEqual([]);
+  });
+}
