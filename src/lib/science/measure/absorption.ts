@@ -159,7 +159,8 @@ export function absorptionEvidence(
         position.push(Math.log(rest));
         logRatio.push(Math.log(strength));
         scatter.push(spread);
-        if (-filter.significance[k] > 4) strong++;
+        const depth = right[right.length - 1] / Math.sqrt(information[information.length - 1]);
+        if (depth > 4) strong++;
       }
       const count = right.length;
       if (count < 2) continue;
@@ -178,7 +179,12 @@ export function absorptionEvidence(
         logNoiseFlux,
       );
       if (logEvidence > best.logEvidence) {
-        best = { logEvidence, family: family.name, strongFeatures: strong, sigmaKms: filter.sigmaKms };
+        best = {
+          logEvidence,
+          family: family.name,
+          strongFeatures: strong,
+          sigmaKms: filter.sigmaKms,
+        };
       }
     }
   }

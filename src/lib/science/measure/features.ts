@@ -70,11 +70,13 @@ export function findFeatures(
     const reach = 2.5 * Math.hypot(lsf, sigmaKms / 299792.458);
     if (features.some((other) => Math.abs(other.logWavelength - logWavelength) < reach)) continue;
     const { nearSky, nearEdge } = surroundings(working, pixel, wavelength, 1.2 * reach);
-    const spike = spikeAdvantage(working, residual, highestPixel(working, residual, pixel)).advantage;
+    const spike = spikeAdvantage(working, residual, highestPixel(working, residual, pixel));
     const rate =
       (nearSky ? rates.sky : nearEdge ? ARTEFACT_RATE.edge : rates.clean) +
-      ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike)));
-    const s = bounded(best[k], filters[which[k]].information[k], continuum[pixel], wavelength * (reach / 2.5));
+      ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike.advantage)));
+    const { noiseFactor, information } = filters[which[k]];
+    const spread = wavelength * (reach / 2.5);
+    const s = bounded(best[k] * noiseFactor, information[k] * noiseFactor ** 2, continuum[pixel], spread);
     features.push({
       wavelength,
       logWavelength,
@@ -145,7 +147,8 @@ function artefactRates(working: WorkingSpectrum, bank: FilterBank): { clean: num
   const elements = { clean: 1, sky: 1 };
   const dips = { clean: 0, sky: 0 };
   const middle = working.count >> 1;
-  const element = (2.3548 * working.lsfSigma[middle]) / working.wavelength[middle] / step;
+  const resolution = Math.hypot(working.lsfSigma[middle] / working.wavelength[middle], filter.sigmaKms / 299792.458);
+  const element = (2.3548 * resolution) / step;
   let pixel = 0;
   for (let k = 1; k < count - 1; k++) {
     if (!(filter.information[k] > 0)) continue;

@@ -70,7 +70,7 @@ const TELLURIC_FAULT = 0.5;
  * Line profiles are not known better than this share of their height (line-spread function, blends, asymmetries), narrow
  * and broad; common practice, no single source.
  */
-const PROFILE_FAULT = { narrow: 0.1, broad: 0.05 } as const;
+const PROFILE_FAULT = { narrow: 0.1, broad: 0.1 } as const;
 
 /**
  * Weights under which hypotheses are compared: a share of a line's own height is added to the noise in quadrature, so
