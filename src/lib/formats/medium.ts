@@ -23,3 +23,14 @@ export function mediumOfName(name: string): Medium | null {
   if (/(^|[^a-z])vac(uum)?([^a-z]|$)/i.test(name) || /^(wave|wavelength|lambda)vac(uum)?$/i.test(name)) return 'vacuum';
   return null;
 }
+
+/** Medium from a UCD: `em.wl;obs.atmos` marks wavelengths in air; a bare `em.wl` leaves it open. */
+export function mediumOfUcd(ucd: string | null): Medium | null {
+  return ucd
+    ?.toLowerCase()
+    .split(';')
+    .map((word) => word.trim())
+    .includes('obs.atmos')
+    ? 'air'
+    : null;
+}

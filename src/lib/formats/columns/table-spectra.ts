@@ -3,8 +3,8 @@ import type { Problem } from '$lib/domain/input-problem';
 import type { Medium, RawSpectrum } from '$lib/domain/spectrum';
 import { columnAxis, describesSpectralAxis, readSpectralAxis } from '../axis/spectral-axis';
 import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wavelengths';
-import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
-import { readObservation } from '../observation/read-observation';
+import { mediumOfName, mediumOfType, mediumOfUcd, mediumOfWords } from '../medium';
+import { frameOfWords, readObservation } from '../observation/read-observation';
 import { rowObservation } from '../observation/row-observation';
 import { problemAt, type Place } from '../place';
 import { checkRowCount, readRows, type ReadContext } from '../read-context';
@@ -28,6 +28,7 @@ function tableMedium(table: Table, wavelength: Column): Medium | null {
   return (
     mediumOfType(wavelength.coordinateType) ??
     mediumOfType(table.cards.text(`1CTYP${index}`)) ??
+    mediumOfUcd(wavelength.ucd) ??
     mediumOfWords(wavelength.description) ??
     mediumOfName(wavelength.name) ??
     mediumOfType(table.cards.text('CTYPE1')) ??
@@ -83,6 +84,7 @@ export function tableSpectra(table: Table, context: ReadContext): TableSpectra {
   const axisInHeader = fluxAxis !== null && describesSpectralAxis(table.cards, fluxAxis);
   if (!flux || (!wavelength && !axisInHeader)) return { spectra: [], notSpectra: notSpectra(table, file, roles) };
   const observation = readObservation(table.cards);
+  observation.specsys ??= frameOfWords(table.remarks);
   const medium = wavelength ? tableMedium(table, wavelength) : null;
   const spectra: RawSpectrum[] = [];
 

@@ -30,6 +30,6 @@ export interface Table {
   rows: number;
   columns: Column[];
   cards: Cards;
-  /** Sentences around the table that may name the medium (comments of a text file). */
+  /** Sentences around the table that may name medium and velocity frame (comments of a text file). */
   remarks: string[];
 }

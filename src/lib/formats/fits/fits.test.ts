@@ -206,6 +206,10 @@ describe('tables', () => {
     const { spectra, problems } = readSpectra(joinBytes([emptyPrimary([]), tableExtension(columns, n, [])]), 'a.fits');
     expect(problems).toEqual([]);
     expect(spectra[0].variance![1]).toBe(4);
+    expect(spectra[0].frame.medium).toBeNull();
+    columns[0].ucd = 'em.wl;obs.atmos';
+    const air = readSpectra(joinBytes([emptyPrimary([]), tableExtension(columns, n, [])]), 'a.fits');
+    expect(air.spectra[0].frame.medium).toBe('air');
   });
 
   it('read variable-length cells, and refuse one that points beyond the heap', () => {

@@ -34,6 +34,16 @@ export function frameName(text: string | null): string | null {
   return FRAMES[upper] ?? upper;
 }
 
+/** The one velocity frame that sentences name (`barycentric frame`); null where none or several are named. */
+export function frameOfWords(sentences: readonly string[]): string | null {
+  const named = new Set(
+    sentences
+      .flatMap((sentence) => sentence.match(/\b(topo|geo|bary|helio)centric\b/gi) ?? [])
+      .map((word) => frameName(word)),
+  );
+  return named.size === 1 ? [...named][0] : null;
+}
+
 /** Degrees of `12.5` (degrees) or `10:31:22.1` (hours where `hours`); null where neither or out of bounds. */
 export function readAngle(value: string | number | boolean | null | undefined, hours: boolean): number | null {
   if (typeof value === 'number') return inBounds(value, hours);

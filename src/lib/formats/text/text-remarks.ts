@@ -25,7 +25,7 @@ function cardValue(text: string): CardValue | undefined {
   return bare === 'T' || bare === 'F' ? bare === 'T' : bare;
 }
 
-/** Reads comment lines: `KEY = value` cards, `wavelength unit: nm`, and sentences that may name the medium. */
+/** Reads comment lines: `KEY = value` cards, `wavelength unit: nm`, and sentences that may name medium or velocity frame. */
 export function readRemarks(comments: string[]): TextRemarks {
   const remarks: TextRemarks = { cards: new Cards(), sentences: [], units: {} };
   for (const comment of comments) {
@@ -40,7 +40,7 @@ export function readRemarks(comments: string[]): TextRemarks {
     const card = CARD_LINE.exec(text);
     const value = card ? cardValue(card[2]) : undefined;
     if (card && value !== undefined) remarks.cards.set(card[1], value);
-    if (/\b(vac(uum)?|air)\b/i.test(text)) remarks.sentences.push(text);
+    if (/\b(vac(uum)?|air|(topo|geo|bary|helio)centric)\b/i.test(text)) remarks.sentences.push(text);
   }
   return remarks;
 }

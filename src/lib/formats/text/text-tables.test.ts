@@ -55,6 +55,14 @@ describe('tables of text', () => {
     expect(read([comment, 'wave,flux,error', ...rows(',')]).spectra[0].frame.medium).toBe(medium);
   });
 
+  it('read the velocity frame from a sentence, unless several are named', () => {
+    const table = ['wave,flux,error', ...rows(',')];
+    expect(read(['# vacuum wavelengths, barycentric frame', ...table]).spectra[0].frame.specsys).toBe('BARYCENT');
+    expect(read(['# heliocentric or barycentric', ...table]).spectra[0].frame.specsys).toBeNull();
+    const both = read(['# barycentric', '# SPECSYS = TOPOCENT', ...table]);
+    expect(both.spectra[0].frame.specsys).toBe('TOPOCENT');
+  });
+
   it('read header cards from comments, quoted or not', () => {
     const cards = ["# OBJECT = 'CHO 12'", '# SPECSYS: topocent', '# DATE-OBS = 2020-05-01T00:00:00', '# EXPTIME = 600'];
     const [raw] = read([...cards, 'wave,flux,error', ...rows(',')]).spectra;

@@ -77,9 +77,8 @@ export function velocityFrame(raw: RawSpectrum, instrument?: Instrument): Veloci
   } else if (specsys === 'GEOCENTR' && sighting)
     frame.barycentricKms = barycentricVelocityKms({ ...sighting, observatoryMetres: null });
   else if (specsys === 'HELIOCEN' && sighting) frame.barycentricKms = heliocentricToBarycentricKms(sighting);
-  else if (specsys === 'HELIOCEN')
-    frame.warnings.push('Heliocentric wavelengths are taken for barycentric ones (0.02 km/s at most).');
-  else {
+  else if (specsys !== 'HELIOCEN') {
+    // Heliocentric wavelengths without time or position pass for barycentric ones: they differ by 0.02 km/s at most.
     frame.doubt = true;
     frame.warnings.push(describeDoubt(specsys, lacking));
     // Untouched topocentric wavelengths are the observatory's own.
