@@ -1,7 +1,7 @@
 import type { Outcome } from './outcome';
 import { layOutTable, percent, short } from './print-table';
 import { expectedCalibrationError, reliabilityBins } from './reliability';
-import { forecastsOf, isFindable, isSingle } from './score';
+import { forecastsOf, isClean, isFindable, isSingle } from './score';
 import { median, robustScatter, standardDeviation } from './statistics';
 
 const SIGNAL_BINS = [0, 3, 5, 7, 10, 15, 25, 50, Infinity] as const;
@@ -134,7 +134,7 @@ export function tableOfPulls(outcomes: readonly Outcome[]): string {
     ];
   };
   const narrow = outcomes.filter((o) => o.known.hasEmission && !o.known.broad);
-  const clean = narrow.filter((o) => o.known.artefacts.every((a) => a === 'gap'));
+  const clean = narrow.filter(isClean);
   const faults = [...new Set(narrow.flatMap((o) => o.known.artefacts))].filter((a) => a !== 'gap').sort();
   const counts = new Map<string, number>();
   for (const { line } of narrow.flatMap((o) => o.judged.linePulls)) counts.set(line, (counts.get(line) ?? 0) + 1);
@@ -143,6 +143,13 @@ export function tableOfPulls(outcomes: readonly Outcome[]): string {
     ['', 'spectra', 'z', 'robust', 'lines', 'median', 'flux', 'robust', 'width', 'robust'],
     [
       row('without faults', clean, null),
+      ...[...new Set(narrow.map((o) => o.group))].map((group) =>
+        row(
+          group,
+          narrow.filter((o) => o.group === group),
+          null,
+        ),
+      ),
       ...faults.map((fault) =>
         row(
           `with ${fault}`,

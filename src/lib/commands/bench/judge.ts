@@ -7,6 +7,8 @@ import type { Group, KnownAnswer, LinePull, Outcome } from './outcome';
 const NARROW_TOLERANCE = 0.0005;
 const BROAD_TOLERANCE = 0.003;
 const FAR_KMS = 1000;
+/** Below this nobody could know a line's flux from the spectrum. */
+const LEAST_TRANSMISSION = 0.97;
 
 /**
  * Whether a redshift is right: within 0.0005 (1 + z), 0.003 (1 + z) for broad lines and absorption; for Lyman-alpha anywhere from the
@@ -77,11 +79,12 @@ export function knownAnswer(truth: Truth): KnownAnswer {
   };
 }
 
-/** Deviations of every narrow line of S/N >= 5 that was put in and measured. */
+/** Deviations of every narrow line of S/N >= 5 that was put in whole, not lost in a telluric band, and measured. */
 function linePulls(lines: readonly TruthLine[], measurement: Measurement, fluxScale: number): LinePull[] {
   const pulls: LinePull[] = [];
   for (const line of lines) {
     if (line.broad || line.signalToNoise < 5 || line.coverage < 0.98 || line.object !== 0) continue;
+    if (line.transmission < LEAST_TRANSMISSION) continue;
     const fit = measurement.lines.find((l) => Math.abs(l.wavelengthRest - line.wavelengthRest) < 0.3);
     if (!fit) continue;
     const over = (value: number | null, error: number | null, expected: number | null) =>

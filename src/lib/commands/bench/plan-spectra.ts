@@ -5,8 +5,8 @@ import type { Group } from './outcome';
  * the bound, 3,000 answers for the calibration.
  */
 const SHARES: Record<Group, number> = {
-  'star-forming': 0.17,
-  precision: 0.09,
+  'star-forming': 0.16,
+  precision: 0.1,
   'active nucleus': 0.07,
   'shock-like': 0.03,
   'lyman-alpha emitter': 0.07,

@@ -22,15 +22,15 @@ describe('planSpectra', () => {
 });
 
 // a few spectra end to end, so that a broken engine or bench shows here and not only in a long run
-describe('runTask, accuracy smoke test', () => {
+describe('runTask, accuracy smoke test', { timeout: 60_000 }, () => {
   it('finds the redshift of strong clean spectra, within a few of the bound', () => {
-    const results = outcomes({ kind: 'group', group: 'precision', seed: 77, from: 0, to: 24 });
-    expect(results.filter((o) => o.judged.right).length).toBeGreaterThan(18);
+    const results = outcomes({ kind: 'group', group: 'precision', seed: 77, from: 0, to: 12 });
+    expect(results.filter((o) => o.judged.right).length).toBeGreaterThan(9);
     for (const { judged } of results) if (judged.overBound !== null) expect(Math.abs(judged.overBound)).toBeLessThan(6);
   });
 
   it('claims nothing secure on pure noise', () => {
-    const results = outcomes({ kind: 'group', group: 'pure noise', seed: 77, from: 0, to: 16 });
+    const results = outcomes({ kind: 'group', group: 'pure noise', seed: 77, from: 0, to: 10 });
     expect(results.filter((o) => o.answer.confidence === 'secure')).toEqual([]);
     expect(results.every((o) => !o.judged.right && o.known.redshift === null)).toBe(true);
   });

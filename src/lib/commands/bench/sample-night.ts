@@ -70,6 +70,8 @@ function linesOf(row: TruthRow, redshift: number | null): TruthLine[] {
       equivalentWidthRest: line.ewRest,
       broad: line.broad,
       coverage: line.coverage,
+      // truth.csv does not say
+      transmission: 1,
       object: 0,
     }));
 }

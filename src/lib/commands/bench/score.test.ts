@@ -87,7 +87,9 @@ describe('score', () => {
   it('judges pulls from both sides and asks for 800', () => {
     const pulls = (scale: number, count: number) =>
       Array.from({ length: count }, (_, i) => outcome({ pull: scale * (i % 2 ? 1 : -1) }));
-    expect(row(pulls(1, 800), 'pull of z').reached).toBe('yes');
+    const faulty = outcome({ pull: 50 });
+    faulty.known.artefacts = ['telluric'];
+    expect(row([...pulls(1, 800), faulty], 'pull of z, narrow lines, clean').reached).toBe('yes');
     expect(row(pulls(0.7, 800), 'pull of z').reached).toBe('no');
     expect(row(pulls(1, 400), 'pull of z').reached).toBe('needs 800');
   });

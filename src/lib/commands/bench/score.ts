@@ -78,6 +78,20 @@ function nearOne(what: string, pulls: readonly number[], needed: number): ScoreR
 
 const numbers = (values: (number | null)[]) => values.filter((value): value is number => value !== null);
 
+/** No fault but a gap between arms was put in. */
+export function isClean({ known }: Outcome): boolean {
+  return known.artefacts.every((artefact) => artefact === 'gap');
+}
+
+function pullRows(which: string, outcomes: readonly Outcome[]): ScoreRow[] {
+  const lines = outcomes.flatMap(({ judged }) => judged.linePulls);
+  return [
+    nearOne(`pull of z, ${which}`, numbers(outcomes.map(({ judged }) => judged.redshiftPull)), 800),
+    nearOne(`pull of flux, ${which}`, numbers(lines.map((line) => line.flux)), 800),
+    nearOne(`pull of equivalent width, ${which}`, numbers(lines.map((line) => line.equivalentWidth)), 800),
+  ];
+}
+
 /** Probability of each spectrum's best candidate and whether it came true. */
 export function forecastsOf(outcomes: readonly Outcome[]): Forecast[] {
   return outcomes
@@ -109,7 +123,6 @@ export function score(outcomes: readonly Outcome[]): ScoreRow[] {
   const narrow = among(outcomes, NARROW_GROUPS);
   const precise = among(outcomes, ['precision']);
   const bound = numbers(precise.map(({ judged }) => judged.overBound));
-  const lines = narrow.flatMap(({ judged }) => judged.linePulls);
   const forecasts = forecastsOf(outcomes);
   const calibration = expectedCalibrationError(forecasts);
   const overBound = standardDeviation(bound);
@@ -153,9 +166,11 @@ export function score(outcomes: readonly Outcome[]): ScoreRow[] {
       format: 'number',
       note: bound.length > 1 ? `robust ${robustScatter(bound).toFixed(3)}` : '',
     },
-    nearOne('pull of z, narrow lines', numbers(narrow.map(({ judged }) => judged.redshiftPull)), 800),
-    nearOne('pull of flux, narrow lines', numbers(lines.map((line) => line.flux)), 800),
-    nearOne('pull of equivalent width, narrow lines', numbers(lines.map((line) => line.equivalentWidth)), 800),
+    ...pullRows('narrow lines, clean', narrow.filter(isClean)),
+    ...pullRows(
+      'narrow lines, faults of a night',
+      narrow.filter((o) => !isClean(o)),
+    ),
     {
       what: 'expected calibration error',
       measured: calibration,

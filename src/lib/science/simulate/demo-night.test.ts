@@ -9,7 +9,7 @@ describe('positionName', () => {
   });
 });
 
-describe('demoNight', () => {
+describe('demoNight', { timeout: 60_000 }, () => {
   const night = demoNight();
 
   it('has 120 spectra of distinct targets in five fields through the night', () => {

@@ -1,7 +1,7 @@
 import { FWHM_PER_SIGMA, SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import { lsfSigmaAt, type DetectorGrid } from './detector-grid';
 import { redshiftInformationBound } from './information-bound';
-import { profileShape } from './line-on-pixels';
+import { profileShape, type PixelProfile } from './line-on-pixels';
 import { blendFeatures, featureSignalToNoise, lineSignalToNoise } from './line-signal';
 import type { PlacedObject } from './object-on-pixels';
 import type { Recipe } from './recipe';
@@ -32,7 +32,24 @@ function nameArtefacts(recipe: Recipe): string[] {
   return names;
 }
 
-function describeLines(object: PlacedObject, index: number, scale: number, variance: Float64Array): TruthLine[] {
+/** Light of a line that passes the atmosphere over all of it. */
+function transmittedShare(profile: PixelProfile, grid: DetectorGrid, transmission: Float64Array): number {
+  let passed = 0;
+  for (let k = 0; k < profile.value.length; k++) {
+    const i = profile.first + k;
+    passed += profile.value[k] * (grid.upper[i] - grid.lower[i]) * transmission[i];
+  }
+  return passed / profile.coverage;
+}
+
+function describeLines(
+  object: PlacedObject,
+  index: number,
+  scale: number,
+  grid: DetectorGrid,
+  variance: Float64Array,
+  transmission: Float64Array,
+): TruthLine[] {
   return object.lines
     .filter(({ profile }) => profile.coverage > 0.02)
     .map(({ line, profile, flux, continuum }) => ({
@@ -45,6 +62,7 @@ function describeLines(object: PlacedObject, index: number, scale: number, varia
       equivalentWidthRest: continuum > 0 ? flux / continuum / (1 + object.redshift) : null,
       broad: line.broad,
       coverage: profile.coverage,
+      transmission: transmittedShare(profile, grid, transmission),
       object: index,
     }));
 }
@@ -54,6 +72,7 @@ function describeLines(object: PlacedObject, index: number, scale: number, varia
  *
  * @param scales brightness of each object
  * @param variance true variance of the pixels, Infinity where they are dead
+ * @param transmission of the atmosphere
  */
 export function describeTruth(
   recipe: Recipe,
@@ -61,8 +80,9 @@ export function describeTruth(
   scales: readonly number[],
   grid: DetectorGrid,
   variance: Float64Array,
+  transmission: Float64Array,
 ): Truth {
-  const lines = objects.flatMap((object, i) => describeLines(object, i, scales[i], variance));
+  const lines = objects.flatMap((object, i) => describeLines(object, i, scales[i], grid, variance, transmission));
   const signals = objects.map((object, i) =>
     blendFeatures(object, grid).map((feature) => featureSignalToNoise(feature, variance) * scales[i]),
   );

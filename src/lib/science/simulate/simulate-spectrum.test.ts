@@ -3,7 +3,7 @@ import { drawRecipe } from './draw-recipe';
 import { SPECTRUM_CLASSES, type SpectrumClass } from './recipe';
 import { simulateSpectrum } from './simulate-spectrum';
 
-describe('simulateSpectrum', () => {
+describe('simulateSpectrum', { timeout: 30_000 }, () => {
   it.each(SPECTRUM_CLASSES)(
     'makes whole %s spectra: increasing wavelengths, finite flux, positive variance',
     (name) => {
@@ -87,7 +87,7 @@ describe('simulateSpectrum', () => {
   });
 });
 
-describe('truth', () => {
+describe('truth', { timeout: 30_000 }, () => {
   const truths = (name: SpectrumClass, count: number) =>
     Array.from({ length: count }, (_, i) => simulateSpectrum(drawRecipe(name, i + 1), i + 1).truth);
 

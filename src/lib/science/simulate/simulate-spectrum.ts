@@ -69,9 +69,9 @@ export function simulateSpectrum(recipe: Recipe, seed: number): { spectrum: Spec
     }
   }
   const trueVariance = variance.map((value, i) => (deadPixels[i] ? Infinity : value));
-  const truth = describeTruth(recipe, objects, scales, grid, trueVariance);
-
   const transmission = telluricOnPixels(grid, factor, noise.telluric);
+  const truth = describeTruth(recipe, objects, scales, grid, trueVariance, transmission);
+
   const residual = skyResidual(noise, grid, factor, random);
   const flux = new Float64Array(count);
   for (let i = 0; i < count; i++) {

@@ -16,6 +16,8 @@ export interface TruthLine {
   broad: boolean;
   /** Share of the flux that falls on usable pixels. */
   coverage: number;
+  /** Share of that which the atmosphere lets pass; 1 where telluric absorption was left out. */
+  transmission: number;
   /** 0 for the main object, 1 for the second. */
   object: number;
 }
