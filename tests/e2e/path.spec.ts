@@ -46,7 +46,7 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
     const target = page.locator('main');
     for (const type of ['dragenter', 'dragover', 'drop']) await target.dispatchEvent(type, { dataTransfer: transfer });
     await expect(page.getByText('Nothing waits: 6 of 6 spectra measured, 1 problem')).toBeAttached({ timeout: 90_000 });
-    await expect(page.getByText('not-a-spectrum.fits').first()).toBeVisible();
+    await expect(page.getByText('The file is not FITS')).toBeVisible();
     await expect(page.getByRole('link', { name: 'HZ-0022' })).toBeVisible();
   });
 

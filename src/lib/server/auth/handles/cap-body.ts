@@ -12,8 +12,11 @@ export const capBody: Handle = ({ event, resolve }) => {
   if (STREAMED.test(url.pathname) || !request.body) return resolve(event);
   const declared = request.headers.get('content-length');
   if (declared !== null && Number(declared) <= ORDINARY_BODY_BYTES) return resolve(event);
-  return answerRefusal(
+  const answer = answerRefusal(
     new Refusal('too-large', 'A body here may have at most 1 MiB, and its length must be declared.', 'Send less.'),
     url.pathname,
   );
+  // The body is never read, so the connection can't carry another request.
+  answer.headers.set('connection', 'close');
+  return answer;
 };

@@ -75,9 +75,14 @@ export async function storeMeasurements(results: Map<string, MeasureResult>, tra
 function asRow({ id, spectrumId, measurement }: { id: string; spectrumId: string; measurement: Measurement }) {
   const { engine, candidates, lines, redshift, redshiftError, redshiftErrorMeasured, redshiftSystemic } = measurement;
   const { secondRedshift, probability, confidence, noiseFactor, fluxUnit, flags } = measurement;
-  const stronger = (best: LineFit | null, line: LineFit) =>
-    (line.signalToNoise ?? 0) > (best?.signalToNoise ?? 0) ? line : best;
-  const strongest = lines.reduce(stronger, null);
+  // Tied doublets share a signal-to-noise ratio: the brighter of them names the feature.
+  const strength = (line: LineFit) => [line.signalToNoise ?? 0, line.flux ?? 0];
+  const stronger = (best: LineFit | null, line: LineFit) => {
+    if (!best) return line;
+    const [[a, fluxA], [b, fluxB]] = [strength(line), strength(best)];
+    return a > b || (a === b && fluxA > fluxB) ? line : best;
+  };
+  const strongest = lines.reduce<LineFit | null>(stronger, null);
   return {
     id,
     spectrumId,
