@@ -13,8 +13,8 @@ export interface DraftCheck {
   count: number;
   what: string;
   mend: string;
-  /** The first of them in words, each with the names of the targets it is about. */
-  examples: { text: string; names: string[] }[];
+  /** The first of them in words, each with the names of the targets, and the spectrum, it is about. */
+  examples: { text: string; names: string[]; spectrum?: string }[];
 }
 
 /** A draft, what it would publish now, and what stands against it. */

@@ -1,7 +1,7 @@
 import { Refusal } from '$lib/domain/refusal';
 import { cellsOf, RELEASE_COLUMNS, type ReleaseColumn } from '$lib/domain/release-columns';
 import { votableError, votableHead, votableRow, votableTail } from '$lib/formats/tables/write-votable';
-import { releaseRowBatches, type Cone } from '../database/queries/release-rows';
+import { releaseRowBatches, type Cone } from '../database/queries/release-rows-read';
 import { findRelease, type FoundRelease } from './find-release';
 import { readNumber } from './parse-row-query';
 import { textStream } from './text-stream';

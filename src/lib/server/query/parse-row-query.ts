@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { parse } from '$lib/api/parse';
 import { CONFIDENCE_WORDS } from '$lib/domain/confidence';
 import { Refusal } from '$lib/domain/refusal';
-import type { RowFilter } from '../database/queries/release-rows';
+import type { RowFilter } from '../database/queries/release-rows-read';
 
 const NUMBER = /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i;
 
@@ -65,7 +65,7 @@ const rowQuerySchema = z
     const cone = { ra, dec, radius };
     const missing = Object.entries(cone).filter(([, value]) => value === undefined);
     if (missing.length === 1 || missing.length === 2) {
-      const message = `a cone needs ra, dec and radius together, and ${missing.map(([name]) => name).join(' and ')} is missing`;
+      const message = `a cone needs ra, dec and radius together, and ${missing.map(([name]) => name).join(' and ')} ${missing.length === 1 ? 'is' : 'are'} missing`;
       context.addIssue({ code: 'custom', path: [missing[0][0]], message });
     }
     if (low !== undefined && high !== undefined && low > high) {

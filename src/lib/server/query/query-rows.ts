@@ -2,7 +2,12 @@ import { decodeCursor, encodeCursor } from '$lib/api/cursor';
 import { Refusal } from '$lib/domain/refusal';
 import type { ReleaseRow } from '$lib/domain/release';
 import type { PlottedRow } from '$lib/domain/release-view';
-import { countReleaseRows, everyNthRow, releaseRowBatches, type RowFilter } from '../database/queries/release-rows';
+import {
+  countReleaseRows,
+  everyNthRow,
+  releaseRowBatches,
+  type RowFilter,
+} from '../database/queries/release-rows-read';
 import { findRelease, type FoundRelease } from './find-release';
 import { DEFAULT_LIMIT, type RowQuery } from './parse-row-query';
 

@@ -4,8 +4,9 @@ import { DUPLICATE_RADIUS_ARCSEC, findDuplicates } from '$lib/science/release/fi
 import type { AssembledRows } from './assemble-rows';
 
 const EXAMPLES = 20;
-const named = (name: string) => ({ text: name, names: [name] });
+const named = (name: string, spectrum?: string) => ({ text: name, names: [name], spectrum });
 const orList = (words: readonly string[]) => words.join(', ').replace(/, ([^,]*)$/, ' or $1');
+const byText = (a: { text: string }, b: { text: string }) => (a.text < b.text ? -1 : 1);
 const plural = (n: number, one: string, many: string) => `${n.toLocaleString('en-US')} ${n === 1 ? one : many}`;
 
 /** What stands against freezing these rows, and what doesn't but is worth knowing. */
@@ -28,7 +29,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: openQuestions.length,
       what: `${plural(openQuestions.length, 'spectrum has', 'spectra have')} verdicts that disagree.`,
       mend: 'Settle them in Review, or leave the targets out.',
-      examples: openQuestions.map(({ targetName }) => named(targetName)),
+      examples: openQuestions.map(({ targetName, spectrumId }) => named(targetName, spectrumId)),
     },
     {
       code: 'missing-positions',
@@ -36,7 +37,7 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: unplaced.length,
       what: `${plural(unplaced.length, 'target has', 'targets have')} no position.`,
       mend: 'Hand in files that give one, or leave the targets out.',
-      examples: unplaced.map(named),
+      examples: unplaced.map((name) => named(name)),
     },
     {
       code: 'duplicates',
@@ -55,12 +56,12 @@ export function checkRows(assembled: AssembledRows, selection: DraftSelection, l
       count: fewer.length,
       what: `${plural(fewer.length, 'row rests', 'rows rest')} on fewer people than the ${looks} the programme asks for.`,
       mend: 'They enter all the same; have them looked at again if they should not.',
-      examples: fewer.map(({ spectrum }) => named(spectrum.targetName)),
+      examples: fewer.map(({ spectrum }) => named(spectrum.targetName, spectrum.spectrumId)),
     },
   ];
   return checks
     .filter(({ count }) => count > 0)
-    .map((check) => ({ ...check, examples: check.examples.slice(0, EXAMPLES) }));
+    .map((check) => ({ ...check, examples: check.examples.sort(byText).slice(0, EXAMPLES) }));
 }
 
 /** Sentences that go with the release: how its rows were chosen. */

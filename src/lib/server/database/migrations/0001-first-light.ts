@@ -100,7 +100,8 @@ export const statements: string[] = [
     h_alpha_flux DOUBLE NULL, h_alpha_flux_error DOUBLE NULL, h_beta_flux DOUBLE NULL, h_beta_flux_error DOUBLE NULL,
     o3_5008_flux DOUBLE NULL, o3_5008_flux_error DOUBLE NULL, o2_3728_flux DOUBLE NULL, o2_3728_flux_error DOUBLE NULL,
     flux_unit VARCHAR(80) NULL, spectrum_id UUID NOT NULL, measurement_id UUID NULL, verdict_id UUID NULL,
-    PRIMARY KEY (release_id, row_index), KEY (release_id, zone, ra_degrees), KEY (release_id, redshift),
+    PRIMARY KEY (release_id, row_index), KEY by_place (release_id, zone, ra_degrees, dec_degrees),
+    KEY by_redshift (release_id, redshift),
     FOREIGN KEY (release_id) REFERENCES releases (id)) ${TABLE}`,
   // work to hand on, and the trail
   `CREATE TABLE IF NOT EXISTS outbox (id BIGINT UNSIGNED NOT NULL AUTO_INCREMENT PRIMARY KEY, job_name VARCHAR(40) NOT NULL,
