@@ -220,29 +220,6 @@ describe('spectra that cannot be measured', () => {
   });
 });
 
-describe('line-spread function', () => {
-  it('comes from the file, then the instrument, then an assumption, and says which', () => {
-    const instrument: Instrument = { name: 'spectrograph', resolvingPower: 1000 };
-    const ofFile = toSpectrum(raw(), instrument);
-    expect(ofFile.lsfSource).toBe('file');
-    expect(ofFile.lsfSigma[0]).toBeCloseTo(angstrom[0] / 2000 / 2.3548, 4);
-    const ofInstrument = toSpectrum(raw({ resolvingPower: null }), instrument);
-    expect(ofInstrument.lsfSource).toBe('instrument');
-    expect(ofInstrument.lsfSigma[0]).toBeCloseTo(angstrom[0] / 1000 / 2.3548, 4);
-    const width = toSpectrum(raw({ resolvingPower: null }), { name: 'spectrograph', resolutionFwhmAngstrom: 4 });
-    expect(width.lsfSigma[n - 1]).toBeCloseTo(4 / 2.3548, 4);
-    expect(toSpectrum(raw({ resolvingPower: null })).lsfSource).toBe('assumed');
-  });
-
-  it('takes an array of the file, its holes from their neighbours', () => {
-    const lsfSigmaAngstrom = Float64Array.from({ length: n }, (_, i) => (i === 9 ? Number.NaN : 1 + i / n));
-    const said = toSpectrum(raw({ lsfSigmaAngstrom }));
-    expect(said.lsfSource).toBe('file');
-    expect(said.lsfSigma[50]).toBe(1.25);
-    expect(said.lsfSigma[9]).toBeGreaterThan(1);
-  });
-});
-
 it('knows the scale of absolute flux, and none of counts', () => {
   expect(fluxScaleCgs('1e-17 erg s-1 cm-2 Angstrom-1')).toBe(1e-17);
   expect(fluxScaleCgs('erg s-1 cm-2 Angstrom-1')).toBe(1);
