@@ -58,9 +58,10 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
     await expect(page).toHaveURL(/\/review\/[0-9a-f-]{36}\?night=/);
     for (let i = 0; i < FILES.length; i++) {
       const name = await page.getByRole('heading', { level: 1 }).innerText();
-      await expect(page.getByRole('radio', { name: /secure/ })).toHaveAttribute('aria-checked', 'false');
+      const secure = page.getByRole('radio', { name: 'secure', exact: false });
+      await expect(secure).not.toBeChecked();
       await page.keyboard.press('s');
-      await expect(page.getByRole('radio', { name: /secure/ })).toHaveAttribute('aria-checked', 'true');
+      await expect(secure).toBeChecked();
       await page.keyboard.press('Enter');
       if (i < FILES.length - 1) await expect(page.getByRole('heading', { level: 1 })).not.toHaveText(name);
     }
