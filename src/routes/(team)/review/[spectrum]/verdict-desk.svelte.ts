@@ -1,4 +1,5 @@
 import { goto, invalidateAll } from '$app/navigation';
+import { navigating } from '$app/state';
 import type { SubmitFunction } from '@sveltejs/kit';
 import { announcer } from '../../../announcer.svelte';
 import type { ReviewState } from './review-state.svelte';
@@ -96,7 +97,9 @@ export class VerdictDesk {
     next: string | null,
   ): Promise<void> {
     if (result.type !== 'redirect' && result.type !== 'success') return this.#keep(sent, reasonOf(result));
-    // What the next page loaded ahead did not know of this verdict yet.
+    // What the next page loaded ahead did not know of this verdict yet. Loading anew would cancel a move that is under
+    // way, so moves end first.
+    while (navigating.complete) await navigating.complete.catch(() => {});
     await invalidateAll();
     if (next === null) announcer.say('Stored.');
   }
