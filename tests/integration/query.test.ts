@@ -1,7 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { separationDegrees } from '$lib/domain/sky';
 import { Refusal } from '$lib/domain/refusal';
-import { countRows, queryRows, readPlottedRows } from '$lib/server/query/query-rows';
+import { countRows } from '$lib/server/query/count-rows';
+import { queryRows } from '$lib/server/query/query-rows';
+import { readPlottedRows } from '$lib/server/query/read-plotted-rows';
 import { parseRowQuery } from '$lib/server/query/parse-row-query';
 import { chooseFormat, serveRows } from '$lib/server/query/serve-rows';
 import { freezeDraft } from '$lib/server/release/freeze-draft';
@@ -152,6 +154,12 @@ describe('serveRows', () => {
     expect(await serve({ redshift_max: '0.1' }, null, `"x", W/${headers.etag}`)).toMatchObject({ status: 304 });
     expect(await serve({ redshift_max: '0.2' }, null, headers.etag)).toMatchObject({ status: 200 });
     expect(await serve({ redshift_max: '0.1', format: 'csv' }, null, headers.etag)).toMatchObject({ status: 200 });
+  });
+
+  it('lets caches keep a numbered release for ever, the latest not', async () => {
+    const cacheOf = async (which: string) =>
+      (await serveRows(slug, which, query({}), { accept: null, ifNoneMatch: null })).headers['cache-control'];
+    expect([await cacheOf('1'), await cacheOf('latest')]).toEqual(['public, max-age=31536000, immutable', 'no-cache']);
   });
 
   it('chooses the format by parameter, then by Accept, else JSON', () => {

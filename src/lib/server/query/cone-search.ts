@@ -2,7 +2,7 @@ import { Refusal } from '$lib/domain/refusal';
 import { cellsOf, RELEASE_COLUMNS, type ReleaseColumn } from '$lib/domain/release-columns';
 import { votableError, votableHead, votableRow, votableTail } from '$lib/formats/tables/write-votable';
 import { releaseRowBatches, type Cone } from '../database/queries/release-rows-read';
-import { findRelease, type FoundRelease } from './find-release';
+import { describeRelease, findRelease, type FoundRelease } from './find-release';
 import { readNumber } from './parse-row-query';
 import { textStream } from './text-stream';
 
@@ -64,10 +64,10 @@ export async function coneSearch(slug: string, params: URLSearchParams): Promise
 }
 
 async function* pieces(found: FoundRelease, cone: Cone, columns: ReleaseColumn[]): AsyncGenerator<string> {
-  const { catalogue, release } = found;
+  const { release } = found;
   yield votableHead({
     tableName: 'rows',
-    description: `${catalogue.title}, release ${release.number}`,
+    description: describeRelease(found),
     columns,
     infos: [
       ['SERVICE_PROTOCOL', 'Simple Cone Search 1.03'],

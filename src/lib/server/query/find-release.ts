@@ -31,3 +31,9 @@ export async function findRelease(slug: string, which: string): Promise<FoundRel
   }
   return { catalogue, release, releases };
 }
+
+/** A release in a line, for the head of its tables; invented data say so wherever they go. */
+export function describeRelease({ catalogue, release }: FoundRelease): string {
+  const name = `${catalogue.title}, release ${release.number}`;
+  return catalogue.isDemo ? `${name}. Invented data, not observations.` : name;
+}

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { decodeCursor } from '$lib/api/cursor';
 import { parse } from '$lib/api/parse';
 import { CONFIDENCE_WORDS } from '$lib/domain/confidence';
 import { Refusal } from '$lib/domain/refusal';
@@ -76,10 +77,18 @@ const rowQuerySchema = z
 export interface RowQuery {
   filter: RowFilter;
   limit?: number;
-  cursor?: string;
+  /** Number of the row that the cursor stands behind; 0 without one. */
+  after: number;
   format?: RowFormat;
   /** The same query always has the same text; part of its ETag. */
   text: string;
+}
+
+function placeOf(cursor: string | undefined): number {
+  if (!cursor) return 0;
+  const [place] = decodeCursor(cursor, 1);
+  if (typeof place === 'number' && Number.isSafeInteger(place) && place >= 0) return place;
+  throw new Refusal('invalid', 'The cursor is not one that this list gave.', 'Start without a cursor.', 'cursor');
 }
 
 /**
@@ -95,16 +104,14 @@ export function parseRowQuery(params: URLSearchParams): RowQuery {
     }
     if (values.length) given[name] = values.join(',');
   }
-  const { ra, dec, radius, redshift_min, redshift_max, confidence, ...rest } = parse(
-    rowQuerySchema,
-    given,
-    'The query',
-  );
+  const parsed = parse(rowQuerySchema, given, 'The query');
+  const { ra, dec, radius, redshift_min, redshift_max, confidence, limit, format } = parsed;
   const filter: RowFilter = {
     ...(ra !== undefined && dec !== undefined && radius !== undefined && { cone: { ra: ra % 360, dec, radius } }),
     ...(redshift_min !== undefined && { redshiftMin: redshift_min }),
     ...(redshift_max !== undefined && { redshiftMax: redshift_max }),
     ...(confidence && { confidence: [...new Set(confidence)].sort() }),
   };
-  return { filter, ...rest, text: JSON.stringify([filter, rest.limit ?? null, rest.cursor ?? null]) };
+  const after = placeOf(parsed.cursor);
+  return { filter, limit, after, format, text: JSON.stringify([filter, limit ?? null, after]) };
 }

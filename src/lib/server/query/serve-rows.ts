@@ -2,9 +2,10 @@ import { createHash } from 'node:crypto';
 import { cellsOf, RELEASE_COLUMNS } from '$lib/domain/release-columns';
 import { csvRecord } from '$lib/formats/tables/write-csv';
 import { votableHead, votableRow, votableTail } from '$lib/formats/tables/write-votable';
-import { findRelease, type FoundRelease } from './find-release';
+import { describeRelease, findRelease, type FoundRelease } from './find-release';
 import type { RowFormat, RowQuery } from './parse-row-query';
-import { matchingRows, queryRows } from './query-rows';
+import { matchingRows } from './matching-rows';
+import { queryRows } from './query-rows';
 import { tableColumns } from './read-release';
 import { textStream } from './text-stream';
 
@@ -36,7 +37,7 @@ export function chooseFormat(query: RowQuery, accept: string | null): RowFormat 
 
 /** The whole release as CSV is the text that its published digest is of. */
 const isWholeCsv = (query: RowQuery, format: RowFormat) =>
-  format === 'csv' && Object.keys(query.filter).length === 0 && query.limit === undefined && !query.cursor;
+  format === 'csv' && Object.keys(query.filter).length === 0 && query.limit === undefined && query.after === 0;
 
 function etagOf({ release }: FoundRelease, query: RowQuery, format: RowFormat): string {
   if (isWholeCsv(query, format)) return `"${release.contentSha256}"`;
@@ -59,7 +60,8 @@ export async function serveRows(
   const etag = etagOf(found, query, format);
   const headers: Record<string, string> = {
     etag,
-    'cache-control': 'public, max-age=31536000, immutable',
+    // The latest release may be another one tomorrow; a numbered one never is.
+    'cache-control': which === 'latest' ? 'no-cache' : 'public, max-age=31536000, immutable',
     vary: 'accept',
   };
   const known = (request.ifNoneMatch ?? '').split(',').map((tag) => tag.trim().replace(/^W\//, ''));
@@ -93,13 +95,13 @@ async function* csvPieces({ release }: FoundRelease, query: RowQuery): AsyncGene
   }
 }
 
-async function* votablePieces({ catalogue, release }: FoundRelease, query: RowQuery): AsyncGenerator<string> {
+async function* votablePieces(found: FoundRelease, query: RowQuery): AsyncGenerator<string> {
   yield votableHead({
     tableName: 'rows',
-    description: `${catalogue.title}, release ${release.number}`,
+    description: describeRelease(found),
     columns: RELEASE_COLUMNS,
   });
-  for await (const batch of matchingRows(release.id, query)) {
+  for await (const batch of matchingRows(found.release.id, query)) {
     yield batch.map((row) => votableRow(cellsOf(row, RELEASE_COLUMNS))).join('');
   }
   yield votableTail;

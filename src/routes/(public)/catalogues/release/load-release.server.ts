@@ -1,8 +1,10 @@
 import { Refusal } from '$lib/domain/refusal';
 import type { QueriedRows, ReleasePageData } from './release-page-data';
 import { config } from '$lib/server/config/config';
+import { countRows } from '$lib/server/query/count-rows';
 import { parseRowQuery } from '$lib/server/query/parse-row-query';
-import { countRows, queryRows, readPlottedRows } from '$lib/server/query/query-rows';
+import { queryRows } from '$lib/server/query/query-rows';
+import { readPlottedRows } from '$lib/server/query/read-plotted-rows';
 import { readRelease } from '$lib/server/query/read-release';
 
 const ROWS_A_PAGE = 100;
@@ -20,7 +22,7 @@ async function queried(slug: string, which: string, url: URL): Promise<QueriedRo
       queryRows(slug, which, query),
       countRows(slug, which, query.filter),
     ]);
-    return { rows, next, count, before: query.cursor ? before : 0, problem: null };
+    return { rows, next, count, before: query.after > 0 ? before : 0, problem: null };
   } catch (error) {
     if (!(error instanceof Refusal) || error.code !== 'invalid') throw error;
     const { what, mend, where } = error;
