@@ -35,9 +35,16 @@ function withoutAnswer(truth: Truth): Truth {
 
 /** The spectrum and truth of one seed of a group. */
 export function simulateFor(group: Group, seed: number): { spectrum: Spectrum; truth: Truth } {
-  const inverted = group === 'sign-inverted';
-  const { spectrum, truth } = simulateSpectrum(drawRecipe(inverted ? 'star-forming' : group, seed), seed);
-  return inverted ? { spectrum: invertSign(spectrum), truth: withoutAnswer(truth) } : { spectrum, truth };
+  if (group !== 'sign-inverted') return simulateSpectrum(drawRecipe(group, seed), seed);
+  const recipe = drawRecipe('star-forming', seed);
+  // absorption turned over would be true emission at the true redshift: leave it out, so that nothing is to be found
+  recipe.noise.telluric = 0;
+  for (const { continuum } of recipe.objects) {
+    continuum.balmerAbsorptionAngstrom = 0;
+    continuum.metalStrength = 0;
+  }
+  const { spectrum, truth } = simulateSpectrum(recipe, seed);
+  return { spectrum: invertSign(spectrum), truth: withoutAnswer(truth) };
 }
 
 function runOne(group: Group, seed: number): Outcome {
