@@ -26,6 +26,7 @@ function lineFlux(
   errorKey: keyof ReleaseRow,
   word: string,
   line: string,
+  errorRemark = '',
 ): ReleaseColumn[] {
   const shared = { datatype: 'double', unit: LINE_FLUX } as const;
   return [
@@ -43,7 +44,7 @@ function lineFlux(
       key: errorKey,
       ucd: `stat.error;phot.flux;${word}`,
       verbosity: 3,
-      description: `standard error of the flux of ${line}`,
+      description: `standard error of the flux of ${line}${errorRemark}`,
     },
   ];
 }
@@ -146,7 +147,14 @@ export const RELEASE_COLUMNS: readonly ReleaseColumn[] = [
   ...lineFlux('flux_h_alpha_6565', 'hAlphaFlux', 'hAlphaFluxError', 'em.line.Halpha', 'H-alpha 6565'),
   ...lineFlux('flux_h_beta_4863', 'hBetaFlux', 'hBetaFluxError', 'em.line.Hbeta', 'H-beta 4863'),
   ...lineFlux('flux_o_iii_5008', 'o3Flux', 'o3FluxError', 'em.line.OIII', '[O III] 5008'),
-  ...lineFlux('flux_o_ii_3728', 'o2Flux', 'o2FluxError', 'em.line', '[O II] 3727 and 3730 together'),
+  ...lineFlux(
+    'flux_o_ii_3728',
+    'o2Flux',
+    'o2FluxError',
+    'em.line',
+    '[O II] 3727 and 3730 together',
+    '; the two in quadrature, which overstates it where the doublet is not resolved',
+  ),
   {
     ...plain,
     name: 'spectrum',
