@@ -68,16 +68,16 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
     await expect(async () => {
       await page.goto(`${origin}/review?night=${night}`);
       await expect(page.getByText('All looked at.')).toBeVisible({ timeout: 1_000 });
-    }).toPass();
+    }).toPass({ timeout: 20_000 });
     await page.goto(`${origin}/review?night=${night}&show=all`);
     await ready(page);
     await page.getByRole('rowheader').getByRole('link').first().click();
-    await ready(page);
+    await expect(page.getByRole('button', { name: /^Undo/ })).toBeEnabled();
     await page.keyboard.press('u');
     await expect(async () => {
       await page.goto(`${origin}/review?night=${night}`);
       await expect(page.getByText('1 of 6 spectra wait for your look')).toBeVisible({ timeout: 1_000 });
-    }).toPass();
+    }).toPass({ timeout: 20_000 });
   });
 
   await test.step('a curator drafts, another signs and freezes', async () => {
