@@ -102,9 +102,9 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
     await page.context().clearCookies();
     await page.goto(`${origin}/catalogues/halloran-lines/releases/${release}`);
     await ready(page);
-    await page.getByLabel('RA').fill('328.47961');
-    await page.getByLabel('Dec').fill('-26.28309');
-    await page.getByLabel('radius').fill('0.01');
+    await page.getByRole('textbox', { name: 'RA (deg)' }).fill('328.47961');
+    await page.getByRole('textbox', { name: 'Dec (deg)' }).fill('-26.28309');
+    await page.getByRole('textbox', { name: 'radius (deg)' }).fill('0.01');
     await page.getByRole('button', { name: 'Run query' }).click();
     await expect(page.getByRole('rowheader', { name: 'HZ-0022' })).toBeVisible();
 
