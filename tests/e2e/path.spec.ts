@@ -110,8 +110,8 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
 
     const rows = `${origin}/api/v1/catalogues/halloran-lines/releases/${release}/rows`;
     const answer = await request.get(`${rows}?ra=328.47961&dec=-26.28309&radius=0.01`);
-    const found = (await answer.json()).rows as { name: string; redshift: number }[];
-    expect(found.map(({ name }) => name)).toEqual(['HZ-0022']);
+    const found = (await answer.json()).rows as { target: string; redshift: number }[];
+    expect(found.map(({ target }) => target)).toEqual(['HZ-0022']);
     expect(Math.abs(found[0].redshift - truthOf('hz_0022.fits').redshift)).toBeLessThan(0.0005 * 1.56);
     const csv = await (await request.get(`${rows}?format=csv&redshift_min=0.55&redshift_max=0.56`)).text();
     expect(csv).toContain('HZ-0022');
