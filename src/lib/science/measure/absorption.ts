@@ -122,7 +122,7 @@ export interface AbsorptionEvidence {
  * @param banks filters for lines and for bands
  * @param star whether families seen only in stars take part
  * @param level continuum at an observed wavelength
- * @param noiseFactor scale of the errors that every hypothesis shares; the filters' own is undone
+ * @param noiseFactors scales of the errors that hypotheses of narrow and of wide features share; the filters' own is undone
  */
 export function absorptionEvidence(
   banks: { lines: FilterBank; bands: FilterBank },
@@ -130,7 +130,7 @@ export function absorptionEvidence(
   relativeResolution: number,
   logNoiseFlux: number,
   star: boolean,
-  noiseFactor: number,
+  noiseFactors: { lines: number; bands: number },
   level: (wavelength: number) => number,
 ): AbsorptionEvidence {
   let best: AbsorptionEvidence = { logEvidence: -Infinity, family: 'none', strongFeatures: 0, sigmaKms: 0 };
@@ -139,7 +139,7 @@ export function absorptionEvidence(
     const bank = family.wide ? banks.bands : banks.lines;
     for (const filter of bank.filters) {
       if (!family.wide && filter.sigmaKms < 150) continue;
-      const rescale = (filter.noiseFactor / noiseFactor) ** 2;
+      const rescale = (filter.noiseFactor / (family.wide ? noiseFactors.bands : noiseFactors.lines)) ** 2;
       const right: number[] = [];
       const information: number[] = [];
       const position: number[] = [];

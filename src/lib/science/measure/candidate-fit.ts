@@ -1,10 +1,10 @@
 import { equivalentWidthPrior } from './equivalent-width-prior';
 import { evidenceOfFamily } from './family-weight';
-import { artefactLogOdds, type Feature } from './features';
+import { significanceOnFeatures } from './feature-share';
+import { artefactLogOdds } from './features';
 import { BROAD_COMPONENTS, CORE_COMPONENTS, type LineComponent } from './fit/components';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
-import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import { breakLogRatio, LYMAN_COMPONENTS } from './lyman-alpha';
 import type { WeighContext } from './weigh-context';
@@ -16,8 +16,12 @@ export interface FittedCandidate {
   errors: FitErrors;
   kind: SuspectKind;
   family: LineFamily;
-  /** Log evidence against "nothing here", redshift integrated, artefacts allowed for. */
+  /** Log evidence against "nothing here", redshift integrated, artefacts allowed for (see `allowForArtefacts`). */
   logEvidence: number;
+  /** The same before artefacts are allowed for. */
+  ownEvidence: number;
+  /** Significance of its lines on every feature. */
+  onFeatures: Float64Array;
   /** Indices of the features its lines explain. */
   explained: number[];
   /** What the errors of the fit are multiplied by. */
@@ -108,14 +112,8 @@ export function weighFit(
       bestFamily = family;
     }
   }
-  const explained: number[] = [];
-  let artefacts = 0;
-  features.forEach((feature, index) => {
-    const own = significanceOn(fit, feature);
-    if (!(own > 2.5)) return;
-    explained.push(index);
-    artefacts += artefactLogOdds(feature, Math.min(feature.bounded, own) / errorScale);
-  });
+  const onFeatures = significanceOnFeatures(context, fit);
+  const explained = features.map((_, index) => index).filter((index) => onFeatures[index] > 2.5);
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
   return {
@@ -123,11 +121,32 @@ export function weighFit(
     errors,
     kind,
     family: bestFamily,
-    logEvidence: best + peakWidth - artefacts + broken + equivalentWidthPrior(context, fit),
+    logEvidence: best + peakWidth + broken + equivalentWidthPrior(context, fit),
+    ownEvidence: best + peakWidth + broken + equivalentWidthPrior(context, fit),
+    onFeatures,
     explained,
     noiseFactor: errorScale,
     breakLogRatio: broken,
   };
+}
+
+/**
+ * Takes from every candidate what artefacts would explain of the features it explains: as much as the filter saw there,
+ * so that a poorer description of the same feature pays for its poverty; in rough spectra all that it gains.
+ */
+export function allowForArtefacts(context: WeighContext, candidates: readonly FittedCandidate[]): void {
+  const { features } = context;
+  for (const candidate of candidates) {
+    let artefacts = 0;
+    for (const j of candidate.explained) {
+      const own = candidate.onFeatures[j];
+      // A forest of absorption makes a quasar's spectrum rough without making its emission doubtful.
+      const rough = features[j].rough && candidate.kind !== 'broad';
+      const counted = rough ? own : Math.min(features[j].bounded, own);
+      artefacts += artefactLogOdds(features[j], counted / candidate.noiseFactor);
+    }
+    candidate.logEvidence = candidate.ownEvidence - artefacts;
+  }
 }
 
 /**
@@ -138,31 +157,4 @@ export function misfitScale(fit: JointFit, noiseFactor: number): number {
   const reduced = fit.chiSquare / fit.degreesOfFreedom;
   const chance = 1 + 2 * Math.sqrt(2 / fit.degreesOfFreedom);
   return Math.max(noiseFactor, Math.sqrt(Math.max(0, reduced / chance)));
-}
-
-/** Significance, before scaling, of the fitted lines that lie on a feature; 0 where none does. */
-export function significanceOn(fit: JointFit, feature: Feature): number {
-  const stretch = Math.exp(fit.logScale);
-  const n = fit.components.length;
-  const index: number[] = [];
-  const share: number[] = [];
-  fit.components.forEach((component, i) => {
-    if (!(fit.amplitude[i] > 0) || component.step) return;
-    const sigma = Math.hypot(fit.sigmaKms[component.width], feature.sigmaKms, 60) / SPEED_OF_LIGHT_KMS;
-    let squares = 0;
-    let inside = 0;
-    for (const member of component.members) {
-      squares += member.share ** 2;
-      if (Math.abs(Math.log((member.rest * stretch) / feature.wavelength)) < 2.5 * sigma) inside += member.share ** 2;
-    }
-    if (inside > 0) {
-      index.push(i);
-      share.push(fit.amplitude[i] * Math.sqrt(inside / squares));
-    }
-  });
-  let total = 0;
-  for (let a = 0; a < index.length; a++) {
-    for (let b = 0; b < index.length; b++) total += share[a] * fit.gram[index[a] * n + index[b]] * share[b];
-  }
-  return Math.sqrt(Math.max(0, total));
 }

@@ -45,6 +45,9 @@ const RESOLVED_DOUBLET = 25;
 /** Probability that a redshift resting on one feature, or on few absorption features, can reach. */
 const SINGLE_FEATURE_CEILING = 0.88;
 const ABSORPTION_CEILING = 0.8;
+/** Broad lines that are shifted and eaten so often that they fix no redshift to 1,000 km/s without another line. */
+const UNRELIABLE = ['C IV', 'Si IV', 'Lyman-alpha', 'N V', 'He II', 'Al III'];
+const UNRELIABLE_CEILING = 0.95;
 /** Candidates refitted with every line; the others keep the fit they were weighed by. */
 const CANDIDATES_REFITTED = 3;
 
@@ -146,7 +149,8 @@ export function decide(
 function ceilingOf(evidence: Evidence): number {
   if (evidence.absorptionFeatures !== null) return evidence.absorptionFeatures >= 4 ? 1 : ABSORPTION_CEILING;
   const settled = evidence.independentLines >= 2 || evidence.resolvedDoublet || evidence.unmistakableProfile;
-  return settled ? 1 : SINGLE_FEATURE_CEILING;
+  if (!settled) return SINGLE_FEATURE_CEILING;
+  return evidence.unknownIdentity ? UNRELIABLE_CEILING : 1;
 }
 
 function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null): FirstRedshift {
@@ -174,7 +178,7 @@ function evidenceOf(prepared: PreparedSpectrum, hypotheses: Hypotheses, top: Ent
     };
   }
   const data = prepared.working;
-  const support = supportingLines(refit, hypotheses.banks.lines, data);
+  const support = supportingLines(refit, hypotheses.banks.lines, prepared);
   const clean = support.filter((line) => !line.nearSky).length;
   // Residuals of the night sky come in crowds: lines that all lie on it count as one unless there are many.
   const independentLines = clean > 0 || support.length >= 4 ? support.length : Math.min(1, support.length);
@@ -187,7 +191,8 @@ function evidenceOf(prepared: PreparedSpectrum, hypotheses: Hypotheses, top: Ent
   const broken = breakLogRatio(data, Math.expm1(refit.logScale));
   const unmistakableProfile =
     refit.lyman !== null && refit.lyman.wingShare > 0.25 && broken.logRatio > 4 && broken.significance > 5;
-  const onlyCarbon = support.length === 1 && support[0].name.startsWith('C IV');
+  const reliable = (line: LineSupport) => !UNRELIABLE.some((name) => line.name.startsWith(name));
+  const onlyCarbon = top.emission.kind === 'broad' && !support.some(reliable);
   return {
     independentLines,
     resolvedDoublet,
@@ -206,7 +211,7 @@ function emissionCandidate(
   first: boolean,
 ): Candidate {
   const data = prepared.working;
-  const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines, data);
+  const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines, prepared);
   const stated = redshiftWithErrors(refit, candidate.kind === 'broad');
   const scale = { flux: prepared.working.scale, errors: refit.errorScale };
   const lyman = candidate.kind === 'lyman';

@@ -1,5 +1,6 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { familyEvidence, type FluxLikelihood } from './evidence';
+import type { FitData } from './fit/fit-windows';
 import { RATIO_PRIORS } from './fit/components';
 import { invertPositiveDefinite } from './fit/solve';
 import { pixelOf } from './fit/line-profile';
@@ -84,21 +85,31 @@ function rowsOf(fit: JointFit, family: LineFamily, width: 0 | 1, profile: number
       ratio += family.lines[fit.components[pair.other].name][0];
       logPrior = pair.logPrior;
     }
-    const fault = faultOf(fit, component.members[0].rest, width, context);
+    const continuum = width === 1 ? context.stiffContinuum : context.continuum;
+    const fault = continuumFault(context.data, continuum, fit, component.members[0].rest, width);
     rows.push({ members, fault, logRatio: Math.log(ratio), scatter: line[1], logPrior });
   });
   return rows;
 }
 
-/** Variance of a line's flux from faults of the continuum under it. */
-function faultOf(fit: JointFit, rest: number, width: 0 | 1, context: WeighContext): number {
+/**
+ * Variance of a line's flux from faults of the continuum under it.
+ *
+ * @param continuum the flexible one for narrow lines, the stiff one for broad ones
+ */
+export function continuumFault(
+  data: FitData,
+  continuum: Float64Array,
+  fit: JointFit,
+  rest: number,
+  width: 0 | 1,
+): number {
   const centre = rest * Math.exp(fit.logScale);
-  const pixel = pixelOf(context.data.edges, centre);
-  const sigma = Math.hypot(context.data.lsfSigma[pixel], (centre * fit.sigmaKms[width]) / SPEED_OF_LIGHT_KMS);
-  const level = Math.abs((width === 1 ? context.stiffContinuum : context.continuum)[pixel]);
+  const pixel = pixelOf(data.edges, centre);
+  const sigma = Math.hypot(data.lsfSigma[pixel], (centre * fit.sigmaKms[width]) / SPEED_OF_LIGHT_KMS);
   // The wider a line, the more it looks like continuum.
   const wide = width === 1 ? Math.max(1, (2.3548 * fit.sigmaKms[1]) / 5000) : 1;
-  return (CONTINUUM_FAULT[width] * wide * level * 2.3548 * sigma) ** 2;
+  return (CONTINUUM_FAULT[width] * wide * Math.abs(continuum[pixel]) * 2.3548 * sigma) ** 2;
 }
 
 /**

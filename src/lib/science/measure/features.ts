@@ -1,5 +1,5 @@
 import { MASK } from '$lib/domain/spectrum';
-import type { FilterBank } from './detect';
+import type { FilterBank, GridFilter } from './detect';
 import { spikeAdvantage } from './cosmic-rays';
 import { CONTINUUM_FAULT } from './family-weight';
 import { lowerBound } from './noise';
@@ -22,13 +22,15 @@ export interface Feature {
   bounded: number;
   /** How often something that is no line makes a feature here, per resolution element. */
   artefactRate: number;
+  /** Clear of the sky, the spectrum has so many dips at this width that its continuum must be rough. */
+  rough: boolean;
 }
 
 /**
  * How often something that is no line makes a feature, per resolution element, before the spectrum's own dips are
  * counted: clean sky, bad sky, edge, spikes.
  */
-const ARTEFACT_RATE = { clean: 3e-6, sky: 3e-4, edge: 3e-4, spike: 1e-3 } as const;
+const ARTEFACT_RATE = { clean: 1e-6, sky: 2e-4, edge: 2e-4, spike: 1e-3 } as const;
 
 /**
  * Local maxima of significance over all widths of a bank.
@@ -59,7 +61,8 @@ export function findFeatures(
     if (best[k] >= threshold && best[k] >= best[k - 1] && best[k] > best[k + 1]) maxima.push(k);
   }
   maxima.sort((a, b) => best[b] - best[a] || a - b);
-  const rates = artefactRates(working, bank);
+  const lobes = sideLobes(working, bank, maxima, best, which);
+  const ratesOf = filters.map((filter) => artefactRates(working, bank, filter, lobes));
   const features: Feature[] = [];
   for (const k of maxima) {
     const logWavelength = start + k * step;
@@ -71,8 +74,9 @@ export function findFeatures(
     if (features.some((other) => Math.abs(other.logWavelength - logWavelength) < reach)) continue;
     const { nearSky, nearEdge } = surroundings(working, pixel, wavelength, 1.2 * reach);
     const spike = spikeAdvantage(working, residual, highestPixel(working, residual, pixel));
+    const rates = ratesOf[which[k]];
     const rate =
-      (nearSky ? rates.sky : nearEdge ? ARTEFACT_RATE.edge : rates.clean) +
+      (nearSky ? rates.sky : nearEdge ? Math.max(ARTEFACT_RATE.edge, rates.clean) : rates.clean) +
       ARTEFACT_RATE.spike * Math.exp(Math.max(-30, Math.min(30, 0.5 * spike.advantage)));
     const { noiseFactor, information } = filters[which[k]];
     const spread = wavelength * (reach / 2.5);
@@ -87,6 +91,7 @@ export function findFeatures(
       nearEdge,
       bounded: s,
       artefactRate: rate,
+      rough: rates.clean > ROUGH_RATE,
     });
     if (features.length >= 60) break;
   }
@@ -101,6 +106,12 @@ export function artefactLogOdds(feature: Feature, significance: number): number 
   const s = Math.max(1, significance);
   return softPlus(Math.log(feature.artefactRate) + 0.5 * s * s - Math.log((s * Math.log(1000)) / 2.507));
 }
+
+/** Rate of clean artefacts from which on a continuum counts as rough. */
+const ROUGH_RATE = 5e-3;
+
+/** No rate of artefacts is taken higher than this. */
+const HIGHEST_RATE = 0.03;
 
 /** Significance with the faults of the continuum counted as noise (see `CONTINUUM_FAULT`). */
 function bounded(significance: number, information: number, level: number, sigmaAngstrom: number): number {
@@ -136,32 +147,58 @@ function surroundings(
   }
 }
 
+/** Nodes in the side lobes of strong features, whose dips say nothing of the noise. */
+function sideLobes(
+  working: WorkingSpectrum,
+  bank: FilterBank,
+  maxima: readonly number[],
+  best: Float64Array,
+  which: Uint8Array,
+): Uint8Array {
+  const lobes = new Uint8Array(bank.count);
+  const middle = working.count >> 1;
+  const lsf = working.lsfSigma[middle] / working.wavelength[middle];
+  for (const k of maxima) {
+    if (best[k] < 7) break;
+    const sigma = Math.hypot(lsf, bank.filters[which[k]].sigmaKms / 299792.458, 350 / 299792.458);
+    const reach = Math.ceil((7 * sigma) / bank.step);
+    lobes.fill(1, Math.max(0, k - reach), Math.min(bank.count, k + reach + 1));
+  }
+  return lobes;
+}
+
 /**
- * Rates of artefacts from the spectrum itself: faults of noise and sky subtraction make dips as often as bumps, so dips
- * beyond 4.5 sigma, counted in and out of sky pixels, tell how many bumps to expect. Dips on a bright continuum may be
- * stellar absorption and are counted all the same: they then only make the engine more careful.
+ * Rates of artefacts from the spectrum itself, for one width: faults of noise and sky subtraction make dips as often as
+ * bumps, so dips beyond 4.5 sigma, counted in and out of sky pixels, tell how many bumps to expect. Dips on a bright
+ * continuum may be stellar absorption and are counted all the same: they then only make the engine more careful.
  */
-function artefactRates(working: WorkingSpectrum, bank: FilterBank): { clean: number; sky: number } {
-  const { count, start, step, filters } = bank;
-  const filter = filters[0];
+function artefactRates(
+  working: WorkingSpectrum,
+  bank: FilterBank,
+  filter: GridFilter,
+  lobes: Uint8Array,
+): { clean: number; sky: number } {
+  const { count, start, step } = bank;
   const elements = { clean: 1, sky: 1 };
   const dips = { clean: 0, sky: 0 };
   const middle = working.count >> 1;
   const resolution = Math.hypot(working.lsfSigma[middle] / working.wavelength[middle], filter.sigmaKms / 299792.458);
-  const element = (2.3548 * resolution) / step;
+  const perNode = step / (2.3548 * resolution);
   let pixel = 0;
+  const ratio = Math.exp(step);
+  let wavelength = Math.exp(start);
   for (let k = 1; k < count - 1; k++) {
-    if (!(filter.information[k] > 0)) continue;
-    const wavelength = Math.exp(start + k * step);
+    wavelength *= ratio;
+    if (!(filter.information[k] > 0) || lobes[k]) continue;
     while (pixel < working.count - 1 && working.edges[pixel + 1] <= wavelength) pixel++;
     const place = working.mask[pixel] & (MASK.skyLine | MASK.telluric) ? 'sky' : 'clean';
-    elements[place] += 1 / Math.max(1, element);
+    elements[place] += Math.min(1, perNode);
     const s = filter.significance[k];
     if (s < -4.5 && s <= filter.significance[k - 1] && s < filter.significance[k + 1]) dips[place]++;
   }
   return {
-    clean: Math.max(ARTEFACT_RATE.clean, Math.min(1e-3, Math.max(0, dips.clean - 1) / elements.clean)),
-    sky: Math.max(ARTEFACT_RATE.sky, Math.min(0.05, (dips.sky + 0.3) / elements.sky)),
+    clean: Math.max(ARTEFACT_RATE.clean, Math.min(HIGHEST_RATE, Math.max(0, dips.clean - 1) / elements.clean)),
+    sky: Math.max(ARTEFACT_RATE.sky, Math.min(HIGHEST_RATE, (dips.sky + 0.3) / elements.sky)),
   };
 }
 

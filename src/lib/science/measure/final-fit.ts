@@ -1,6 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candidate-fit';
 import type { FilterBank } from './detect';
+import { continuumFault } from './family-weight';
 import { componentShifts, type ComponentShift } from './fit/component-shifts';
 import { FULL_COMPONENTS, type LineComponent } from './fit/components';
 import type { FitData } from './fit/fit-windows';
@@ -8,6 +9,7 @@ import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
 import { pixelOf } from './fit/line-profile';
 import { lymanAlphaPeak } from './lyman-alpha';
+import type { PreparedSpectrum } from './prepare';
 import type { WorkingSpectrum } from './working-spectrum';
 
 /** The answer's fit at full depth. */
@@ -80,11 +82,15 @@ export interface LineSupport {
  * Lines of signal-to-noise 4 or more from different transitions: each in the joint fit and, on its own, in the filter
  * (3 sigma); tied lines count when the filter sees them, an unresolved doublet counts once.
  */
-export function supportingLines(final: FinalFit, bank: FilterBank, working: WorkingSpectrum): LineSupport[] {
+export function supportingLines(final: FinalFit, bank: FilterBank, prepared: PreparedSpectrum): LineSupport[] {
+  const { working, stiffContinuum } = prepared;
   const { fit, errors } = final;
   const support: LineSupport[] = [];
   fit.components.forEach((component, i) => {
-    const significance = fit.amplitude[i] / (errors.amplitude[i] * final.errorScale);
+    const error = errors.amplitude[i] * final.errorScale;
+    const rest = component.members[0].rest;
+    const fault = component.width === 1 ? continuumFault(working, stiffContinuum, fit, rest, 1) : 0;
+    const significance = fit.amplitude[i] / Math.sqrt(error * error + fault);
     if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red') || component.step) return;
     for (const member of component.members) {
       const wavelengthObserved = member.rest * Math.exp(fit.logScale);

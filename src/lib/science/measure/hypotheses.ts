@@ -1,7 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
-import { fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
+import { allowForArtefacts, fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
 import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
@@ -26,7 +26,7 @@ export interface Hypotheses {
   candidates: FittedCandidate[];
   /** Absorption redshifts beyond the stars', best first. */
   absorption: AbsorptionCandidate[];
-  /** A star within 600 km/s of rest. */
+  /** A star near rest. */
   star: AbsorptionCandidate;
   banks: { lines: FilterBank; bands: FilterBank };
   relativeResolution: number;
@@ -45,7 +45,12 @@ const IDENTITIES = [
 const FIRST_STEPS = 2;
 const MORE_STEPS = 4;
 const REFINED = 5;
-const STAR_KMS = 600;
+/**
+ * Log likelihood that broad shapes may bring before they are taken with a grain of salt: blends, iron, absorption and
+ * skew make two descriptions of one broad line differ by more than noise allows, and line ratios must decide then.
+ */
+const BROAD_INFORMATION = 1000;
+const STAR_KMS = 1500;
 /** Absorption is looked for up to here: beyond, its strong features leave the optical. */
 const ABSORPTION_REDSHIFT_LIMIT = 1.6;
 
@@ -74,6 +79,18 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     logNoiseFlux: typicalLogNoise(lines),
   };
   const suspects = suspectsOf(lines, bands, features, relativeResolution, context.logNoiseFlux, settings);
+  const tried = suspects
+    .map((suspect) => fitCandidate(context, suspect, FIRST_STEPS))
+    .filter((fitted): fitted is FittedCandidate => fitted !== null);
+  // Forest, iron and absorption roughen some identities of a quasar more than others: the best fit's misfit serves all.
+  const broad = tried.filter((t) => t.kind === 'broad');
+  const misfit = Math.min(...broad.map((t) => t.noiseFactor));
+  const loudest = Math.max(0, ...broad.map((t) => t.fit.gain)) / 2 / misfit ** 2;
+  const temper = broad.length > 0 ? Math.sqrt(1 + loudest / BROAD_INFORMATION) : 1;
+  const broadScale = misfit * temper;
+  const weighed = tried.map((t) => (t.kind === 'broad' ? weighFit(context, t.fit, 'broad', broadScale) : t));
+  allowForArtefacts(context, weighed);
+  weighed.sort((a, b) => b.logEvidence - a.logEvidence);
   const level = (wavelength: number) =>
     stiffContinuum[Math.min(working.count - 1, lowerBound(working.wavelength, wavelength))];
   const absorptionAt = (logScale: number, star: boolean): AbsorptionCandidate => ({
@@ -84,25 +101,16 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
       relativeResolution,
       context.logNoiseFlux,
       star,
-      context.noiseFactor,
+      { lines: context.noiseFactor, bands: context.noiseFactor * temper },
       level,
     ),
   });
-  const candidates: FittedCandidate[] = [];
-  const tried = suspects
-    .map((suspect) => fitCandidate(context, suspect, FIRST_STEPS))
-    .filter((fitted): fitted is FittedCandidate => fitted !== null);
-  // Forest, iron and absorption roughen some identities of a quasar more than others: the best fit's misfit serves all.
-  const broadScale = Math.min(...tried.filter((t) => t.kind === 'broad').map((t) => t.noiseFactor));
-  const weighed = tried
-    .map((t) => (t.kind === 'broad' ? weighFit(context, t.fit, 'broad', broadScale) : t))
-    .sort((a, b) => b.logEvidence - a.logEvidence);
-  for (let rank = 0; rank < weighed.length; rank++) {
-    const one = weighed[rank];
-    const scale = one.kind === 'broad' ? broadScale : undefined;
-    const fitted = rank < REFINED ? refineCandidate(context, one, MORE_STEPS, scale) : one;
-    fitted.logEvidence += Math.max(0, absorptionAt(fitted.fit.logScale, false).logEvidence);
-    candidates.push(fitted);
+  const candidates = weighed.map((one, rank) =>
+    rank < REFINED ? refineCandidate(context, one, MORE_STEPS, one.kind === 'broad' ? broadScale : undefined) : one,
+  );
+  allowForArtefacts(context, candidates);
+  for (const candidate of candidates) {
+    candidate.logEvidence += Math.max(0, absorptionAt(candidate.fit.logScale, false).logEvidence);
   }
   const range = [settings.redshiftMinimum, Math.min(settings.redshiftMaximum, ABSORPTION_REDSHIFT_LIMIT)] as const;
   const peaks = scanRedshifts(dark, ABSORPTION_SCAN_LINES, range, 6, 1000, -1);

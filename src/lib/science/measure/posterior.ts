@@ -6,7 +6,7 @@ const LOG_PRIOR_STAR = Math.log(0.3);
 const LOG_PRIOR_PASSIVE = Math.log(0.3);
 /** Log evidence from which on the spectrum is starlike, and |ln(1+z)| within which emission is then the star's own. */
 const STARLIKE = 8;
-const REST_LOG_SCALE = 600 / 299792.458;
+const REST_LOG_SCALE = 1500 / 299792.458;
 /** A redshift peak of absorption lines is about 200 km/s wide in a flat prior over ln(1+z) up to 2.14. */
 const LOG_ABSORPTION_PEAK = Math.log((2.5 * 200) / 299792.458 / 2.14);
 

@@ -3,13 +3,13 @@ import type { FinalFit } from './final-fit';
 
 /**
  * Velocities of quasar lines about the systemic redshift, km/s: mean and intrinsic scatter; the narrow lines first.
- * C IV's mean depends on luminosity and stands for a typical one.
+ * C IV's mean depends on luminosity and stands for a typical one; the narrow lines define the systemic redshift here.
  * Source: Shen et al. (2016, ApJ 831, 7), from memory; Lyman-alpha and Si IV taken like C IV.
  */
 const QUASAR_VELOCITIES: readonly (readonly [string, 0 | 1, number, number])[] = [
-  ['[O II] 3727', 0, 8, 46],
-  ['[O II] 3730', 0, 8, 46],
-  ['[O III] 5008', 0, -48, 56],
+  ['[O II] 3727', 0, 0, 46],
+  ['[O II] 3730', 0, 0, 46],
+  ['[O III] 5008', 0, 0, 56],
   ['Mg II 2796', 1, -57, 205],
   ['C III] 1909', 1, -229, 233],
   ['H-beta 4863', 1, -109, 400],
