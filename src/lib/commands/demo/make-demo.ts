@@ -22,8 +22,6 @@ import { demoFiles, demoInstrument } from './demo-files';
 const CIVIL_DATE = '2026-09-14';
 export const DEMO_CATALOGUE = 'halloran-lines';
 const LOOK_EVERY_MS = 500;
-/** Doubtful spectra that are left for whoever tries the demo. */
-const LEFT_WAITING = 24;
 
 async function ensureNight(observer: Actor): Promise<string> {
   const found = (await listNights(observer)).find((night) => night.civilDate === CIVIL_DATE);
@@ -45,19 +43,26 @@ async function whenMeasured(observer: Actor, nightId: string): Promise<NightSnap
   }
 }
 
-/** Two scientists go through the probable and the empty ones by what the engine shows them, and leave the rest waiting. */
+/** Of the secure ones every so many is confirmed by a look. */
+const CONFIRMED_EVERY = 3;
+
+/**
+ * Two scientists take turns at what the engine shows them: they accept the probable, confirm a share of the secure, and
+ * agree where it found nothing; the ambiguous are left for whoever tries the demo.
+ */
 async function judge(scientists: Actor[], nightId: string): Promise<void> {
   const queue = await listQueue(scientists[0], { night: nightId, show: 'all' });
-  const shown = queue
-    .filter(({ confidence }) => confidence === 'probable' || confidence === 'none')
-    .slice(LEFT_WAITING);
+  const shown = queue.filter(
+    ({ confidence }, i) =>
+      confidence === 'probable' || confidence === 'none' || (confidence === 'secure' && i % CONFIRMED_EVERY === 0),
+  );
   for (const [i, { id, judged }] of shown.entries()) {
     if (judged) continue;
     const scientist = scientists[i % scientists.length];
     const { spectrum } = await readSpectrum(scientist, id);
     const { confidence } = spectrum.measurement;
     const said: VerdictInput =
-      confidence === 'probable'
+      confidence === 'secure' || confidence === 'probable'
         ? { kind: 'candidate', candidate: 0, confidence, flags: [], comment: '' }
         : { kind: 'no redshift', flags: ['low signal'], comment: '' };
     await recordVerdict(scientist, id, said);
