@@ -31,6 +31,11 @@ export interface NightMeasurement {
   dec: number | null;
   state: 'waiting' | 'measured' | 'failed';
   medianSignalToNoise: number | null;
+  /** Mid-exposure, ISO 8601 UTC. */
+  midExposure: string | null;
+  /** Zero point by the sky's own lines, and the scatter of one line, km/s; null without a sky spectrum. */
+  skyOffsetKms: number | null;
+  skyScatterKms: number | null;
   redshift: number | null;
   redshiftError: number | null;
   redshiftErrorMeasured: number | null;

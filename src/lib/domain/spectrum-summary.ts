@@ -13,6 +13,12 @@ export interface SpectrumSummary {
   wavelengthMin: number;
   wavelengthMax: number;
   medianSignalToNoise: number | null;
+  /** Mid-exposure, ISO 8601 UTC; left out or null where the file does not say. */
+  midExposure?: string | null;
+  /** Zero point of the wavelength scale by the sky's own lines, km/s; null without a sky spectrum that shows them. */
+  skyOffsetKms?: number | null;
+  /** Robust scatter of one sky line's offset, km/s. */
+  skyScatterKms?: number | null;
   header: Record<string, string | number | boolean>;
   warnings: string[];
 }

@@ -3,9 +3,10 @@ import { Umzug } from 'umzug';
 import { log } from '../log/log';
 import { database } from './connection';
 import * as firstLight from './migrations/0001-first-light';
+import * as nightReport from './migrations/0003-night-report';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight];
+const MIGRATIONS = [firstLight, nightReport];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({

@@ -3,6 +3,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { Spectrum } from '$lib/domain/spectrum';
 import type { FileContent } from '$lib/domain/spectrum-summary';
 import { readSpectra } from '$lib/formats/read-spectra';
+import { checkSkyLines } from '$lib/science/frames/sky-lines';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
 
 /** Median of flux / sigma over usable pixels; null where there is none or the file gives no variance. */
@@ -13,6 +14,26 @@ function medianSignalToNoise(spectrum: Spectrum): number | null {
     .filter(Number.isFinite)
     .sort();
   return ratios.length ? ratios[ratios.length >> 1] : null;
+}
+
+/**
+ * Whether wavelengths can be taken to the observatory's frame, where sky lines stand still. Barycentric ones of a file
+ * without time or position can't: their sky lines would show the Earth's motion, up to 30 km/s.
+ */
+function isObserverFrameKnown({ specsys, observerFactor }: Spectrum): boolean {
+  return specsys === 'TOPOCENT' || observerFactor !== 1;
+}
+
+const JULIAN_DATE_OF_UNIX_EPOCH = 2_440_587.5;
+/** Years that a DATETIME holds and a telescope may mean; a card beyond them says nothing. */
+const KNOWN_YEARS = [1900, 2200] as const;
+
+/** ISO 8601 of a Julian date on the UTC scale; null where unknown or outside all telescopes' time. */
+function isoOfJulianDate(julianDate: number | null): string | null {
+  if (julianDate === null) return null;
+  const date = new Date((julianDate - JULIAN_DATE_OF_UNIX_EPOCH) * 86_400_000);
+  const year = date.getUTCFullYear();
+  return year >= KNOWN_YEARS[0] && year < KNOWN_YEARS[1] ? date.toISOString() : null;
 }
 
 /** What a file holds, and its spectra as the engine reads them, in the order of `content.spectra`. */
@@ -30,6 +51,7 @@ export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instr
   for (const raw of raws) {
     try {
       const spectrum = toSpectrum(raw, instrument);
+      const sky = isObserverFrameKnown(spectrum) ? checkSkyLines(spectrum) : null;
       spectra.push(spectrum);
       summaries.push({
         extension: raw.extension,
@@ -42,6 +64,9 @@ export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instr
         wavelengthMin: spectrum.wavelength[0],
         wavelengthMax: spectrum.wavelength[spectrum.wavelength.length - 1],
         medianSignalToNoise: medianSignalToNoise(spectrum),
+        midExposure: isoOfJulianDate(raw.frame.midExposureJulianDateUtc),
+        skyOffsetKms: sky?.offsetKms ?? null,
+        skyScatterKms: sky?.scatterKms ?? null,
         header: raw.header,
         warnings: [...raw.warnings, ...spectrum.warnings],
       });

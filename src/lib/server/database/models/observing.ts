@@ -73,6 +73,9 @@ export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, Infer
   declare wavelengthMin: number;
   declare wavelengthMax: number;
   declare medianSignalToNoise: number | null;
+  declare midExposure: CreationOptional<Date | null>;
+  declare skyOffsetKms: CreationOptional<number | null>;
+  declare skyScatterKms: CreationOptional<number | null>;
   declare header: Record<string, string | number | boolean>;
   declare state: CreationOptional<'waiting' | 'measured' | 'failed'>;
   declare problem: CreationOptional<Problem | null>;
@@ -135,6 +138,9 @@ export function defineObserving(sequelize: Sequelize): void {
       wavelengthMin: DOUBLE,
       wavelengthMax: DOUBLE,
       medianSignalToNoise: DOUBLE,
+      midExposure: DATE(6),
+      skyOffsetKms: DOUBLE,
+      skyScatterKms: DOUBLE,
       header: JSON,
       state: STRING(10),
       problem: JSON,

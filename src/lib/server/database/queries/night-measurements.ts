@@ -6,7 +6,8 @@ import { database } from '../connection';
 import { LATEST_MEASUREMENT } from './night-snapshot';
 import { CURRENT_VERDICT, judgedBy } from './verdicts';
 
-type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict'> & {
+type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midExposure'> & {
+  midExposure: Date | string | null;
   flags: string | Flag[] | null;
   line: string | null;
   lineSignalToNoise: number | null;
@@ -29,7 +30,8 @@ export async function nightMeasurementRows(
 ): Promise<(NightMeasurement & Partial<FullAnswer>)[]> {
   const rows = await database().query<Row>(
     `SELECT s.id AS spectrum, nf.name AS source, s.extension, s.row_index AS \`row\`, s.name, s.ra_degrees AS ra,
-        s.dec_degrees AS \`dec\`, s.state, s.median_signal_to_noise AS medianSignalToNoise, m.redshift,
+        s.dec_degrees AS \`dec\`, s.state, s.median_signal_to_noise AS medianSignalToNoise,
+        s.mid_exposure AS midExposure, s.sky_offset_kms AS skyOffsetKms, s.sky_scatter_kms AS skyScatterKms, m.redshift,
         m.redshift_error AS redshiftError, m.redshift_error_measured AS redshiftErrorMeasured,
         m.redshift_systemic AS redshiftSystemic, m.second_redshift AS secondRedshift, m.probability, m.confidence,
         m.noise_factor AS noiseFactor, m.object_class AS objectClass, m.flags, m.flux_unit AS fluxUnit,
@@ -46,9 +48,20 @@ export async function nightMeasurementRows(
     },
   );
   return rows.map(
-    ({ detail, flags, line, lineSignalToNoise, verdictRedshift, verdictConfidence, verdictBy, ...row }) => ({
+    ({
+      detail,
+      midExposure,
+      flags,
+      line,
+      lineSignalToNoise,
+      verdictRedshift,
+      verdictConfidence,
+      verdictBy,
+      ...row
+    }) => ({
       ...row,
       ...(typeof detail === 'string' ? (JSON.parse(detail) as Measurement) : detail),
+      midExposure: midExposure === null ? null : new Date(midExposure).toISOString(),
       flags: typeof flags === 'string' ? (JSON.parse(flags) as Flag[]) : (flags ?? []),
       strongestLine: line === null ? null : { line, signalToNoise: lineSignalToNoise ?? 0 },
       verdict: verdictBy ? { redshift: verdictRedshift, confidence: verdictConfidence, by: verdictBy } : null,

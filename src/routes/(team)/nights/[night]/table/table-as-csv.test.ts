@@ -19,6 +19,9 @@ const row = {
   objectClass: 'star-forming',
   secondRedshift: null,
   medianSignalToNoise: null,
+  midExposure: '2026-11-15T04:12:00.000Z',
+  skyOffsetKms: -1.25,
+  skyScatterKms: 2.5,
   noiseFactor: 1.04,
   flags: ['blend', 'sky residual'],
   strongestLine: { line: '[O III] 5008', signalToNoise: 21.7 },
@@ -33,6 +36,7 @@ describe('tableAsCsv', () => {
     expect(read.source).toBe('a "deep", field.fits');
     expect(read.flags).toBe('blend; sky residual');
     expect(read.verdict_redshift).toBe('');
+    expect([read.mid_exposure_utc, read.sky_offset_kms]).toEqual(['2026-11-15T04:12:00.000Z', '-1.25']);
   });
   it('keeps a spreadsheet from running a name as a formula, and leaves negative numbers alone', () => {
     const csv = tableAsCsv([row]);
