@@ -72,7 +72,9 @@ export function decide(
     })),
   ].sort((a, b) => b.probability - a.probability);
   const top = entries[0];
-  const refit0 = top?.emission ? finalFit(prepared.working, hypotheses.context.noiseFactor, top.emission, 12) : null;
+  const refit0 = top?.emission
+    ? finalFit(prepared.working, prepared.continuum, hypotheses.context.noiseFactor, top.emission, 12)
+    : null;
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
   const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;
@@ -88,7 +90,7 @@ export function decide(
   const refits = entries.slice(0, listed).map((entry, rank) => {
     if (!entry.emission) return null;
     if (rank >= CANDIDATES_REFITTED) return asFinal(entry.emission);
-    return rank === 0 ? refit0 : finalFit(prepared.working, context.noiseFactor, entry.emission, 3);
+    return rank === 0 ? refit0 : finalFit(prepared.working, prepared.continuum, context.noiseFactor, entry.emission, 3);
   });
   const candidates = entries.slice(0, listed).map((entry, rank) => {
     const share = rank === 0 ? probability : entry.probability * rest;

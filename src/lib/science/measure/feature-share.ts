@@ -24,7 +24,7 @@ export function significanceOnFeatures(context: WeighContext, fit: JointFit): Fl
   const shares: Share[][] = features.map(() => []);
   const faults = new Float64Array(features.length);
   fit.components.forEach((component, i) => {
-    if (!(fit.amplitude[i] > 0) || component.step) return;
+    if (!(fit.amplitude[i] > 0) || component.auxiliary) return;
     let squares = 0;
     const inside = new Map<number, number>();
     for (const member of component.members) {

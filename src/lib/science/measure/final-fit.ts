@@ -3,7 +3,7 @@ import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candida
 import type { FilterBank } from './detect';
 import { continuumFault } from './family-weight';
 import { componentShifts, type ComponentShift } from './fit/component-shifts';
-import { FULL_COMPONENTS, type LineComponent } from './fit/components';
+import { FULL_COMPONENTS, stellarBalmer, type LineComponent } from './fit/components';
 import type { FitData } from './fit/fit-windows';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
 import { jointFit, type JointFit } from './fit/joint-fit';
@@ -21,7 +21,7 @@ export interface FinalFit {
   /** ln(1+z) that is reported: that of the fit, or of Lyman-alpha's peak. */
   logScale: number;
   lyman: { fwhmKms: number; wingShare: number } | null;
-  /** Broad-line quasars alone: each component's own shift. */
+  /** Quasars and windy active nuclei alone: each component's own shift. */
   shifts: ComponentShift[] | null;
 }
 
@@ -35,19 +35,59 @@ function componentsFor(kind: FittedCandidate['kind']): readonly LineComponent[] 
  * Fits a candidate again with every line of its kind, to convergence.
  *
  * @param data with the spectrum's plain weights
+ * @param continuum flexible continuum, for stellar absorption under the Balmer lines
+ * @param continuum flexible continuum, for stellar absorption under the Balmer lines
  * @param noiseFactor measured noise over declared noise
  */
-export function finalFit(data: FitData, noiseFactor: number, candidate: FittedCandidate, steps: number): FinalFit {
+export function finalFit(
+  data: FitData,
+  continuum: Float64Array,
+  noiseFactor: number,
+  candidate: FittedCandidate,
+  steps: number,
+): FinalFit {
   const start = { logScale: candidate.fit.logScale, sigmaKms: candidate.fit.sigmaKms };
-  const fit = jointFit(data, componentsFor(candidate.kind), start, steps) ?? candidate.fit;
+  const fit =
+    jointFit(data, withStars(componentsFor(candidate.kind), data, continuum, candidate), start, steps) ?? candidate.fit;
   const errors = fitErrors(fit);
   const errorScale = misfitScale(fit, noiseFactor);
   if (candidate.kind !== 'lyman') {
-    const shifts = candidate.kind === 'broad' ? componentShifts(data, fit) : null;
+    const scattered = candidate.kind === 'broad' || isActive(candidate, fit);
+    const shifts = scattered ? componentShifts(data, fit) : null;
     return { fit, errors, errorScale, logScale: fit.logScale, lyman: null, shifts };
   }
   const peak = lymanAlphaPeak(data, fit);
   return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak, shifts: null };
+}
+
+/** Continuum signal-to-noise a pixel from which on stellar absorption is fitted; below, its effect hides in the noise. */
+const STELLAR_SIGNAL = 4;
+
+/** Adds stellar Balmer absorption to narrow lines where the continuum is bright enough to show it. */
+function withStars(
+  components: readonly LineComponent[],
+  data: FitData,
+  continuum: Float64Array,
+  candidate: FittedCandidate,
+): readonly LineComponent[] {
+  if (candidate.kind !== 'narrow') return components;
+  const stretch = Math.exp(candidate.fit.logScale);
+  let bright = false;
+  const level = (wavelength: number) => {
+    if (wavelength < data.wavelength[0] || wavelength > data.wavelength[data.count - 1]) return 0;
+    const pixel = pixelOf(data.edges, wavelength);
+    if (continuum[pixel] * Math.sqrt(data.weight[pixel]) > STELLAR_SIGNAL) bright = true;
+    return Math.max(0, continuum[pixel]);
+  };
+  const stars = stellarBalmer(level, stretch);
+  return stars && bright ? [...components, stars] : components;
+}
+
+/** Lines of an active nucleus wider than this (FWHM, km/s) have wings and winds that pull them about. */
+const WINDY_FWHM_KMS = 350;
+
+function isActive(candidate: FittedCandidate, fit: JointFit): boolean {
+  return candidate.family.objectClass === 'active nucleus' && 2.3548 * fit.sigmaKms[0] > WINDY_FWHM_KMS;
 }
 
 /** A candidate's own fit in the form of a final one. */
@@ -91,7 +131,7 @@ export function supportingLines(final: FinalFit, bank: FilterBank, prepared: Pre
     const rest = component.members[0].rest;
     const fault = component.width === 1 ? continuumFault(working, stiffContinuum, fit, rest, 1) : 0;
     const significance = fit.amplitude[i] / Math.sqrt(error * error + fault);
-    if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red') || component.step) return;
+    if (!(significance >= 4) || component.name.startsWith('Lyman-alpha red') || component.auxiliary) return;
     for (const member of component.members) {
       const wavelengthObserved = member.rest * Math.exp(fit.logScale);
       const width = component.width === 1 ? 350 : fit.sigmaKms[0];

@@ -1,5 +1,6 @@
 import type { LineFit } from '$lib/domain/measurement';
 import { FWHM_PER_SIGMA } from '../constants/physical';
+import { sigmaOf } from './fit/components';
 import type { FitErrors } from './fit/fit-errors';
 import type { FitData, FitWindow } from './fit/fit-windows';
 import type { JointFit } from './fit/joint-fit';
@@ -34,7 +35,7 @@ export function lineFitsOf(
   const lines: LineFit[] = [];
   const skip = lyman ? LYMAN_PROFILE_COMPONENTS : 0;
   fit.components.forEach((component, i) => {
-    if (!(fit.gram[i * n + i] > 0) || (i > 0 && i < skip) || component.step) return;
+    if (!(fit.gram[i * n + i] > 0) || (i > 0 && i < skip) || component.auxiliary) return;
     const group = i === 0 && lyman ? Array.from({ length: skip }, (_, k) => k) : [i];
     let flux = 0;
     let variance = 0;
@@ -91,7 +92,7 @@ function continuumAt(
     const profile = new Float64Array(length);
     const component = fit.components[c];
     for (const member of component.step ? [] : component.members) {
-      const sigma = fit.sigmaKms[component.width];
+      const sigma = sigmaOf(component, fit.sigmaKms);
       addLineProfile(data, member.rest * stretch, sigma, member.share, window.from, length, profile, null, null);
     }
     let sum = 0;

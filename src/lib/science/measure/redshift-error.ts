@@ -19,6 +19,17 @@ const QUASAR_VELOCITIES: readonly (readonly [string, 0 | 1, number, number])[] =
   ['Lyman-alpha 1216', 1, 0, 500],
 ];
 
+/**
+ * The same of a narrow-line active nucleus, whose [O III] winds carry blue: scatter alone, km/s, other lines 15.
+ * Common practice; the quasars' [O III] scatter of 56 km/s (Shen et al. 2016) bounds it from above.
+ */
+const WIND_SCATTER_KMS: Readonly<Record<string, number>> = {
+  '[O III] 5008': 45,
+  '[Ne V] 3427': 60,
+  '[Ne III] 3870': 30,
+};
+const CALM_SCATTER_KMS = 15;
+
 /** Redshift and errors of the redshift itself, not of ln(1+z). */
 export interface RedshiftWithErrors {
   redshift: number;
@@ -29,19 +40,21 @@ export interface RedshiftWithErrors {
 }
 
 /**
- * The reported redshift. For narrow lines it is the joint fit's. A broad-line quasar's lines disagree by more than their
+ * The reported redshift. For narrow lines it is the joint fit's, unless an active nucleus' winds pull them apart. A broad-line quasar's lines disagree by more than their
  * errors: each line's own shift is corrected by its mean velocity and weighted by measurement and intrinsic scatter
  * together, so that a strong C IV does not outvote Mg II or [O III].
  */
 export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWithErrors {
   const own = Math.min(1, final.errors.logScale * final.errorScale);
   const plain = Math.exp(final.logScale);
-  if (!broad || !final.shifts) return { redshift: plain - 1, measured: own * plain, total: own * plain };
+  if (!final.shifts) return { redshift: plain - 1, measured: own * plain, total: own * plain };
   let weight = 0;
   let sum = 0;
   for (const { component, shift, information } of final.shifts) {
     const line = final.fit.components[component];
-    const known = QUASAR_VELOCITIES.find(([name, width]) => name === line.name && width === line.width);
+    const known = broad
+      ? QUASAR_VELOCITIES.find(([name, width]) => name === line.name && width === line.width)
+      : ([line.name, line.width, 0, WIND_SCATTER_KMS[line.name] ?? CALM_SCATTER_KMS] as const);
     const significance = final.fit.amplitude[component] / (final.errors.amplitude[component] * final.errorScale);
     if (!known || !(information > 0) || !(significance > 4)) continue;
     const scatter = known[3] / SPEED_OF_LIGHT_KMS;
@@ -52,7 +65,11 @@ export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWit
     sum += w * (bounded - known[2] / SPEED_OF_LIGHT_KMS);
   }
   if (!(weight > 0))
-    return { redshift: plain - 1, measured: own * plain, total: Math.hypot(own, 400 / SPEED_OF_LIGHT_KMS) * plain };
+    return {
+      redshift: plain - 1,
+      measured: own * plain,
+      total: Math.hypot(own, (broad ? 400 : CALM_SCATTER_KMS) / SPEED_OF_LIGHT_KMS) * plain,
+    };
   const stretch = Math.exp(final.logScale + sum / weight);
   const total = Math.sqrt(1 / weight);
   return { redshift: stretch - 1, measured: own * stretch, total: Math.max(own, total) * stretch };

@@ -1,5 +1,5 @@
 import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
-import type { LineComponent } from './components';
+import { sigmaOf, type LineComponent } from './components';
 import type { FitData, FitWindow } from './fit-windows';
 import { addLineProfile, pixelOf, PROFILE_REACH } from './line-profile';
 
@@ -83,7 +83,7 @@ export function buildProfiles(
     arena.windowSlots[w] = slot;
     for (const c of window.components) {
       const component = components[c];
-      const sigma = sigmaKms[component.width];
+      const sigma = sigmaOf(component, sigmaKms);
       const [low, high] = component.step
         ? [window.from, stepEnd(data, window, component.members[0].rest * stretch)]
         : rangeOf(data, window, component, stretch, sigma);
@@ -100,6 +100,7 @@ export function buildProfiles(
           const centre = member.rest * stretch;
           addLineProfile(data, centre, sigma, member.share, low, size, profile, byShift, byWidth, offset);
         }
+        if (component.fixedSigmaKms !== undefined) byWidth.fill(0, offset, offset + size);
       }
       for (let k = 0; k < window.basis.length; k++) {
         const row = window.basis[k];

@@ -16,6 +16,10 @@ export interface LineComponent {
   width: 0 | 1;
   /** A drop of the continuum below the first member's wavelength instead of lines. */
   step?: boolean;
+  /** Velocity sigma that is not fitted, km/s. */
+  fixedSigmaKms?: number;
+  /** Helps the fit and is no emission line: left out of every list of lines. */
+  auxiliary?: boolean;
 }
 
 /** A prior on the ratio of two components of a density- or opacity-sensitive doublet. */
@@ -33,8 +37,8 @@ const sulphur = DOUBLET_RATIO_BOUNDS.sulphurTwo;
 
 /** Doublets whose unresolved centroid would else float: typical densities of H II regions, within the physical limits. */
 export const RATIO_PRIORS: readonly RatioPrior[] = [
-  { numerator: '[O II] 3730', denominator: '[O II] 3727', mean: 1.3, sigma: 0.2, low: oxygen.low, high: oxygen.high },
-  { numerator: '[S II] 6718', denominator: '[S II] 6733', mean: 1.3, sigma: 0.2, low: sulphur.low, high: sulphur.high },
+  { numerator: '[O II] 3730', denominator: '[O II] 3727', mean: 1.2, sigma: 0.3, low: oxygen.low, high: oxygen.high },
+  { numerator: '[S II] 6718', denominator: '[S II] 6733', mean: 1.2, sigma: 0.3, low: sulphur.low, high: sulphur.high },
   { numerator: 'Mg II 2796', denominator: 'Mg II 2804', mean: 1.5, sigma: 0.3, low: 1, high: 2 },
   { numerator: 'C IV 1548', denominator: 'C IV 1551', mean: 1.5, sigma: 0.3, low: 1, high: 2 },
   { numerator: '[C III] 1907', denominator: 'C III] 1909', mean: 1.4, sigma: 0.25, low: 0.2, high: 1.6 },
@@ -133,7 +137,7 @@ const pair = (a: string, b: string, width: 0 | 1): LineComponent => {
 /** Broad permitted lines of quasars; doublets count as one broad line. */
 export const BROAD_COMPONENTS: readonly LineComponent[] = [
   // The forest eats the continuum and the blue half of Lyman-alpha: a step, and a narrower core.
-  { ...componentOf('Lyman-alpha 1216', 1), name: 'Lyman-alpha step', step: true },
+  { ...componentOf('Lyman-alpha 1216', 1), name: 'Lyman-alpha step', step: true, auxiliary: true },
   componentOf('Lyman-alpha 1216', 0),
   componentOf('Lyman-alpha 1216', 1),
   pair('N V 1239', 'N V 1243', 1),
@@ -150,3 +154,41 @@ export const BROAD_COMPONENTS: readonly LineComponent[] = [
   componentOf('H-alpha 6565', 1),
   componentOf('Paschen-beta 12822', 1),
 ];
+
+/** Velocity sigma of a component at given widths, km/s. */
+export function sigmaOf(component: LineComponent, sigmaKms: readonly [number, number]): number {
+  return component.fixedSigmaKms ?? sigmaKms[component.width];
+}
+
+/** Stellar absorption under the Balmer lines, relative equivalent widths (common practice; H-alpha is shallower). */
+const STELLAR_BALMER: readonly (readonly [string, number])[] = [
+  ['H-alpha 6565', 0.7],
+  ['H-beta 4863', 1],
+  ['H-gamma 4342', 1],
+  ['H-delta 4103', 1],
+];
+/** Velocity sigma of stellar Balmer absorption, km/s: pressure broadening of A and F stars. */
+const STELLAR_SIGMA_KMS = 420;
+
+/**
+ * Stellar absorption under the Balmer lines as one component of negative lines with a common equivalent width.
+ *
+ * @param level continuum at an observed wavelength
+ * @param stretch 1 + z
+ * @returns null where the continuum is not positive under every line
+ */
+export function stellarBalmer(level: (wavelength: number) => number, stretch: number): LineComponent | null {
+  const members = STELLAR_BALMER.map(([name, width]) => {
+    const entry = lineByName(name);
+    return { entry, rest: entry.wavelengthVacuum, share: -width * level(entry.wavelengthVacuum * stretch) };
+  });
+  const deepest = Math.min(...members.map((member) => member.share));
+  if (!(deepest < 0)) return null;
+  return {
+    name: 'stellar Balmer absorption',
+    members: members.map((member) => ({ ...member, share: Math.min(0, -member.share / deepest) })),
+    width: 0,
+    fixedSigmaKms: STELLAR_SIGMA_KMS,
+    auxiliary: true,
+  };
+}

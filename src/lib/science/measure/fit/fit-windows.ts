@@ -1,6 +1,6 @@
 import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
 import { lowerBound } from '../noise';
-import type { LineComponent } from './components';
+import { sigmaOf, type LineComponent } from './components';
 import { pixelOf } from './line-profile';
 
 /** What a fit reads. */
@@ -54,7 +54,7 @@ export function cutWindows(
       if (centre < first || centre > last) continue;
       const pixel = pixelOf(data.edges, centre);
       const width = data.edges[pixel + 1] - data.edges[pixel];
-      const intrinsic = (centre * sigmaKms[component.width]) / SPEED_OF_LIGHT_KMS;
+      const intrinsic = (centre * sigmaOf(component, sigmaKms)) / SPEED_OF_LIGHT_KMS;
       const sigma = Math.sqrt(data.lsfSigma[pixel] ** 2 + intrinsic * intrinsic);
       const broad = component.width === 1;
       const half = broad ? 4.5 * sigma : Math.max(16 * width, 9 * sigma, (centre * 1500) / SPEED_OF_LIGHT_KMS);
