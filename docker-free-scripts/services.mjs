@@ -71,8 +71,13 @@ async function startMariadb(dataDir, logDir, socketDir) {
   const logPath = join(logDir, 'mariadb.log');
   if (!existsSync(join(dir, 'mysql'))) {
     mkdirSync(dir, { recursive: true });
-    const options = ['--no-defaults', `--datadir=${dir}`, '--auth-root-authentication-method=normal', '--skip-test-db'];
-    await run('mariadb-install-db', [...options, ...asRoot]);
+    // Without --force it refuses a machine whose own name can't be looked up, which we never use.
+    const options = ['--no-defaults', '--force', `--datadir=${dir}`, '--skip-test-db'];
+    const method = '--auth-root-authentication-method=normal';
+    await run('mariadb-install-db', [...options, method, ...asRoot]).catch((error) => {
+      rmSync(dir, { recursive: true, force: true });
+      throw new Error(`mariadb-install-db failed:\n${error.stdout}${error.stderr}`);
+    });
   }
   const port = await freePort();
   const socket = join(socketDir, 'mariadb.sock');
