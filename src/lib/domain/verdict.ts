@@ -8,6 +8,8 @@ export type VerdictKind = z.infer<typeof verdictKindSchema>;
 
 const comment = z.string().trim().max(4000).default('');
 const flags = z.array(flagSchema).max(12).default([]);
+/** Time from the spectrum's appearance to the verdict, seconds; over a day it was left lying. */
+const lookSeconds = z.coerce.number().min(0).max(86_400).optional();
 const redshift = z.coerce.number().min(-0.01).max(20);
 
 /** What a scientist decides on a spectrum. `candidate` is the place in the measurement's list, from 0. */
@@ -18,6 +20,7 @@ export const verdictInputSchema = z.discriminatedUnion('kind', [
     confidence: confidenceSchema.exclude(['none']),
     flags,
     comment,
+    lookSeconds,
   }),
   z.object({
     kind: z.literal('by hand'),
@@ -27,7 +30,8 @@ export const verdictInputSchema = z.discriminatedUnion('kind', [
     confidence: confidenceSchema.exclude(['none']),
     flags,
     comment,
+    lookSeconds,
   }),
-  z.object({ kind: z.literal('no redshift'), flags, comment }),
+  z.object({ kind: z.literal('no redshift'), flags, comment, lookSeconds }),
 ]);
 export type VerdictInput = z.infer<typeof verdictInputSchema>;

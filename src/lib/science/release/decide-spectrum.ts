@@ -1,7 +1,7 @@
 import type { Confidence } from '$lib/domain/confidence';
 import type { KeptOut } from '$lib/domain/draft-view';
 import type { DraftSelection } from '$lib/domain/release';
-import { verdictsAgree } from '../review/verdicts-agree';
+import { standingDecision } from '../review/standing-decision';
 
 /** A verdict that stands: the newest of its person, neither withdrawn nor superseded. */
 export interface StandingVerdict {
@@ -14,6 +14,14 @@ export interface StandingVerdict {
   /** Place of the candidate in the measurement's list, from 0. */
   candidatePlace: number | null;
   confidence: Confidence | null;
+  /** The verdict that this row brought back by an undo. */
+  restores: string | null;
+}
+
+/** What a third person decided on verdicts that differ; stands until it is taken back. */
+export interface StandingRuling extends Omit<StandingVerdict, 'restores'> {
+  /** The verdict it takes; null where it says something else. */
+  verdictId: string | null;
 }
 
 /** A spectrum with what the engine and people say of it. */
@@ -30,6 +38,7 @@ export interface JudgedSpectrum {
   confidence: Confidence | null;
   /** In the order of their time. */
   verdicts: StandingVerdict[];
+  ruling: StandingRuling | null;
 }
 
 /** What a spectrum would publish. `place` null: set by hand, no candidate chosen. */
@@ -38,6 +47,7 @@ export interface Answer {
   decidedBy: 'people' | 'engine';
   measurementId: string | null;
   verdictId: string | null;
+  rulingId: string | null;
   place: number | null;
   redshift: number;
   redshiftError: number | null;
@@ -45,18 +55,20 @@ export interface Answer {
 }
 
 /**
- * What one spectrum brings to a release: the newest standing verdict of people; where nobody has judged it and the
+ * What one spectrum brings to a release: the ruling that settles it, else the newest standing verdict of people; where nobody has judged it and the
  * selection takes the engine alone, the measurement; else the reason why nothing.
- * Verdicts by different people that disagree make an open question, which brings nothing.
+ * Verdicts that disagree make an open question, which brings nothing until a third person rules.
  */
 export function decideSpectrum(spectrum: JudgedSpectrum, selection: DraftSelection): Answer | KeptOut {
   if (selection.leaveOut?.includes(spectrum.targetName)) return 'left out';
-  const { verdicts } = spectrum;
+  const { verdicts, ruling } = spectrum;
+  const standing = standingDecision(verdicts, ruling);
+  if (standing === 'open') return 'open question';
   const newest = verdicts.at(-1);
-  if (newest) {
-    if (verdicts.some((a, i) => verdicts.slice(i + 1).some((b) => !verdictsAgree(a, b)))) return 'open question';
-    return answerOfPeople(spectrum, newest, selection);
+  if (standing === 'ruled' && ruling) {
+    return answerOfPeople(spectrum, ruling, { verdictId: ruling.verdictId, rulingId: ruling.id }, selection);
   }
+  if (newest) return answerOfPeople(spectrum, newest, { verdictId: newest.id, rulingId: null }, selection);
   if (spectrum.confidence === null) return 'nothing measured';
   if (spectrum.confidence === 'none' || spectrum.redshift === null) return 'no redshift';
   if (!selection.engineAlone) return 'not judged';
@@ -67,6 +79,7 @@ export function decideSpectrum(spectrum: JudgedSpectrum, selection: DraftSelecti
     decidedBy: 'engine',
     measurementId,
     verdictId: null,
+    rulingId: null,
     place: 0,
     redshift,
     redshiftError,
@@ -76,7 +89,8 @@ export function decideSpectrum(spectrum: JudgedSpectrum, selection: DraftSelecti
 
 function answerOfPeople(
   spectrum: JudgedSpectrum,
-  verdict: StandingVerdict,
+  verdict: Omit<StandingVerdict, 'restores'>,
+  traces: Pick<Answer, 'verdictId' | 'rulingId'>,
   selection: DraftSelection,
 ): Answer | KeptOut {
   const { redshift, confidence } = verdict;
@@ -86,7 +100,7 @@ function answerOfPeople(
     spectrum,
     decidedBy: 'people',
     measurementId: verdict.measurementId ?? spectrum.measurementId,
-    verdictId: verdict.id,
+    ...traces,
     place: verdict.kind === 'candidate' ? verdict.candidatePlace : null,
     redshift,
     redshiftError: verdict.redshiftError,

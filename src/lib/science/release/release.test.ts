@@ -15,6 +15,7 @@ const verdict = (id: string, redshift: number | null, more: Partial<StandingVerd
   redshiftError: 1e-5,
   candidatePlace: redshift === null ? null : 1,
   confidence: redshift === null ? null : 'secure',
+  restores: null,
   ...more,
 });
 const spectrum = (more: Partial<JudgedSpectrum> = {}): JudgedSpectrum => ({
@@ -29,6 +30,7 @@ const spectrum = (more: Partial<JudgedSpectrum> = {}): JudgedSpectrum => ({
   probability: 0.999,
   confidence: 'secure',
   verdicts: [],
+  ruling: null,
   ...more,
 });
 
@@ -37,6 +39,23 @@ describe('decideSpectrum', () => {
     const verdicts = [verdict('a', 0.3), verdict('b', 0.3012), verdict('c', 0.3024)];
     expect(decideSpectrum(spectrum({ verdicts: verdicts.slice(0, 2) }), selection)).toMatchObject({ redshift: 0.3012 });
     expect(decideSpectrum(spectrum({ verdicts }), selection)).toBe('open question');
+  });
+
+  it('takes a ruling over the verdicts that differ, and opens the question again for a later one', () => {
+    const verdicts = [verdict('a', 0.3), verdict('b', 0.7)];
+    const ruling = { ...verdict('c', 0.3), verdictId: 'a' };
+    expect(decideSpectrum(spectrum({ verdicts, ruling }), selection)).toMatchObject({
+      decidedBy: 'people',
+      redshift: 0.3,
+      verdictId: 'a',
+      rulingId: 'c',
+    });
+    expect(decideSpectrum(spectrum({ verdicts, ruling: { ...ruling, redshift: null } }), selection)).toBe(
+      'no redshift',
+    );
+    expect(decideSpectrum(spectrum({ verdicts: [...verdicts, verdict('d', 0.9)], ruling }), selection)).toBe(
+      'open question',
+    );
   });
 
   it('takes the engine only where nobody has judged and the selection says so', () => {

@@ -3,10 +3,11 @@ import { Umzug } from 'umzug';
 import { log } from '../log/log';
 import { database } from './connection';
 import * as firstLight from './migrations/0001-first-light';
+import * as reviewTogether from './migrations/0002-review-together';
 import * as nightReport from './migrations/0003-night-report';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight, nightReport];
+const MIGRATIONS = [firstLight, reviewTogether, nightReport];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({

@@ -75,7 +75,7 @@ export async function assembleRows(
   const rows: StoredReleaseRow[] = [];
   const unplaced: string[] = [];
   for (const { answer, candidate } of matched) {
-    const { spectrum, measurementId, redshift, confidence, decidedBy, verdictId } = answer;
+    const { spectrum, measurementId, redshift, confidence, decidedBy, verdictId, rulingId } = answer;
     if (spectrum.ra === null || spectrum.dec === null) {
       unplaced.push(spectrum.targetName);
       continue;
@@ -96,6 +96,7 @@ export async function assembleRows(
       spectrum: spectrum.spectrumId,
       measurementId,
       verdictId,
+      rulingId,
     });
   }
   rows.sort((a, b) => a.ra - b.ra || a.dec - b.dec || (a.name < b.name ? -1 : 1));

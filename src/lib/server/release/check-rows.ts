@@ -13,7 +13,10 @@ const plural = (n: number, one: string, many: string) => `${n.toLocaleString('en
 export function checkRows(assembled: AssembledRows, selection: DraftSelection, looks: number): DraftCheck[] {
   const { rows, openQuestions, unplaced, chosen } = assembled;
   const duplicates = findDuplicates(rows, selection.truePairs);
-  const fewer = chosen.filter(({ decidedBy, spectrum }) => decidedBy === 'people' && spectrum.verdicts.length < looks);
+  const fewer = chosen.filter(
+    ({ decidedBy, rulingId, spectrum }) =>
+      decidedBy === 'people' && rulingId === null && spectrum.verdicts.length < looks,
+  );
   const checks: DraftCheck[] = [
     {
       code: 'no-rows',

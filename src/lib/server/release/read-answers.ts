@@ -5,9 +5,11 @@ import {
   decideSpectrum,
   type Answer,
   type JudgedSpectrum,
+  type StandingRuling,
   type StandingVerdict,
 } from '$lib/science/release/decide-spectrum';
 import { measuredSpectra, standingVerdicts } from '../database/queries/drafts-judged';
+import { standingRulings } from '../database/queries/rulings';
 import type { Transaction } from '../database/in-transaction';
 
 /** What the spectra of a programme bring to a selection, before their lines are looked up. */
@@ -19,7 +21,7 @@ export interface Answers {
   openQuestions: JudgedSpectrum[];
 }
 
-/** Reads spectra, measurements and standing verdicts of a programme and decides on each spectrum and target. */
+/** Reads spectra, measurements, standing verdicts and rulings of a programme and decides on each spectrum and target. */
 export async function readAnswers(
   programmeId: string,
   selection: DraftSelection,
@@ -33,6 +35,10 @@ export async function readAnswers(
     byPerson.delete(verdict.userId);
     newest.set(spectrumId, byPerson.set(verdict.userId, verdict));
   }
+  const rulings = new Map<string, StandingRuling>();
+  for (const { spectrumId, ...ruling } of await standingRulings([programmeId], transaction)) {
+    rulings.set(spectrumId, ruling);
+  }
   const keptOut: Answers['keptOut'] = {
     'left out': 0,
     'open question': 0,
@@ -44,7 +50,8 @@ export async function readAnswers(
   const answers: Answer[] = [];
   const openQuestions: JudgedSpectrum[] = [];
   for (const row of spectra) {
-    const spectrum = { ...row, verdicts: [...(newest.get(row.spectrumId)?.values() ?? [])] };
+    const verdicts = [...(newest.get(row.spectrumId)?.values() ?? [])];
+    const spectrum = { ...row, verdicts, ruling: rulings.get(row.spectrumId) ?? null };
     const decided = decideSpectrum(spectrum, selection);
     if (typeof decided !== 'string') {
       answers.push(decided);

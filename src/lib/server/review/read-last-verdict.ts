@@ -1,5 +1,6 @@
 import { programmesWhere, type Actor } from '../auth/permissions';
 import { lastVerdict } from '../database/queries/verdicts';
+import { sayVerdict } from './say-verdict';
 
 /** The asker's newest verdict that stands, said in words: what undo would take back. */
 export async function readLastVerdict(
@@ -8,7 +9,6 @@ export async function readLastVerdict(
   if (programmesWhere(actor, 'spectrum.judge').length === 0) return null;
   const verdict = await lastVerdict(actor!.userId);
   if (!verdict) return null;
-  const { id, spectrumId, kind, redshift, confidence, name } = verdict;
-  const said = kind === 'no redshift' ? 'no redshift' : `${redshift?.toFixed(5)}, ${confidence}`;
-  return { text: `${said}, ${name}`, verdictId: id, spectrumId };
+  const { id, spectrumId, name } = verdict;
+  return { text: `${sayVerdict(verdict)}, ${name}`, verdictId: id, spectrumId };
 }

@@ -7,7 +7,8 @@ import { appendVerdict, lockSpectrum, standingVerdict, type NewVerdict } from '.
 
 /** The redshift a verdict stands for, from the candidate it names or as set by hand. */
 function decided(input: VerdictInput, { measurement, measurementId }: ReviewedSpectrum) {
-  const common = { measurementId, flags: input.flags, comment: input.comment };
+  const { flags, comment, lookSeconds = null } = input;
+  const common = { measurementId, flags, comment, lookSeconds };
   if (input.kind === 'no redshift') {
     return {
       ...common,

@@ -9,6 +9,7 @@ import {
   standingVerdict,
   type VerdictRow,
 } from '../database/queries/verdicts';
+import { sayTime, sayVerdict } from './say-verdict';
 
 /** The verdict that stood before this one was given; null where none did. */
 async function verdictBefore(verdict: VerdictRow): Promise<VerdictRow | null> {
@@ -32,10 +33,15 @@ export async function undoVerdict(actor: Actor | null, verdictId: string): Promi
     await lockSpectrum(spectrum.id, transaction);
     const standing = await standingVerdict(spectrum.id, userId, transaction);
     if (standing?.id !== verdictId) {
-      throw new Refusal('conflict', 'This verdict stands no more.', 'Look at the spectrum again.');
+      const now = standing ? `${sayVerdict(standing)}, given at ${sayTime(standing.createdAt)}` : 'none';
+      throw new Refusal(
+        'conflict',
+        `This verdict stands no more; yours that stands now is: ${now}.`,
+        'Look at the spectrum again.',
+      );
     }
     const before = await verdictBefore(verdict);
-    const common = { spectrumId: spectrum.id, userId, supersedes: verdictId };
+    const common = { spectrumId: spectrum.id, userId, supersedes: verdictId, lookSeconds: null };
     if (before) {
       const { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment } = before;
       const said = { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment };

@@ -84,6 +84,8 @@ export class Verdict extends Model<InferAttributes<Verdict>, InferCreationAttrib
   declare supersedes: string | null;
   /** The verdict that an undo brought back; this row repeats it. */
   declare restores: string | null;
+  /** How long the person looked before giving it, seconds; null where it is not known. */
+  declare lookSeconds: CreationOptional<number | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -158,6 +160,7 @@ export function defineAnswers(sequelize: Sequelize): void {
       comment: TEXT,
       supersedes: UUID,
       restores: UUID,
+      lookSeconds: DOUBLE,
       createdAt: DATE(6),
     },
     { sequelize, tableName: 'verdicts' },

@@ -3,6 +3,7 @@ import { defineAnswers } from './answers';
 import { defineObserving } from './observing';
 import { definePeople } from './people';
 import { definePublishing } from './publishing';
+import { defineTogether } from './together';
 
 /** Binds every model to a connection. Called once by `database()`. */
 export function defineModels(sequelize: Sequelize): void {
@@ -10,4 +11,5 @@ export function defineModels(sequelize: Sequelize): void {
   defineObserving(sequelize);
   defineAnswers(sequelize);
   definePublishing(sequelize);
+  defineTogether(sequelize);
 }

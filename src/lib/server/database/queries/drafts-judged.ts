@@ -40,13 +40,14 @@ export interface StandingVerdictRow {
   redshiftError: number | null;
   candidatePlace: number | null;
   confidence: 'secure' | 'probable' | 'ambiguous' | 'none' | null;
+  restores: string | null;
 }
 
 /** Verdicts in the programme that are neither withdrawn nor superseded, oldest first. */
 export function standingVerdicts(programmeId: string, transaction?: Transaction): Promise<StandingVerdictRow[]> {
   return database().query<StandingVerdictRow>(
     `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.measurement_id AS measurementId, w.kind, w.redshift,
-        w.redshift_error AS redshiftError, w.candidate_place AS candidatePlace, w.confidence
+        w.redshift_error AS redshiftError, w.candidate_place AS candidatePlace, w.confidence, w.restores
       FROM files f JOIN spectra s ON s.file_id = f.id JOIN verdicts w ON w.spectrum_id = s.id
       WHERE f.programme_id = :programmeId AND w.kind <> 'withdrawn'
         AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = w.id) ORDER BY w.id`,

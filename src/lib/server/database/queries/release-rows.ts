@@ -32,6 +32,8 @@ const KEYS = Object.keys(RELEASE_ROW_COLUMNS) as (keyof ReleaseRow)[];
 export interface StoredReleaseRow extends ReleaseRow {
   measurementId: string | null;
   verdictId: string | null;
+  /** The ruling that settled verdicts which differed. */
+  rulingId: string | null;
 }
 
 /** Rows of one INSERT; keeps the statement well under the server's packet size. */
@@ -47,6 +49,7 @@ export async function insertReleaseRows(
     'zone',
     'measurement_id',
     'verdict_id',
+    'ruling_id',
     ...KEYS.map((key) => RELEASE_ROW_COLUMNS[key]),
   ];
   for (let i = 0; i < rows.length; i += INSERT_CHUNK) {
@@ -57,6 +60,7 @@ export async function insertReleaseRows(
         zoneOf(row.dec),
         row.measurementId,
         row.verdictId,
+        row.rulingId,
         ...KEYS.map((key) => row[key] ?? null),
       ]);
     const places = values.map((value) => `(${value.map(() => '?').join(', ')})`).join(', ');

@@ -1,8 +1,13 @@
 import { redirect } from '@sveltejs/kit';
 import { parse, parseQuery } from '$lib/api/parse';
+import { assignmentInputSchema } from '$lib/domain/assignment';
+import { commentInputSchema } from '$lib/domain/spectrum-comment';
 import { verdictInputSchema } from '$lib/domain/verdict';
 import { guardedAction, guardedLoad } from '$lib/server/auth/guards';
+import { commentOn } from '$lib/server/review/comment-on';
 import { listQueue, queueFilterSchema } from '$lib/server/review/list-queue';
+import { passOn } from '$lib/server/review/pass-on';
+import { readExchange } from '$lib/server/review/read-exchange';
 import { readLastVerdict } from '$lib/server/review/read-last-verdict';
 import { readSpectrum } from '$lib/server/review/read-spectrum';
 import { recordVerdict } from '$lib/server/review/record-verdict';
@@ -12,12 +17,14 @@ import type { PageServerLoadEvent, RequestEvent } from './$types';
 
 export const load = guardedLoad('signed-in', async ({ params, locals, url }: PageServerLoadEvent) => {
   const filter = parseQuery(url, queueFilterSchema);
-  const [{ spectrum, canJudge }, queue, lastVerdict] = await Promise.all([
+  const [{ spectrum, canJudge }, exchange, everything, lastVerdict] = await Promise.all([
     readSpectrum(locals.actor, params.spectrum),
+    readExchange(locals.actor, params.spectrum),
     listQueue(locals.actor, { ...filter, show: 'all' }),
     readLastVerdict(locals.actor),
   ]);
-  return { spectrum, canJudge, queue: placeInQueue(queue, params.spectrum, url.search), lastVerdict };
+  const queue = placeInQueue(everything, params.spectrum, filter.show, url.search);
+  return { spectrum, exchange, canJudge, queue, lastVerdict };
 });
 
 export const actions = {
@@ -29,6 +36,16 @@ export const actions = {
     const next = String(form.get('next') ?? '');
     if (/^[0-9a-f-]{36}$/.test(next)) redirect(303, `/review/${next}${withoutAction(url)}`);
     return { verdictId };
+  }),
+  passOn: guardedAction('signed-in', async ({ params, locals, request }: RequestEvent) => {
+    const form = await request.formData();
+    const input = parse(assignmentInputSchema, Object.fromEntries(form), 'Passing on');
+    const { to } = await passOn(locals.actor, params.spectrum, input);
+    return { passedTo: to };
+  }),
+  comment: guardedAction('signed-in', async ({ params, locals, request }: RequestEvent) => {
+    const { text } = parse(commentInputSchema, Object.fromEntries(await request.formData()), 'The comment');
+    return commentOn(locals.actor, params.spectrum, text);
   }),
   undo: guardedAction('signed-in', async ({ locals, request, url }: RequestEvent) => {
     const form = await request.formData();

@@ -1,0 +1,55 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import type { Confidence } from '$lib/domain/confidence';
+import type { Flag } from '$lib/domain/flag';
+import type { VerdictKind } from '$lib/domain/verdict';
+import { database } from '../connection';
+
+/** For use inside a query with verdicts as `w`: the verdict stands. */
+const STANDS = `w.kind <> 'withdrawn' AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = w.id)`;
+
+export interface LookRow {
+  id: string;
+  spectrumId: string;
+  userId: string;
+  restores: string | null;
+  redshift: number | null;
+  redshiftError: number | null;
+}
+
+/** Verdicts in some programmes that stand, oldest first: just what agreement needs. Not for a reader's eyes as it is. */
+export async function standingLooks(programmeIds: readonly string[]): Promise<LookRow[]> {
+  if (programmeIds.length === 0) return [];
+  return database().query<LookRow>(
+    `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.restores, w.redshift,
+        w.redshift_error AS redshiftError
+      FROM verdicts w JOIN spectra s ON s.id = w.spectrum_id JOIN files f ON f.id = s.file_id
+      WHERE f.programme_id IN (:programmeIds) AND ${STANDS} ORDER BY w.id`,
+    { replacements: { programmeIds }, type: QueryTypes.SELECT },
+  );
+}
+
+export interface NamedVerdictRow extends LookRow {
+  by: string;
+  measurementId: string | null;
+  kind: VerdictKind;
+  candidatePlace: number | null;
+  confidence: Confidence | null;
+  flags: Flag[];
+  comment: string;
+  createdAt: Date;
+}
+
+/** The verdicts on one spectrum that stand, oldest first, with the names of who gave them. Asked for only where the reader may see them. */
+export async function namedVerdicts(spectrumId: string, transaction?: Transaction): Promise<NamedVerdictRow[]> {
+  const rows = await database().query<NamedVerdictRow & { flags: string | Flag[] }>(
+    `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, u.name AS \`by\`, w.restores,
+        w.measurement_id AS measurementId, w.kind, w.redshift, w.redshift_error AS redshiftError,
+        w.candidate_place AS candidatePlace, w.confidence, w.flags, w.comment, w.created_at AS createdAt
+      FROM verdicts w JOIN users u ON u.id = w.user_id WHERE w.spectrum_id = :spectrumId AND ${STANDS} ORDER BY w.id`,
+    { replacements: { spectrumId }, type: QueryTypes.SELECT, transaction },
+  );
+  return rows.map((row) => ({
+    ...row,
+    flags: typeof row.flags === 'string' ? (JSON.parse(row.flags) as Flag[]) : row.flags,
+  }));
+}

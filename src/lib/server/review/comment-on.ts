@@ -1,0 +1,22 @@
+import { Refusal } from '$lib/domain/refusal';
+import { may, permit, type Actor } from '../auth/permissions';
+import { inTransaction } from '../database/in-transaction';
+import { appendComment, everJudged } from '../database/queries/comments';
+import { findReviewed } from '../database/queries/reviewed-spectrum';
+import { lockSpectrum } from '../database/queries/verdicts';
+
+/**
+ * Appends a comment to a spectrum. One by a person who judges, or written once a verdict was given, may tell a verdict:
+ * it shows to those who judge only after their own.
+ */
+export async function commentOn(actor: Actor | null, spectrumId: string, text: string): Promise<{ commentId: string }> {
+  const spectrum = await findReviewed(spectrumId);
+  if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
+  const { userId } = permit(actor, 'spectrum.comment', spectrum.programmeId);
+  const judges = may(actor, 'spectrum.judge', spectrum.programmeId);
+  return inTransaction(async (transaction) => {
+    await lockSpectrum(spectrumId, transaction);
+    const shownToAll = !judges && !(await everJudged(spectrumId, transaction));
+    return { commentId: await appendComment({ spectrumId, userId, text, shownToAll }, transaction) };
+  });
+}

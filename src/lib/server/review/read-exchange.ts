@@ -1,0 +1,64 @@
+import type { ShownComment } from '$lib/domain/spectrum-comment';
+import { Refusal } from '$lib/domain/refusal';
+import { may, permit, type Actor } from '../auth/permissions';
+import { judgesOf, standingAssignment, type AssignmentRow } from '../database/queries/assignments';
+import { commentsOn } from '../database/queries/comments';
+import { namedVerdicts } from '../database/queries/looks';
+import { findReviewed } from '../database/queries/reviewed-spectrum';
+import { standingRuling } from '../database/queries/rulings';
+import { sightOf } from './sees-verdicts';
+
+/** What people have said to one another about a spectrum, as far as the reader may see it. */
+export interface Exchange {
+  /** Why it is here by someone's wish, in words. */
+  passedOn: string | null;
+  /** People it can be passed on to; empty where the reader may not. */
+  people: { id: string; name: string }[];
+  /** Id of the person who has it, so that it can be taken back. */
+  holder: string | null;
+  comments: ShownComment[];
+  /** Comments that show once the reader has given a verdict. */
+  hiddenComments: number;
+  mayComment: boolean;
+  /** What became of verdicts that differ; null where the reader may not know, or none do. */
+  question: { standing: 'open' | 'ruled'; mayRule: boolean } | null;
+}
+
+function sayAssignment(assignment: AssignmentRow, reader: Actor, sees: boolean): string {
+  const { assignedBy, assignedByName, userId, userName, note, told } = assignment;
+  const giver = assignedBy === reader.userId ? 'you' : assignedByName;
+  const taker = userId === reader.userId ? 'you' : userName;
+  const head = giver === 'you' && taker === 'you' ? 'kept by you for yourself' : `passed on to ${taker} by ${giver}`;
+  if (!note) return head;
+  const hidden = told && !sees && assignedBy !== reader.userId;
+  return hidden ? `${head}, with a note that shows after your verdict` : `${head}: “${note}”`;
+}
+
+/** Comments, who has the spectrum, and whether verdicts on it differ. Looks stay blind. */
+export async function readExchange(actor: Actor | null, spectrumId: string): Promise<Exchange> {
+  const spectrum = await findReviewed(spectrumId);
+  if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
+  const { programmeId } = spectrum;
+  const reader = permit(actor, 'spectrum.read', programmeId);
+  const [verdicts, ruling, assignment, comments, judges] = await Promise.all([
+    namedVerdicts(spectrumId),
+    standingRuling(spectrumId),
+    standingAssignment(spectrumId),
+    commentsOn(spectrumId),
+    may(actor, 'spectrum.assign', programmeId) ? judgesOf(programmeId) : [],
+  ]);
+  const { standing, sees, mayRule } = sightOf(reader, programmeId, verdicts, ruling);
+  // A third person to an open question may still give a look of their own instead: comments wait for it.
+  const open = !may(actor, 'spectrum.judge', programmeId) || (sees && !mayRule);
+  const shown = comments.filter(({ shownToAll, userId }) => open || shownToAll || userId === reader.userId);
+  const asked = standing === 'open' || standing === 'ruled';
+  return {
+    passedOn: assignment && !assignment.done ? sayAssignment(assignment, reader, open) : null,
+    people: judges,
+    holder: assignment && !assignment.done ? assignment.userId : null,
+    comments: shown.map(({ id, by, text, createdAt }) => ({ id, by, text, at: new Date(createdAt).toISOString() })),
+    hiddenComments: comments.length - shown.length,
+    mayComment: may(actor, 'spectrum.comment', programmeId),
+    question: sees && asked ? { standing, mayRule } : null,
+  };
+}
