@@ -64,7 +64,9 @@ describe('every use-case asks for permission', () => {
     const text = readFileSync(path, 'utf8');
     const takesActor = /\bactor: Actor\b/.test(text);
     if (!takesActor) return;
-    const asks = /\b(permit|may|programmesWhere|requireAdmin|admitToNight|readNight|readSpectrum)\(/.test(text);
+    const asks = /\b(permit|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
+      text,
+    );
     const isPublic = /Public use-case/.test(text);
     expect(asks || isPublic, `${path} takes an actor and never asks what they may`).toBe(true);
   });

@@ -6,30 +6,31 @@ import { signIn } from './people';
 const THEMES = ['light', 'dark', 'dome'];
 const WIDTHS = [1440, 390];
 
-/** Pages by whoever sees them; `first` follows the first link of that kind. */
-const PAGES: { name: string; who: string | null; path: string; first?: string }[] = [
+/** Pages by whoever sees them; `first` follows the first link of that kind, `then` goes on from there. */
+const PAGES: { name: string; who: string | null; path: string; first?: string; then?: string }[] = [
   { name: 'landing', who: null, path: '/' },
   { name: 'sign-in', who: null, path: '/sign-in' },
   { name: 'catalogues', who: null, path: '/catalogues' },
   { name: 'catalogue', who: null, path: '/catalogues/halloran-lines' },
   { name: 'nights', who: 'Rua', path: '/nights' },
   { name: 'night', who: 'Rua', path: '/nights', first: 'a[href^="/nights/"]' },
+  { name: 'night report', who: 'Rua', path: '/nights', first: 'a[href^="/nights/"]', then: '/report' },
   { name: 'review list', who: 'Ines', path: '/review' },
   { name: 'review', who: 'Ines', path: '/review', first: 'a[href^="/review/"]' },
   { name: 'programmes', who: 'Maren', path: '/programmes' },
   { name: 'drafts', who: 'Maren', path: '/drafts' },
 ];
 
-async function settle(page: Page, first?: string): Promise<void> {
+async function settle(page: Page, first?: string, then = ''): Promise<void> {
   await page.locator('[data-ready]').waitFor({ state: 'attached' });
   if (!first) return;
   const href = await page.locator(first).first().getAttribute('href');
-  await page.goto(`${readState().origin}${href}`);
+  await page.goto(`${readState().origin}${href}${then}`);
   await page.locator('[data-ready]').waitFor({ state: 'attached' });
   await page.waitForLoadState('networkidle').catch(() => {});
 }
 
-for (const { name, who, path, first } of PAGES) {
+for (const { name, who, path, first, then } of PAGES) {
   test(`${name}: no axe violation in any theme or width, nothing wider than the screen, no fault in the console`, async ({
     page,
   }) => {
@@ -43,7 +44,7 @@ for (const { name, who, path, first } of PAGES) {
       for (const width of WIDTHS) {
         await page.setViewportSize({ width, height: 900 });
         await page.goto(`${origin}${path}`);
-        await settle(page, first);
+        await settle(page, first, then);
         const { violations } = await new AxeBuilder({ page }).analyze();
         expect(
           violations.map(({ id, nodes }) => `${id}: ${nodes[0].html}`),

@@ -19,6 +19,7 @@ const repeat = (
   name,
   openBits,
   needed: need,
+  placeKnown: true,
   up: hoursUp > 0 ? { fromMs: 0, untilMs: hoursUp * HOUR } : null,
 });
 
@@ -32,15 +33,15 @@ describe('rankRepeats', () => {
       repeat('bound', 9, needed(900, true), 1),
       repeat('no figure', 1, null, 1),
     ];
-    const order = rankRepeats(repeats, true).map(({ name }) => name);
+    const order = rankRepeats(repeats).map(({ name }) => name);
     expect(order).toEqual(['cheap', 'dear', 'bound', 'too long', 'no figure', 'set']);
   });
   it('tells what fits, what fits in part, what is down and what is not known', () => {
-    expect(reachOf(repeat('', 1, needed(3600), 1), true)).toBe('fits');
-    expect(reachOf(repeat('', 1, needed(3601), 1), true)).toBe('in part');
-    expect(reachOf(repeat('', 1, needed(60), 0), true)).toBe('down');
-    expect(reachOf(repeat('', 1, needed(null), 1), true)).toBe('not known');
-    expect(reachOf(repeat('', 1, needed(60), 1), false)).toBe('not known');
+    expect(reachOf(repeat('', 1, needed(3600), 1))).toBe('fits');
+    expect(reachOf(repeat('', 1, needed(3601), 1))).toBe('in part');
+    expect(reachOf(repeat('', 1, needed(60), 0))).toBe('down');
+    expect(reachOf(repeat('', 1, needed(null), 1))).toBe('not known');
+    expect(reachOf({ ...repeat('', 1, needed(60), 1), placeKnown: false })).toBe('not known');
   });
   it('counts worth in bits for an hour', () => {
     expect(worthBitsPerHour(repeat('', 1.5, needed(1800), 1))).toBe(3);

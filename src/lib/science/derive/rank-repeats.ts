@@ -6,7 +6,9 @@ export interface Repeat {
   /** What is open of its answer, bits (Shannon 1948). */
   openBits: number;
   needed: ExposureNeeded | null;
-  /** When it can still be observed tonight; null where it can't or the site is not known. */
+  /** Whether the site and the target's position are known; else nothing can be said of what is up. */
+  placeKnown: boolean;
+  /** When it can still be observed tonight; null where it can't. */
   up: Span | null;
 }
 
@@ -16,8 +18,8 @@ export type Reach = 'fits' | 'in part' | 'down' | 'not known';
 const SECONDS_AN_HOUR = 3600;
 
 /** Whether what is needed fits into the time that is left. */
-export function reachOf({ needed, up }: Repeat, siteKnown: boolean): Reach {
-  if (!siteKnown) return 'not known';
+export function reachOf({ needed, up, placeKnown }: Repeat): Reach {
+  if (!placeKnown) return 'not known';
   if (!up || up.untilMs <= up.fromMs) return 'down';
   if (!needed || needed.extraSeconds === null) return 'not known';
   return needed.extraSeconds * 1000 <= up.untilMs - up.fromMs ? 'fits' : 'in part';
@@ -36,9 +38,9 @@ const REACHES: readonly Reach[] = ['fits', 'in part', 'not known', 'down'];
  * then those that it fits in part, then the rest; within each by bits settled for an hour; lower bounds and those
  * without a figure after the others. Does not change its input.
  */
-export function rankRepeats<T extends Repeat>(repeats: readonly T[], siteKnown: boolean): T[] {
+export function rankRepeats<T extends Repeat>(repeats: readonly T[]): T[] {
   const key = (repeat: T) => [
-    REACHES.indexOf(reachOf(repeat, siteKnown)),
+    REACHES.indexOf(reachOf(repeat)),
     repeat.needed?.atLeast ? 1 : 0,
     -(worthBitsPerHour(repeat) ?? -1),
   ];
