@@ -36,6 +36,8 @@ const TABLE = {
   undo: { label: 'undo the last verdict', scope: 'review', keys: ['u'] },
   flags: { label: 'to the flags', scope: 'review', keys: ['f'] },
   comment: { label: 'to the comment', scope: 'review', keys: ['c'] },
+  passOn: { label: 'pass it on to someone', scope: 'review', keys: ['g'] },
+  question: { label: 'to the open question', scope: 'review', keys: ['q'] },
   previous: { label: 'previous, without a verdict', scope: 'review', keys: [','] },
   next: { label: 'next, without a verdict', scope: 'review', keys: ['.'] },
 } as const satisfies Record<string, Command>;

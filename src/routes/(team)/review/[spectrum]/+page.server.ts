@@ -40,8 +40,7 @@ export const actions = {
   passOn: guardedAction('signed-in', async ({ params, locals, request }: RequestEvent) => {
     const form = await request.formData();
     const input = parse(assignmentInputSchema, Object.fromEntries(form), 'Passing on');
-    const { to } = await passOn(locals.actor, params.spectrum, input);
-    return { passedTo: to };
+    return { passedTo: (await passOn(locals.actor, params.spectrum, input)).to };
   }),
   comment: guardedAction('signed-in', async ({ params, locals, request }: RequestEvent) => {
     const { text } = parse(commentInputSchema, Object.fromEntries(await request.formData()), 'The comment');

@@ -11,6 +11,9 @@ interface Desk {
   help: { open: () => void };
   lines: { open: () => void };
   names: { open: () => void };
+  passing: { open: () => void } | null;
+  /** Goes to the question on this spectrum, where there is one. */
+  question: () => void;
   leaf: (by: 1 | -1) => void;
   canJudge: boolean;
 }
@@ -44,6 +47,8 @@ export function reviewKeys(desk: () => Desk): KeyHandlers {
     undo: judged(() => document.querySelector<HTMLFormElement>('#undo-verdict')?.requestSubmit()),
     flags: judged(({ bar }) => void bar.focusFlags()),
     comment: judged(({ bar }) => void bar.focusComment()),
+    passOn: () => desk().passing?.open(),
+    question: () => desk().question(),
     previous: () => desk().leaf(-1),
     next: () => desk().leaf(1),
   };

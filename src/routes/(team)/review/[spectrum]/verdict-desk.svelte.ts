@@ -51,6 +51,9 @@ export class VerdictDesk {
       return cancel();
     }
     review.given = true;
+    if (review.shownAt !== null) {
+      formData.set('lookSeconds', ((performance.now() - review.shownAt) / 1000).toFixed(1));
+    }
     this.pending++;
     const said = kind === 'no redshift' ? 'no redshift' : `${review.redshift.toFixed(5)}, ${review.confidence}`;
     const sent = { spectrumId: review.id, name, action: action.toString(), form: formData };
