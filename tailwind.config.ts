@@ -4,7 +4,8 @@ import type { Config } from 'tailwindcss';
 const token = (names: string[]) => Object.fromEntries(names.map((name) => [name, `var(--${name})`]));
 const numbered = (prefix: string, names: string[]) =>
   Object.fromEntries(names.map((name) => [name, `var(--${prefix}-${name})`]));
-const size = (name: string) => [`var(--text-${name})`, { lineHeight: `var(--lead-${name})` }] as [string, { lineHeight: string }];
+const size = (name: string) =>
+  [`var(--text-${name})`, { lineHeight: `var(--lead-${name})` }] as [string, { lineHeight: string }];
 
 export default {
   content: ['./src/**/*.{html,svelte,ts}'],

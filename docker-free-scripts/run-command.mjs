@@ -31,5 +31,10 @@ if (!existsSync(output) || statSync(output).mtimeMs < sourcesChangedAt()) {
     process.exit(1);
   }
 }
+// Commands of an installation find its services where `start` wrote them, unless the environment says otherwise.
+const kept = join(process.env.DATA ?? join(root, 'data'), 'environment.json');
+if (!process.env.DATABASE_URL && existsSync(kept)) {
+  for (const [key, value] of Object.entries(JSON.parse(readFileSync(kept, 'utf8')))) process.env[key] ??= value;
+}
 process.argv = [process.argv[0], output, ...rest];
 await import(pathToFileURL(output).href);

@@ -1,5 +1,6 @@
 // Runs every check in order and counts them: each static check is one, each test is one. The last line is the sum.
 import { spawn } from 'node:child_process';
+import { resolve } from 'node:path';
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs';
 
 const RESULTS = 'test-results';
@@ -47,9 +48,9 @@ async function vitest(...projects) {
 
 async function browser() {
   process.stdout.write('\n== end to end\n');
-  const path = `${RESULTS}/playwright.json`;
+  const path = resolve(RESULTS, 'playwright.json');
   const args = ['playwright', 'test', '--config', 'tests/e2e/playwright.config.ts', '--reporter=list,json'];
-  const code = await run('npx', args, { PLAYWRIGHT_JSON_OUTPUT_NAME: path });
+  const code = await run('npx', args, { PLAYWRIGHT_JSON_OUTPUT_FILE: path });
   count(code, path, ({ stats }) => ({ passed: stats.expected, failed: stats.unexpected + stats.flaky }));
 }
 

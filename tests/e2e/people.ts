@@ -1,6 +1,4 @@
 import { execFileSync } from 'node:child_process';
-import { readFileSync } from 'node:fs';
-import { join } from 'node:path';
 import { expect, type Page } from '@playwright/test';
 import { readState } from './installation';
 
@@ -21,7 +19,6 @@ export async function signIn(page: Page, firstName: string): Promise<void> {
 export function makeToken(firstName: string, scope: string): string {
   const { data, accounts } = readState();
   const { email } = accounts.find((account) => account.name.startsWith(firstName))!;
-  const kept = JSON.parse(readFileSync(join(data, 'environment.json'), 'utf8')) as Record<string, string>;
   const args = ['run', '--silent', 'token', '--', '--email', email, '--scope', scope];
-  return execFileSync('npm', args, { env: { ...process.env, ...kept }, encoding: 'utf8' }).trim();
+  return execFileSync('npm', args, { env: { ...process.env, DATA: data }, encoding: 'utf8' }).trim();
 }
