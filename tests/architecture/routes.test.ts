@@ -64,7 +64,7 @@ describe('every use-case asks for permission', () => {
     const text = readFileSync(path, 'utf8');
     const takesActor = /\bactor: Actor\b/.test(text);
     if (!takesActor) return;
-    const asks = /\b(permit|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
+    const asks = /\b(permit|permitSelf|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
       text,
     );
     const isPublic = /Public use-case/.test(text);

@@ -18,6 +18,7 @@ const PAGES: { name: string; who: string | null; path: string; first?: string; t
   { name: 'review list', who: 'Ines', path: '/review' },
   { name: 'review', who: 'Ines', path: '/review', first: 'a[href^="/review/"]' },
   { name: 'programmes', who: 'Maren', path: '/programmes' },
+  { name: 'account', who: 'Ines', path: '/account' },
   { name: 'drafts', who: 'Maren', path: '/drafts' },
 ];
 

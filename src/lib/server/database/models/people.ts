@@ -21,6 +21,7 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
 export class Session extends Model<InferAttributes<Session>, InferCreationAttributes<Session>> {
   declare id: string;
   declare userId: string;
+  declare startedAt: CreationOptional<Date>;
   declare expiresAt: Date;
 }
 
@@ -29,6 +30,8 @@ export class ApiToken extends Model<InferAttributes<ApiToken>, InferCreationAttr
   declare userId: string;
   declare tokenHash: string;
   declare scope: string;
+  declare name: CreationOptional<string>;
+  declare createdAt: CreationOptional<Date>;
   declare expiresAt: Date | null;
 }
 
@@ -50,12 +53,19 @@ export class Invitation extends Model<InferAttributes<Invitation>, InferCreation
   declare id: string;
   declare tokenHash: string;
   declare makesAdmin: boolean;
+  /** Whom it invites, to which programme, as what, and who did; null for the first administrator's. */
+  declare email: CreationOptional<string | null>;
+  declare programmeId: CreationOptional<string | null>;
+  declare roles: CreationOptional<string[] | null>;
+  declare invitedBy: CreationOptional<string | null>;
+  declare createdAt: CreationOptional<Date>;
   declare expiresAt: Date;
   declare usedAt: Date | null;
+  declare withdrawnAt: CreationOptional<Date | null>;
 }
 
 export function definePeople(sequelize: Sequelize): void {
-  const { STRING, BOOLEAN, DATE, TINYINT, UUID, CHAR } = DataTypes;
+  const { STRING, BOOLEAN, DATE, TINYINT, UUID, CHAR, JSON } = DataTypes;
   User.init(
     {
       id: idColumn,
@@ -69,11 +79,19 @@ export function definePeople(sequelize: Sequelize): void {
     { sequelize, tableName: 'users' },
   );
   Session.init(
-    { id: { type: CHAR(64), primaryKey: true }, userId: UUID, expiresAt: DATE(6) },
+    { id: { type: CHAR(64), primaryKey: true }, userId: UUID, startedAt: DATE(6), expiresAt: DATE(6) },
     { sequelize, tableName: 'sessions' },
   );
   ApiToken.init(
-    { id: idColumn, userId: UUID, tokenHash: CHAR(64), scope: STRING(100), expiresAt: DATE(6) },
+    {
+      id: idColumn,
+      userId: UUID,
+      tokenHash: CHAR(64),
+      scope: STRING(100),
+      name: STRING(100),
+      createdAt: DATE(6),
+      expiresAt: DATE(6),
+    },
     { sequelize, tableName: 'api_tokens' },
   );
   Programme.init(
@@ -89,7 +107,19 @@ export function definePeople(sequelize: Sequelize): void {
     { sequelize, tableName: 'programme_members' },
   );
   Invitation.init(
-    { id: idColumn, tokenHash: CHAR(64), makesAdmin: BOOLEAN, expiresAt: DATE(6), usedAt: DATE(6) },
+    {
+      id: idColumn,
+      tokenHash: CHAR(64),
+      makesAdmin: BOOLEAN,
+      email: STRING(254),
+      programmeId: UUID,
+      roles: JSON,
+      invitedBy: UUID,
+      createdAt: DATE(6),
+      expiresAt: DATE(6),
+      usedAt: DATE(6),
+      withdrawnAt: DATE(6),
+    },
     { sequelize, tableName: 'invitations' },
   );
 }
