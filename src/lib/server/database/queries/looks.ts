@@ -53,3 +53,47 @@ export async function namedVerdicts(spectrumId: string, transaction?: Transactio
     flags: typeof row.flags === 'string' ? (JSON.parse(row.flags) as Flag[]) : row.flags,
   }));
 }
+
+export interface EveryLookRow {
+  id: string;
+  spectrumId: string;
+  userId: string;
+  kind: VerdictKind | 'withdrawn';
+  redshift: number | null;
+  redshiftError: number | null;
+  confidence: Confidence | null;
+  lookSeconds: number | null;
+}
+
+/** All that was ever said in a programme, verdicts taken back included, oldest first: for statistics. */
+export function everyLook(programmeId: string): Promise<EveryLookRow[]> {
+  return database().query<EveryLookRow>(
+    `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.kind, w.redshift,
+        w.redshift_error AS redshiftError, w.confidence, w.look_seconds AS lookSeconds
+      FROM verdicts w JOIN spectra s ON s.id = w.spectrum_id JOIN files f ON f.id = s.file_id
+      WHERE f.programme_id = :programmeId ORDER BY w.id`,
+    { replacements: { programmeId }, type: QueryTypes.SELECT },
+  );
+}
+
+/** Programmes by name, with the looks they ask for and how many of their spectra are measured. */
+export function judgedProgrammes(
+  programmeIds: readonly string[],
+): Promise<{ id: string; name: string; looks: number; measured: number | string }[]> {
+  return database().query(
+    `SELECT p.id, p.name, p.looks, (SELECT COUNT(*) FROM files f JOIN spectra s ON s.file_id = f.id
+        WHERE f.programme_id = p.id AND s.state = 'measured') AS measured
+      FROM programmes p WHERE p.id IN (:programmeIds) ORDER BY p.name, p.id`,
+    { replacements: { programmeIds }, type: QueryTypes.SELECT },
+  );
+}
+
+/** Names of people by id. */
+export async function namesOf(userIds: readonly string[]): Promise<Map<string, string>> {
+  if (userIds.length === 0) return new Map();
+  const rows = await database().query<{ id: string; name: string }>(
+    'SELECT u.id, u.name FROM users u WHERE u.id IN (:userIds)',
+    { replacements: { userIds }, type: QueryTypes.SELECT },
+  );
+  return new Map(rows.map(({ id, name }) => [id, name]));
+}
