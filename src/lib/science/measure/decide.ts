@@ -1,18 +1,16 @@
 import type { Confidence } from '$lib/domain/confidence';
 import type { Candidate } from '$lib/domain/measurement';
 import { FWHM_PER_SIGMA } from '../constants/physical';
-import type { FittedCandidate } from './candidate-fit';
-import { confidenceOf, type ConfidenceInput } from './confidence';
-import { doubletAdvantage } from './doublet-test';
-import { asFinal, finalFit, supportingLines, type FinalFit, type LineSupport } from './final-fit';
-import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
-import { lineFitsOf } from './line-fits';
-import { breakLogRatio, systemicRedshift } from './lyman-alpha';
+import { absorptionCandidate, emissionCandidate } from './build-candidate';
+import { confidenceOf } from './confidence';
+import { asFinal, finalFit, type FinalFit } from './final-fit';
+import type { Hypotheses } from './hypotheses';
+import { systemicRedshift } from './lyman-alpha';
 import type { Posterior } from './posterior';
 import type { PreparedSpectrum } from './prepare';
-import { reasonsAgainst, reasonsFor } from './reasons';
 import { redshiftWithErrors } from './redshift-error';
 import { secondRedshiftOf } from './second-redshift';
+import { ceilingOf, evidenceOf, groupOf, leavesFeatures, type Entry } from './settled-evidence';
 
 /** The first candidate's redshift as reported. */
 export interface FirstRedshift {
@@ -24,6 +22,9 @@ export interface FirstRedshift {
 
 /** Everything a measurement says beyond its provenance. */
 export interface Decision {
+  /** Posterior of the first candidate before calibration, and the group it is calibrated in. */
+  rawProbability: number;
+  group: string;
   first: FirstRedshift | null;
   candidates: Candidate[];
   probability: number;
@@ -39,28 +40,17 @@ export interface Decision {
   linesBlended: boolean;
 }
 
-/** Error given to an absorption redshift, km/s: a fifth of the widest kernel that sees its lines. */
-const ABSORPTION_ERROR_KMS = 60;
-const RESOLVED_DOUBLET = 25;
-/** Probability that a redshift resting on one feature, or on few absorption features, can reach. */
-const SINGLE_FEATURE_CEILING = 0.88;
-const ABSORPTION_CEILING = 0.8;
-/** Broad lines that are shifted and eaten so often that they fix no redshift to 1,000 km/s without another line. */
-const UNRELIABLE = ['C IV', 'Si IV', 'Lyman-alpha', 'N V', 'He II', 'Al III'];
-const UNRELIABLE_CEILING = 0.95;
 /** Candidates refitted with every line; the others keep the fit they were weighed by. */
 const CANDIDATES_REFITTED = 3;
-
-type Entry =
-  | { emission: FittedCandidate; absorption: null; probability: number }
-  | { emission: null; absorption: AbsorptionCandidate; probability: number };
+/** No other candidate is listed with more than this share of the first one's probability. */
+const SECOND_SHARE = 0.95;
 
 /** Refits the best candidates, calibrates, and decides on the confidence word and its reasons. */
 export function decide(
   prepared: PreparedSpectrum,
   hypotheses: Hypotheses,
   posterior: Posterior,
-  calibrate: (raw: number) => number,
+  calibrate: (raw: number, group: string) => number,
   listed: number,
 ): Decision {
   const entries: Entry[] = [
@@ -76,7 +66,8 @@ export function decide(
     ? finalFit(prepared.working, prepared.continuum, hypotheses.context.noiseFactor, top.emission, 12)
     : null;
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
-  const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability)) : 0;
+  const group = top && evidence ? groupOf(top, evidence, leavesFeatures(hypotheses, top)) : 'none';
+  const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability, group)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;
   const rivals = {
     nothing: posterior.nothing * rest,
@@ -93,13 +84,16 @@ export function decide(
     return rank === 0 ? refit0 : finalFit(prepared.working, prepared.continuum, context.noiseFactor, entry.emission, 3);
   });
   const candidates = entries.slice(0, listed).map((entry, rank) => {
-    const share = rank === 0 ? probability : entry.probability * rest;
+    // What calibration takes from the first answer is shared by the others, none of which may overtake it.
+    const share = rank === 0 ? probability : Math.min(SECOND_SHARE * probability, entry.probability * rest);
     const refit = refits[rank];
     return entry.emission && refit
       ? emissionCandidate(prepared, hypotheses, entry.emission, refit, share, rank === 0)
       : absorptionCandidate(entry.absorption!, share);
   });
   const base = {
+    rawProbability: top?.probability ?? 0,
+    group,
     candidates,
     probability,
     rivals,
@@ -144,17 +138,6 @@ export function decide(
   };
 }
 
-/**
- * Highest probability that the evidence allows: one feature never settles its own identity, unless its shape does, and
- * absorption needs several features.
- */
-function ceilingOf(evidence: Evidence): number {
-  if (evidence.absorptionFeatures !== null) return evidence.absorptionFeatures >= 4 ? 1 : ABSORPTION_CEILING;
-  const settled = evidence.independentLines >= 2 || evidence.resolvedDoublet || evidence.unmistakableProfile;
-  if (!settled) return SINGLE_FEATURE_CEILING;
-  return evidence.unknownIdentity ? UNRELIABLE_CEILING : 1;
-}
-
 function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null): FirstRedshift {
   const measured =
     top.emission && refit ? redshiftWithErrors(refit, top.emission.kind === 'broad').measured : candidate.redshiftError;
@@ -163,83 +146,6 @@ function firstRedshift(candidate: Candidate, top: Entry, refit: FinalFit | null)
     redshiftError: candidate.redshiftError,
     redshiftErrorMeasured: measured,
     redshiftSystemic: refit?.lyman ? systemicRedshift(candidate.redshift, refit.lyman.fwhmKms) : null,
-  };
-}
-
-/** What the confidence word is decided from besides probabilities. */
-type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy'>;
-
-function evidenceOf(prepared: PreparedSpectrum, hypotheses: Hypotheses, top: Entry, refit: FinalFit | null): Evidence {
-  if (!top.emission || !refit) {
-    return {
-      independentLines: 0,
-      resolvedDoublet: false,
-      unmistakableProfile: false,
-      unknownIdentity: false,
-      absorptionFeatures: top.absorption?.strongFeatures ?? 0,
-    };
-  }
-  const data = prepared.working;
-  const support = supportingLines(refit, hypotheses.banks.lines, prepared);
-  const clean = support.filter((line) => !line.nearSky).length;
-  // Residuals of the night sky come in crowds: lines that all lie on it count as one unless there are many.
-  const independentLines = clean > 0 || support.length >= 4 ? support.length : Math.min(1, support.length);
-  const oxygen = refit.fit.components.findIndex((c) => c.name === '[O II] 3730' && c.width === 0);
-  const resolvedDoublet =
-    support.length < 2 &&
-    oxygen >= 0 &&
-    refit.fit.amplitude[oxygen] > 4 * refit.errors.amplitude[oxygen] &&
-    doubletAdvantage(data, refit.fit.logScale, refit.fit.sigmaKms[0], refit.errorScale) >= RESOLVED_DOUBLET;
-  const broken = breakLogRatio(data, Math.expm1(refit.logScale));
-  const unmistakableProfile =
-    refit.lyman !== null && refit.lyman.wingShare > 0.25 && broken.logRatio > 4 && broken.significance > 5;
-  const reliable = (line: LineSupport) => !UNRELIABLE.some((name) => line.name.startsWith(name));
-  const onlyCarbon = top.emission.kind === 'broad' && !support.some(reliable);
-  return {
-    independentLines,
-    resolvedDoublet,
-    unmistakableProfile,
-    unknownIdentity: onlyCarbon,
-    absorptionFeatures: null,
-  };
-}
-
-function emissionCandidate(
-  prepared: PreparedSpectrum,
-  hypotheses: Hypotheses,
-  candidate: FittedCandidate,
-  refit: FinalFit,
-  probability: number,
-  first: boolean,
-): Candidate {
-  const data = prepared.working;
-  const support: LineSupport[] = supportingLines(refit, hypotheses.banks.lines, prepared);
-  const stated = redshiftWithErrors(refit, candidate.kind === 'broad');
-  const scale = { flux: prepared.working.scale, errors: refit.errorScale };
-  const lyman = candidate.kind === 'lyman';
-  return {
-    redshift: stated.redshift,
-    redshiftError: stated.total,
-    probability,
-    objectClass: candidate.family.objectClass,
-    fwhmKms: refit.lyman?.fwhmKms ?? FWHM_PER_SIGMA * refit.fit.sigmaKms[candidate.kind === 'broad' ? 1 : 0],
-    reasonsFor: reasonsFor(data, refit.fit, support, hypotheses.banks.lines),
-    reasonsAgainst: reasonsAgainst(refit.fit, refit.errors, support),
-    lines: lineFitsOf(data, refit.fit, refit.errors, scale, first ? 2 : 3, lyman, refit.logScale),
-  };
-}
-
-function absorptionCandidate(candidate: AbsorptionCandidate, probability: number): Candidate {
-  const stretch = Math.exp(candidate.logScale);
-  return {
-    redshift: stretch - 1,
-    redshiftError: (ABSORPTION_ERROR_KMS / 299792.458) * stretch,
-    probability,
-    objectClass: 'absorption only',
-    fwhmKms: null,
-    reasonsFor: [`Absorption of ${candidate.family}: ${candidate.strongFeatures} features deeper than 4 sigma.`],
-    reasonsAgainst: ['No emission line speaks for it.'],
-    lines: [],
   };
 }
 

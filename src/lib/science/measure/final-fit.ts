@@ -116,6 +116,7 @@ export interface LineSupport {
   wavelengthObserved: number;
   /** Lies under a strong sky line or in a telluric band. */
   nearSky: boolean;
+  narrow: boolean;
 }
 
 /**
@@ -148,6 +149,7 @@ export function supportingLines(final: FinalFit, bank: FilterBank, prepared: Pre
           significance: significance * member.share,
           wavelengthObserved,
           nearSky: nearSky(working, wavelengthObserved),
+          narrow: component.width === 0,
         });
     }
   });
