@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '$lib/server/auth/permissions';
+import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { freezeDraft } from '$lib/server/release/freeze-draft';
 import { previewDraft } from '$lib/server/release/preview-draft';
 import { listQueue, type QueueView } from '$lib/server/review/list-queue';
@@ -101,6 +102,13 @@ describe('a ruling', () => {
       standing: 'ruled',
       ruling: { by: third.name, takes: koji.name, redshift: 0.72, reason: 'The doublet is split.', isOwn: false },
     });
+    const [{ nightId }] = await listQueue(ines, { show: 'all' });
+    const decided = async (actor: Actor) =>
+      (await listMeasurements(actor, nightId, { limit: 10 })).rows.find((row) => row.spectrum === ids[0])?.verdict;
+    for (const person of [ines, koji, third, curator]) {
+      expect(await decided(person)).toMatchObject({ by: third.name, redshift: 0.72 });
+    }
+    expect(await decided(await world.person('Noa New', 'scientist'))).toBeNull();
     const { checks, rows } = await previewDraft(curator, world.slug, draft);
     expect(checks).toEqual([]);
     expect(rows.find(({ name }) => name === 'T-1')).toMatchObject({ redshift: 0.72, decidedBy: 'people' });

@@ -4,6 +4,7 @@ import type { Measurement } from '$lib/domain/measurement';
 import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { database } from '../connection';
 import { LATEST_MEASUREMENT } from './night-snapshot';
+import { LAST_WORD_RULING } from './rulings';
 import { CURRENT_VERDICT, judgedBy } from './verdicts';
 
 type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midExposure'> & {
@@ -18,8 +19,8 @@ type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midEx
 };
 
 /**
- * Spectra of a night after an id, in the order of ids, with the newest measurement and the newest verdict. For a reader
- * who may judge, a verdict shows only where they gave one of their own: looks are blind. `full` adds all that the engine
+ * Spectra of a night after an id, in the order of ids, with the newest measurement and the newest verdict, or the
+ * ruling that had the last word. For a reader who may judge, it shows only where they gave one of their own: looks are blind. `full` adds all that the engine
  * said: candidates, lines, reasons.
  */
 export async function nightMeasurementRows(
@@ -36,11 +37,14 @@ export async function nightMeasurementRows(
         m.redshift_systemic AS redshiftSystemic, m.second_redshift AS secondRedshift, m.probability, m.confidence,
         m.noise_factor AS noiseFactor, m.object_class AS objectClass, m.flags, m.flux_unit AS fluxUnit,
         m.strongest_line AS line, m.strongest_line_signal_to_noise AS lineSignalToNoise, ${reader.full ? 'm.detail' : 'NULL'} AS detail,
-        v.redshift AS verdictRedshift, v.confidence AS verdictConfidence, u.name AS verdictBy
+        IF(d.id IS NULL, v.redshift, d.redshift) AS verdictRedshift,
+        IF(d.id IS NULL, v.confidence, d.confidence) AS verdictConfidence, u.name AS verdictBy
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
       LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
       LEFT JOIN verdicts v ON v.id = ${CURRENT_VERDICT} AND (:judges = 0 OR ${judgedBy(':userId')})
-      LEFT JOIN users u ON u.id = v.user_id
+      LEFT JOIN rulings d ON d.id = ${LAST_WORD_RULING}
+        AND (:judges = 0 OR d.user_id = :userId OR ${judgedBy(':userId')})
+      LEFT JOIN users u ON u.id = COALESCE(d.user_id, v.user_id)
       WHERE nf.night_id = :nightId AND (:after IS NULL OR s.id > :after) ORDER BY s.id LIMIT :limit`,
     {
       replacements: { nightId, after, limit, userId: reader.userId, judges: reader.judges ? 1 : 0 },

@@ -8,6 +8,14 @@ export type NewRuling = Omit<RulingRow, 'id' | 'createdAt'>;
 /** For use inside a query with rulings as `r`: the ruling stands. */
 const STANDS = `r.kind <> 'withdrawn' AND NOT EXISTS (SELECT 1 FROM rulings later WHERE later.supersedes = r.id)`;
 
+/**
+ * Id of the ruling on spectrum `s` that stands and that no verdict was given after. For use inside a query; blindness is
+ * the use-case's to keep.
+ */
+export const LAST_WORD_RULING = `(SELECT MAX(r.id) FROM rulings r WHERE r.spectrum_id = s.id AND ${STANDS}
+  AND NOT EXISTS (SELECT 1 FROM verdicts w WHERE w.spectrum_id = s.id AND w.kind <> 'withdrawn'
+    AND COALESCE(w.restores, w.id) > r.id AND NOT EXISTS (SELECT 1 FROM verdicts l WHERE l.supersedes = w.id)))`;
+
 /** The ruling on a spectrum that stands, with the name of whoever gave it. */
 export async function standingRuling(
   spectrumId: string,
