@@ -1,12 +1,18 @@
 import { ingestFiles } from '$lib/server/ingest/ingest-files';
+import { sendLetter } from '$lib/server/mail/send-letter';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
+import { composeInvitation } from '$lib/server/programmes/compose-invitation';
 import type { JobName, JobPayload } from '$lib/server/queue/jobs';
 import { measureOnThread, takeOnThread } from '../thread-pool';
 
 type Handlers = { [N in JobName]: (payload: JobPayload<N>, jobId: string) => Promise<void> };
 
+/** Who writes the letters of each kind. */
+const letters = { invitation: composeInvitation };
+
 /** One handler a job name; each is idempotent. */
 export const handlers: Handlers = {
   ingest: ({ fileIds }, jobId) => ingestFiles(fileIds, jobId, takeOnThread),
+  mail: ({ letterId }, jobId) => sendLetter(letterId, jobId, letters),
   measure: ({ spectrumIds }, jobId) => measureSpectra(spectrumIds, jobId, measureOnThread),
 };

@@ -5,7 +5,9 @@ import { hashPassword, PASSWORD_MIN_LENGTH } from '../auth/passwords';
 import { hashSecret, newSecret } from '../auth/secrets';
 import { database } from '../database/connection';
 import { inTransaction } from '../database/in-transaction';
+import { useInvitation } from '../database/queries/invitations';
 import { Invitation, User } from '../database/queries/people';
+import { findInvitation } from './find-invitation';
 
 const HOURS = 48;
 
@@ -26,31 +28,28 @@ export const newAccountSchema = z.object({
   password: z.string().min(PASSWORD_MIN_LENGTH, `a password has at least ${PASSWORD_MIN_LENGTH} characters`).max(1024),
 });
 
-/** Public use-case: the secret is the permission. Makes the account and uses the secret up. */
+/**
+ * Public use-case: the secret is the permission. Makes the account, with what the invitation gives: the programme's roles,
+ * or the administrator's. An invitation to a programme fixes the e-mail: it was sent there.
+ */
 export async function acceptInvitation(
   secret: string,
   input: z.output<typeof newAccountSchema>,
 ): Promise<{ userId: string }> {
-  database();
+  await findInvitation(secret);
   const passwordHash = await hashPassword(input.password);
   return inTransaction(async (transaction) => {
-    const invitation = await Invitation.findOne({ where: { tokenHash: hashSecret(secret) }, lock: true, transaction });
-    if (!invitation || invitation.usedAt || invitation.expiresAt < new Date()) {
-      throw new Refusal(
-        'forbidden',
-        'This link was used already or has run out.',
-        'Start Farglow again for a new one.',
-      );
-    }
-    if (await User.count({ where: { email: input.email }, transaction })) {
+    const invitation = await findInvitation(secret, transaction);
+    const email = invitation.email ?? input.email;
+    if (await User.count({ where: { email }, transaction })) {
       throw new Refusal('conflict', 'This e-mail has an account already.', 'Sign in with it.', 'email');
     }
-    const { name, email } = input;
-    const user = await User.create({ name, email, passwordHash, isAdmin: invitation.makesAdmin } as never, {
-      transaction,
-    });
-    await invitation.update({ usedAt: new Date() }, { transaction });
-    await recordEvent({ userId: user.id, action: 'account.make', subject: `user:${user.id}` }, transaction);
+    const { makesAdmin: isAdmin } = invitation;
+    const user = await User.create({ name: input.name, email, passwordHash, isAdmin } as never, { transaction });
+    await useInvitation(invitation, user.id, transaction);
+    const subject = `user:${user.id}`;
+    const detail = { invitation: invitation.id };
+    await recordEvent({ userId: user.id, action: 'account.make', subject, detail }, transaction);
     return { userId: user.id };
   });
 }

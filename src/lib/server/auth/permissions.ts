@@ -21,6 +21,7 @@ const TABLE = {
   'catalogue.read-draft': { roles: ['curator'], scope: 'read' },
   'catalogue.draft': { roles: ['curator'], scope: 'publish' },
   'catalogue.freeze': { roles: ['curator'], scope: 'publish' },
+  'programme.invite': { roles: ['curator'], scope: 'publish' },
   'programme.read': { roles: ['observer', 'scientist', 'curator', 'collaborator'], scope: 'read' },
 } as const satisfies Record<string, { roles: readonly Role[]; scope: Scope }>;
 

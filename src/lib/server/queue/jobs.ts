@@ -3,6 +3,7 @@ import { z } from 'zod';
 /** Every job: its name and the schema of its payload, ids only. The worker has one handler for each. */
 export const JOBS = {
   ingest: z.object({ fileIds: z.array(z.uuid()).min(1) }),
+  mail: z.object({ letterId: z.uuid() }),
   measure: z.object({ spectrumIds: z.array(z.uuid()).min(1) }),
 } as const;
 

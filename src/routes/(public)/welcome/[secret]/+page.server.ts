@@ -1,23 +1,34 @@
 import { redirect } from '@sveltejs/kit';
-import { Refusal } from '$lib/domain/refusal';
+import { parseForm } from '$lib/api/parse-form';
+import { joinProgramme } from '$lib/server/accounts/join-programme';
 import { acceptInvitation, newAccountSchema } from '$lib/server/accounts/make-first-administrator';
+import { readInvitation } from '$lib/server/accounts/read-invitation';
 import { guardedAction, guardedLoad } from '$lib/server/auth/guards';
 import { PASSWORD_MIN_LENGTH } from '$lib/server/auth/passwords';
-import { startSession } from '$lib/server/auth/sessions';
-import type { RequestEvent } from './$types';
+import { endSession, startSession } from '$lib/server/auth/sessions';
+import type { PageServerLoadEvent, RequestEvent } from './$types';
 
-export const load = guardedLoad('public', () => ({ passwordMinLength: PASSWORD_MIN_LENGTH }));
+export const load = guardedLoad('public', async ({ params, locals, setHeaders }: PageServerLoadEvent) => {
+  // The address is the secret: no page that this one links to learns it.
+  setHeaders({ 'cache-control': 'no-store' });
+  return {
+    invitation: await readInvitation(params.secret),
+    signedInAs: locals.actor && { name: locals.actor.name, email: locals.actor.email },
+    next: `/welcome/${params.secret}`,
+    passwordMinLength: PASSWORD_MIN_LENGTH,
+  };
+});
 
 export const actions = {
-  default: guardedAction('public', async ({ request, params, cookies }: RequestEvent) => {
-    const result = newAccountSchema.safeParse(Object.fromEntries(await request.formData()));
-    if (!result.success) {
-      const [{ message, path }] = result.error.issues;
-      throw new Refusal('invalid', `${message[0].toUpperCase()}${message.slice(1)}.`, '', String(path[0] ?? ''));
-    }
-    const { userId } = await acceptInvitation(params.secret, result.data);
+  make: guardedAction('public', async ({ request, params, cookies, locals }: RequestEvent) => {
+    const { userId } = await acceptInvitation(params.secret, parseForm(newAccountSchema, await request.formData()));
+    if (locals.sessionId) await endSession(locals.sessionId);
     const cookie = await startSession(userId);
     cookies.set(cookie.name, cookie.value, cookie.options);
     redirect(303, '/');
+  }),
+  join: guardedAction('signed-in', async ({ params, locals }: RequestEvent) => {
+    await joinProgramme(locals.actor, params.secret);
+    redirect(303, '/programmes');
   }),
 };
