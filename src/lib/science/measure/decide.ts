@@ -41,7 +41,7 @@ export interface Decision {
 }
 
 /** Candidates refitted with every line; the others keep the fit they were weighed by. */
-const CANDIDATES_REFITTED = 3;
+const CANDIDATES_REFITTED = 2;
 /** No other candidate is listed with more than this share of the first one's probability. */
 const SECOND_SHARE = 0.95;
 

@@ -43,8 +43,8 @@ const IDENTITIES = [
 ];
 /** Levenberg-Marquardt steps for every suspect, and then for the best. */
 const FIRST_STEPS = 2;
-const MORE_STEPS = 4;
-const REFINED = 5;
+const MORE_STEPS = 3;
+const REFINED = 4;
 /**
  * Log likelihood that broad shapes may bring before they are taken with a grain of salt: blends, iron, absorption and
  * skew make two descriptions of one broad line differ by more than noise allows, and line ratios must decide then.
@@ -166,7 +166,7 @@ function suspectsOf(
   settings: MeasureSettings,
 ): Suspect[] {
   const range = [settings.redshiftMinimum, settings.redshiftMaximum] as const;
-  const narrowPeaks = scanRedshifts(lines, NARROW_SCAN_LINES, range, 24, 300);
+  const narrowPeaks = scanRedshifts(lines, NARROW_SCAN_LINES, range, 18, 300);
   const identities = features.slice(0, 2).flatMap((feature) => identitiesOf(feature, IDENTITIES, range));
   const narrow = shortlist(
     lines,

@@ -2,7 +2,7 @@ import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { normalCumulative } from './normal-distribution';
 
 /** Pixels that share one kernel: the line-spread function varies slowly. */
-const BLOCK = 64;
+const BLOCK = 128;
 
 /** Input of the filter: residual after the continuum, its weights, and the pixel grid. */
 export interface FilterInput {

@@ -1,5 +1,6 @@
 import { lineByName } from '../constants/lines';
 import type { FilterBank } from './detect';
+import { selectInPlace } from './order-statistics';
 
 /** A line of the scan: how much its absence costs and its presence brings. */
 export interface ScanLine {
@@ -107,10 +108,7 @@ export function scanRedshifts(
       for (const line of lines) {
         if (line.presence !== presence) continue;
         // Node of the line's rest wavelength relative to the grid: observed node = redshift node + shift.
-        const shift = Math.round((line.logRest - start) / step) + firstNode;
-        const from = Math.max(0, -shift);
-        const to = Math.min(nodes, count - shift);
-        for (let m = from; m < to; m++) total[m] += gain[m + shift];
+        addShifted(total, gain, Math.round((line.logRest - start) / step) + firstNode, nodes, count);
       }
     }
     for (let m = 0; m < nodes; m++) {
@@ -121,6 +119,13 @@ export function scanRedshifts(
     }
   });
   return distinctPeaks(best, bestFilter, firstNode, step, limit, separationKms);
+}
+
+/** Adds gain[m + shift] to total[m] wherever both exist. */
+function addShifted(total: Float64Array, gain: Float64Array, shift: number, nodes: number, count: number): void {
+  const from = Math.max(0, -shift);
+  const to = Math.min(nodes, count - shift);
+  for (let m = from; m < to; m++) total[m] += gain[m + shift];
 }
 
 /** Odds exp(b) of a line of positive flux at every node, best of the node and its neighbours. */
@@ -151,6 +156,18 @@ function lineGains(odds: Float64Array, information: Float64Array, presence: numb
   return gain;
 }
 
+/** Maxima looked at, best first: far more than are ever kept apart. */
+const CONSIDERED = 400;
+
+/** The `most` highest of the given nodes, in decreasing height. */
+function bestOf(nodes: readonly number[], height: Float64Array, most: number): number[] {
+  const byHeight = (a: number, b: number) => height[b] - height[a] || a - b;
+  if (nodes.length <= most) return [...nodes].sort(byHeight);
+  const heights = Float64Array.from(nodes, (m) => height[m]);
+  const threshold = selectInPlace(heights, heights.length, heights.length - most);
+  return nodes.filter((m) => height[m] >= threshold).sort(byHeight);
+}
+
 function distinctPeaks(
   total: Float64Array,
   filter: Uint8Array,
@@ -164,10 +181,10 @@ function distinctPeaks(
     if (!(total[m] > 0)) continue;
     if ((m === 0 || total[m] >= total[m - 1]) && (m === total.length - 1 || total[m] > total[m + 1])) maxima.push(m);
   }
-  maxima.sort((a, b) => total[b] - total[a] || a - b);
+  const best = bestOf(maxima, total, CONSIDERED);
   const apart = separationKms / 299792.458 / step;
   const kept: number[] = [];
-  for (const m of maxima) {
+  for (const m of best) {
     if (kept.length >= limit) break;
     if (kept.every((other) => Math.abs(other - m) >= apart)) kept.push(m);
   }

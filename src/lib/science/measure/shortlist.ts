@@ -9,6 +9,8 @@ import type { SuspectKind } from './suspect-kind';
 
 export type { SuspectKind };
 
+/** Kernels farther apart than this, in sigmas, share nothing worth counting. */
+const OVERLAP_REACH = 8;
 const LOG_LYMAN_ALPHA = Math.log(lineByName('Lyman-alpha 1216').wavelengthVacuum);
 
 /** A redshift worth a joint fit. */
@@ -20,6 +22,27 @@ export interface Suspect {
   score: number;
 }
 
+/** A family's lines as numbers. */
+interface FamilyLines {
+  logRest: Float64Array;
+  logRatio: Float64Array;
+  scatter: Float64Array;
+}
+
+const linesOf = new Map<LineFamily, FamilyLines>(
+  LINE_FAMILIES.map((family) => {
+    const entries = Object.entries(family.lines);
+    return [
+      family,
+      {
+        logRest: Float64Array.from(entries, ([name]) => Math.log(lineByName(name).wavelengthVacuum)),
+        logRatio: Float64Array.from(entries, ([, [ratio]]) => Math.log(ratio)),
+        scatter: Float64Array.from(entries, ([, [, scatter]]) => scatter),
+      },
+    ];
+  }),
+);
+
 /** Flux likelihood of a family's lines read off the filters at one redshift. */
 function likelihoodFromFilters(
   bank: FilterBank,
@@ -29,13 +52,16 @@ function likelihoodFromFilters(
   relativeResolution: number,
 ): { likelihood: FluxLikelihood; model: RatioModel } {
   const filter = bank.filters[filterIndex];
-  const right: number[] = [];
-  const information: number[] = [];
-  const position: number[] = [];
-  const logRatio: number[] = [];
-  const scatter: number[] = [];
-  for (const [name, [ratio, spread]] of Object.entries(family.lines)) {
-    const log = Math.log(lineByName(name).wavelengthVacuum) + logScale;
+  const lines = linesOf.get(family)!;
+  const most = lines.logRest.length;
+  const right = new Float64Array(most);
+  const information = new Float64Array(most);
+  const position = new Float64Array(most);
+  const logRatio = new Float64Array(most);
+  const scatter = new Float64Array(most);
+  let count = 0;
+  for (let l = 0; l < most; l++) {
+    const log = lines.logRest[l] + logScale;
     const at = (log - bank.start) / bank.step;
     const k = Math.floor(at);
     if (k < 0 || k >= bank.count - 1) continue;
@@ -43,25 +69,28 @@ function likelihoodFromFilters(
     const a = filter.information[k];
     const b = filter.information[k + 1];
     if (!(a > 0) || !(b > 0)) continue;
-    right.push(filter.numerator[k] * (1 - t) + filter.numerator[k + 1] * t);
-    information.push(a * (1 - t) + b * t);
-    position.push(log);
-    logRatio.push(Math.log(ratio));
-    scatter.push(spread);
+    right[count] = filter.numerator[k] * (1 - t) + filter.numerator[k + 1] * t;
+    information[count] = a * (1 - t) + b * t;
+    position[count] = log;
+    logRatio[count] = lines.logRatio[l];
+    scatter[count] = lines.scatter[l];
+    count++;
   }
-  const count = right.length;
   const sigma = Math.hypot(relativeResolution, filter.sigmaKms / SPEED_OF_LIGHT_KMS);
   const gram = new Float64Array(count * count);
   for (let i = 0; i < count; i++) {
-    for (let j = 0; j < count; j++) {
-      const apart = (position[i] - position[j]) / sigma;
-      gram[i * count + j] = Math.sqrt(information[i] * information[j]) * Math.exp(-0.25 * apart * apart);
+    gram[i * count + i] = 1.0001 * information[i];
+    for (let j = 0; j < i; j++) {
+      const apart = Math.abs(position[i] - position[j]) / sigma;
+      if (apart > OVERLAP_REACH) continue;
+      const both = Math.sqrt(information[i] * information[j]) * Math.exp(-0.25 * apart * apart);
+      gram[i * count + j] = both;
+      gram[j * count + i] = both;
     }
-    gram[i * count + i] *= 1.0001;
   }
   return {
-    likelihood: { count, gram, right: Float64Array.from(right) },
-    model: { logRatio: Float64Array.from(logRatio), scatter: Float64Array.from(scatter) },
+    likelihood: { count, gram, right: right.slice(0, count) },
+    model: { logRatio: logRatio.slice(0, count), scatter: scatter.slice(0, count) },
   };
 }
 

@@ -8,8 +8,8 @@ export interface ProfileGrid {
   lsfSigma: Float64Array;
 }
 
-/** Sigmas of a Gaussian beyond which a profile is cut (6e-7 of its flux lies outside). */
-export const PROFILE_REACH = 5;
+/** Sigmas of a Gaussian beyond which a profile is cut (7e-6 of its flux lies outside). */
+export const PROFILE_REACH = 4.5;
 
 /** Index of the pixel whose edges hold a wavelength, clamped to the grid. */
 export function pixelOf(edges: Float64Array, wavelength: number): number {
