@@ -2,7 +2,7 @@ import { lineByName } from '../constants/lines';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import type { FilterBank } from './detect';
 import { familyEvidence } from './evidence';
-import { CONTINUUM_FAULT } from './family-weight';
+import { CONTINUUM_FAULT } from './continuum-fault';
 import type { ScanLine } from './scan';
 
 /** A kind of stellar spectrum: features with typical equivalent widths (relative) and scatters in ln. */

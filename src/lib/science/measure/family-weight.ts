@@ -1,21 +1,13 @@
-import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
+import { continuumFault } from './continuum-fault';
 import { familyEvidence, type FluxLikelihood } from './evidence';
-import type { FitData } from './fit/fit-windows';
 import { RATIO_PRIORS } from './fit/components';
 import { invertPositiveDefinite } from './fit/solve';
-import { pixelOf } from './fit/line-profile';
 import type { WeighContext } from './weigh-context';
 import type { JointFit } from './fit/joint-fit';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import { LYMAN_PROFILE_COMPONENTS } from './lyman-alpha';
 
 const NARROW_NUCLEUS = LINE_FAMILIES.find((family) => family.name === 'narrow-line active nucleus')!;
-
-/**
- * Continua are not known better than this share of their level over the width of a line: it bounds how much a weak
- * bump on a bright continuum may say. Narrow and broad lines; common practice, no single source.
- */
-export const CONTINUUM_FAULT = [0.01, 0.03] as const;
 
 /** Log evidence that broad lines must bring for a quasar to be considered. */
 const LEAST_BROAD_EVIDENCE = 6;
@@ -90,26 +82,6 @@ function rowsOf(fit: JointFit, family: LineFamily, width: 0 | 1, profile: number
     rows.push({ members, fault, logRatio: Math.log(ratio), scatter: line[1], logPrior });
   });
   return rows;
-}
-
-/**
- * Variance of a line's flux from faults of the continuum under it.
- *
- * @param continuum the flexible one for narrow lines, the stiff one for broad ones
- */
-export function continuumFault(
-  data: FitData,
-  continuum: Float64Array,
-  fit: JointFit,
-  rest: number,
-  width: 0 | 1,
-): number {
-  const centre = rest * Math.exp(fit.logScale);
-  const pixel = pixelOf(data.edges, centre);
-  const sigma = Math.hypot(data.lsfSigma[pixel], (centre * fit.sigmaKms[width]) / SPEED_OF_LIGHT_KMS);
-  // The wider a line, the more it looks like continuum.
-  const wide = width === 1 ? Math.max(1, (2.3548 * fit.sigmaKms[1]) / 5000) : 1;
-  return (CONTINUUM_FAULT[width] * wide * Math.abs(continuum[pixel]) * 2.3548 * sigma) ** 2;
 }
 
 /**

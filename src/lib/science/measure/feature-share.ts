@@ -1,5 +1,5 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
-import { continuumFault } from './family-weight';
+import { continuumFault } from './continuum-fault';
 import type { ComponentMember } from './fit/components';
 import { addLineProfile, pixelOf, PROFILE_REACH } from './fit/line-profile';
 import type { JointFit } from './fit/joint-fit';

@@ -1,7 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import type { FilterBank, GridFilter } from './detect';
 import { spikeAdvantage } from './cosmic-rays';
-import { CONTINUUM_FAULT } from './family-weight';
+import { CONTINUUM_FAULT } from './continuum-fault';
 import { lowerBound } from './noise';
 import type { WorkingSpectrum } from './working-spectrum';
 

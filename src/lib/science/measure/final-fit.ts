@@ -1,7 +1,7 @@
 import { MASK } from '$lib/domain/spectrum';
 import { COMPONENTS_OF_KIND, misfitScale, type FittedCandidate } from './candidate-fit';
 import type { FilterBank } from './detect';
-import { continuumFault } from './family-weight';
+import { continuumFault } from './continuum-fault';
 import { componentShifts, type ComponentShift } from './fit/component-shifts';
 import { FULL_COMPONENTS, stellarBalmer, type LineComponent } from './fit/components';
 import type { FitData } from './fit/fit-windows';
