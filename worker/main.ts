@@ -3,6 +3,7 @@ import { Worker } from 'bullmq';
 import { config } from '$lib/server/config/config';
 import { closeDatabase } from '$lib/server/database/connection';
 import { pendingMigrations } from '$lib/server/database/migrate';
+import { postReports } from '$lib/server/ingest/post-reports';
 import { log } from '$lib/server/log/log';
 import { JOBS, type JobName } from '$lib/server/queue/jobs';
 import { closeNudges } from '$lib/server/queue/nudge';
@@ -15,6 +16,8 @@ import { pool } from './thread-pool';
 /** A stalled job is taken over three lost renewals after its lock: lock 15 s, looked for every 5 s. */
 const LOCK_MS = 15_000;
 const STALLED_EVERY_MS = 5_000;
+/** Reports of nights that ended are looked for this often. */
+const REPORTS_EVERY_MS = 60_000;
 /** Shutdown waits this long for fits in hand; what is not stored by then is offered again. */
 const SHUTDOWN_MS = 10_000;
 
@@ -61,6 +64,10 @@ async function main(): Promise<void> {
   };
   tellAlive();
   const beat = setInterval(tellAlive, 5_000);
+  const reports = setInterval(
+    () => void postReports(new Date()).catch((error: Error) => log.warn({ err: error.message }, 'reports not posted')),
+    REPORTS_EVERY_MS,
+  );
   log.info({ threads: config().WORKER_THREADS, pid: process.pid }, 'worker is up');
 
   let ending = false;
@@ -70,6 +77,7 @@ async function main(): Promise<void> {
     log.info({ signal }, 'worker is ending');
     const late = setTimeout(() => process.exit(1), SHUTDOWN_MS);
     clearInterval(beat);
+    clearInterval(reports);
     await relay.stop();
     await worker.close();
     await pool().destroy();

@@ -6,10 +6,12 @@ import { acceptInvitation } from '$lib/server/accounts/make-first-administrator'
 import { may, type Actor } from '$lib/server/auth/permissions';
 import { actorOf } from '$lib/server/auth/actor';
 import { database } from '$lib/server/database/connection';
+import { postReports } from '$lib/server/ingest/post-reports';
 import { inviteMember } from '$lib/server/programmes/invite-member';
 import { listInvitations } from '$lib/server/programmes/list-invitations';
 import { makeInstallation, type Installation } from './installation';
 import { startMailCatcher, type MailCatcher } from './mail-catcher';
+import { seedNight } from './seed-spectra';
 import { startWorker, until } from './worker-process';
 
 let catcher: MailCatcher;
@@ -101,5 +103,56 @@ describe('an invitation by mail', () => {
     await until('a first try', async () => catcher.refusals() > before);
     catcher.refuse(null);
     expect(secretIn((await letterTo(email)).text)).toMatch(/^fgi_/);
+  });
+});
+
+describe('the report of a night by mail', () => {
+  const MINUTE = 60_000;
+  const inMinutes = (minutes: number) => new Date(Date.now() + minutes * MINUTE);
+
+  it('goes once to whoever opened the night, when it is over and at rest', async () => {
+    const observer = await installation.makePerson('Ola Server', programme, ['observer']);
+    const { nightId } = await seedNight(programme, observer.userId, [
+      { name: 'fine' },
+      { name: 'HC doubtful', confidence: 'probable', probability: 0.95 },
+    ]);
+    await database().query(`UPDATE files SET state = 'read'`);
+    // The seeded night names a date; the one that counts here is over by the machine's clock.
+    await database().query(`UPDATE nights SET civil_date = UTC_DATE() - INTERVAL 3 DAY WHERE id = :nightId`, {
+      replacements: { nightId },
+    });
+    expect(await postReports(inMinutes(5))).toBe(0);
+    const posted = await Promise.all([postReports(inMinutes(11)), postReports(inMinutes(11))]);
+    expect(Math.max(...posted)).toBe(1);
+    const letter = await letterTo(observer.email);
+    expect(letter.raw).toMatch(/^Subject: Night of \d{4}-\d\d-\d\d, letters: report\r?$/m);
+    expect(letter.text).toContain('Measured: 2; secure 1, probable 1, ambiguous 0, none 0.');
+    expect(letter.text).toContain('HC doubtful, probable: 718 s more, on 900 s');
+    expect(letter.text).toContain(`/nights/${nightId}/report`);
+    expect(await postReports(inMinutes(12))).toBe(0);
+    // A letter that waits behind it has come: had the report been sent twice, it would be here by now.
+    await inviteMember(curator, { programme, email: 'after@example.org', roles: ['observer'] });
+    await letterTo('after@example.org');
+    expect(catcher.caught.filter(({ to }) => to.includes(observer.email))).toHaveLength(1);
+  });
+
+  it('waits while the night lasts, and is not sent to someone who may no longer read it', async () => {
+    const gone = await installation.makePerson('Gone Away', programme, ['observer']);
+    const { nightId } = await seedNight(programme, gone.userId, [{ name: 'fine' }]);
+    const date = (text: string) =>
+      database().query(`UPDATE nights SET civil_date = ${text} WHERE id = :nightId`, { replacements: { nightId } });
+    await date('UTC_DATE() + INTERVAL 1 DAY');
+    expect(await postReports(inMinutes(11))).toBe(0);
+    await date('UTC_DATE() - INTERVAL 3 DAY');
+    await database().query('DELETE FROM programme_members WHERE user_id = :id', { replacements: { id: gone.userId } });
+    expect(await postReports(inMinutes(11))).toBe(1);
+    await until('the letter settled', async () => {
+      const [row] = await database().query<{ state: string }>('SELECT state FROM letters WHERE night_id = :nightId', {
+        replacements: { nightId },
+        type: QueryTypes.SELECT,
+      });
+      return row.state === 'failed';
+    });
+    expect(catcher.caught.filter(({ to }) => to.includes(gone.email))).toEqual([]);
   });
 });

@@ -1,3 +1,4 @@
+import { composeReport } from '$lib/server/ingest/compose-report';
 import { ingestFiles } from '$lib/server/ingest/ingest-files';
 import { sendLetter } from '$lib/server/mail/send-letter';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
@@ -8,7 +9,7 @@ import { measureOnThread, takeOnThread } from '../thread-pool';
 type Handlers = { [N in JobName]: (payload: JobPayload<N>, jobId: string) => Promise<void> };
 
 /** Who writes the letters of each kind. */
-const letters = { invitation: composeInvitation };
+const letters = { invitation: composeInvitation, 'night report': composeReport };
 
 /** One handler a job name; each is idempotent. */
 export const handlers: Handlers = {

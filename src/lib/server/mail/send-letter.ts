@@ -14,20 +14,14 @@ const MOST_TRIES = 240;
  * The mail job: composes a letter and hands it to the mail server. One that was sent is not sent again; a crash between
  * the server's yes and our note of it sends it twice, which no protocol of mail can rule out.
  */
-export async function sendLetter(
-  letterId: string,
-  jobId: string,
-  compose: Partial<Record<LetterKind, Compose>>,
-): Promise<void> {
+export async function sendLetter(letterId: string, jobId: string, compose: Record<LetterKind, Compose>): Promise<void> {
   const row = await takeLetter(letterId);
-  const settled = row?.state === 'waiting' ? await trySending(row, compose[row.kind] ?? nothing) : null;
+  const settled = row?.state === 'waiting' ? await trySending(row, compose[row.kind]) : null;
   await inTransaction(async (transaction) => {
     if (settled) await settleLetter(letterId, settled, transaction);
     await fulfil([jobId], transaction);
   });
 }
-
-const nothing: Compose = async () => null;
 
 async function trySending(
   row: LetterRow,

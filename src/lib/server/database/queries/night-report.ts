@@ -55,3 +55,31 @@ export async function instrumentOfNight(nightId: string): Promise<Instrument | n
   );
   return row ? parsed<Instrument>(row.description) : null;
 }
+
+/** A night whose report may be due, with whoever opened it. */
+export interface NightAtRest {
+  id: string;
+  civilDate: string;
+  createdBy: string;
+  instrument: Instrument | null;
+}
+
+/**
+ * Nights in which nothing waits, nothing came within `quietSeconds` and something did within `sinceSeconds`, and whose
+ * report was not posted yet.
+ */
+export async function nightsAtRest(now: Date, quietSeconds: number, sinceSeconds: number): Promise<NightAtRest[]> {
+  const rows = await database().query<Omit<NightAtRest, 'instrument'> & { description: string | Instrument | null }>(
+    `SELECT n.id, n.civil_date AS civilDate, n.created_by AS createdBy, i.description
+      FROM nights n LEFT JOIN instruments i ON i.id = n.instrument_id
+      WHERE (SELECT MAX(nf.added_at) FROM night_files nf WHERE nf.night_id = n.id)
+          BETWEEN :now - INTERVAL :sinceSeconds SECOND AND :now - INTERVAL :quietSeconds SECOND
+        AND NOT EXISTS (SELECT 1 FROM letters l WHERE l.night_id = n.id AND l.kind = 'night report')
+        AND NOT EXISTS (SELECT 1 FROM night_files nf JOIN files f ON f.id = nf.file_id
+          WHERE nf.night_id = n.id AND f.state = 'waiting')
+        AND NOT EXISTS (SELECT 1 FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
+          WHERE nf.night_id = n.id AND s.state = 'waiting')`,
+    { replacements: { now, quietSeconds, sinceSeconds }, ...select },
+  );
+  return rows.map(({ description, ...row }) => ({ ...row, instrument: parsed<Instrument>(description) }));
+}
