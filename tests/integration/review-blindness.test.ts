@@ -131,6 +131,13 @@ describe('blindness', () => {
     for (const told of ['telling-verdict', 'telling-comment', 'blend']) expect(after).toContain(told);
   });
 
+  it('holds for a token that may only read', async () => {
+    await recordVerdict(ines, ids[0], { ...first, confidence: 'probable', comment: 'telling-verdict' });
+    await commentOn(ines, ids[0], 'telling-comment');
+    const sent = await sentTo({ ...koji, scopes: new Set(['read'] as const) });
+    for (const told of ['telling-', ines.name, '"verdict":{']) expect(sent).not.toContain(told);
+  });
+
   it('comes back with an undo', async () => {
     await recordVerdict(ines, ids[0], { ...first, comment: 'telling-verdict' });
     const { verdictId } = await recordVerdict(koji, ids[0], second);

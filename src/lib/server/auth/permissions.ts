@@ -48,6 +48,14 @@ export function may(actor: Actor | null, permission: Permission, programmeId: st
 }
 
 /**
+ * True if a role of the person's allows this, whatever their token's scopes. Blindness asks this: a token that may only
+ * read does not make a scientist someone who gives no verdicts.
+ */
+export function mayByRole(actor: Actor, permission: Permission, programmeId: string): boolean {
+  return may({ ...actor, scopes: null }, permission, programmeId);
+}
+
+/**
  * Refuses unless the actor may. Asked by every use-case.
  * Someone outside the programme learns that the thing is not found; a member with too little learns what is missing.
  */

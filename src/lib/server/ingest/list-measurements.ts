@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { decodeCursor, encodeCursor } from '$lib/api/cursor';
 import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { Refusal } from '$lib/domain/refusal';
-import { may, permit, type Actor } from '../auth/permissions';
+import { mayByRole, permit, type Actor } from '../auth/permissions';
 import { findNight } from '../database/queries/nights';
 import { nightMeasurementRows } from '../database/queries/night-measurements';
 
@@ -21,8 +21,9 @@ export async function listMeasurements(
 ): Promise<{ rows: (NightMeasurement & Partial<FullAnswer>)[]; next: string | null }> {
   const night = await findNight(nightId);
   if (!night) throw new Refusal('not-found', 'There is no such night, or it belongs to a programme you are not in.');
-  const { userId } = permit(actor, 'night.read', night.programmeId);
-  const judges = may(actor, 'spectrum.judge', night.programmeId);
+  const reader = permit(actor, 'night.read', night.programmeId);
+  const { userId } = reader;
+  const judges = mayByRole(reader, 'spectrum.judge', night.programmeId);
   const after = cursor ? String(decodeCursor(cursor, 1)[0]) : null;
   const rows = await nightMeasurementRows(nightId, limit + 1, after, { userId, judges, full: detail === 'full' });
   const page = rows.slice(0, limit);

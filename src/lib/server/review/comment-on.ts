@@ -1,5 +1,5 @@
 import { Refusal } from '$lib/domain/refusal';
-import { may, permit, type Actor } from '../auth/permissions';
+import { mayByRole, permit, type Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
 import { appendComment, everJudged } from '../database/queries/comments';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
@@ -12,8 +12,9 @@ import { lockSpectrum } from '../database/queries/verdicts';
 export async function commentOn(actor: Actor | null, spectrumId: string, text: string): Promise<{ commentId: string }> {
   const spectrum = await findReviewed(spectrumId);
   if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
-  const { userId } = permit(actor, 'spectrum.comment', spectrum.programmeId);
-  const judges = may(actor, 'spectrum.judge', spectrum.programmeId);
+  const author = permit(actor, 'spectrum.comment', spectrum.programmeId);
+  const { userId } = author;
+  const judges = mayByRole(author, 'spectrum.judge', spectrum.programmeId);
   return inTransaction(async (transaction) => {
     await lockSpectrum(spectrumId, transaction);
     const shownToAll = !judges && !(await everJudged(spectrumId, transaction));

@@ -1,6 +1,6 @@
 import type { ShownComment } from '$lib/domain/spectrum-comment';
 import { Refusal } from '$lib/domain/refusal';
-import { may, permit, type Actor } from '../auth/permissions';
+import { may, mayByRole, permit, type Actor } from '../auth/permissions';
 import { judgesOf, standingAssignment, type AssignmentRow } from '../database/queries/assignments';
 import { commentsOn } from '../database/queries/comments';
 import { namedVerdicts } from '../database/queries/looks';
@@ -49,7 +49,7 @@ export async function readExchange(actor: Actor | null, spectrumId: string): Pro
   ]);
   const { standing, sees, mayRule } = sightOf(reader, programmeId, verdicts, ruling);
   // A third person to an open question may still give a look of their own instead: comments wait for it.
-  const open = !may(actor, 'spectrum.judge', programmeId) || (sees && !mayRule);
+  const open = !mayByRole(reader, 'spectrum.judge', programmeId) || (sees && !mayRule);
   const shown = comments.filter(({ shownToAll, userId }) => open || shownToAll || userId === reader.userId);
   const asked = standing === 'open' || standing === 'ruled';
   return {

@@ -1,5 +1,5 @@
 import { standingDecision, type Standing } from '$lib/science/review/standing-decision';
-import { may, type Actor } from '../auth/permissions';
+import { may, mayByRole, type Actor } from '../auth/permissions';
 import type { LookRow } from '../database/queries/looks';
 import type { ProgrammeRulingRow } from '../database/queries/rulings';
 
@@ -26,6 +26,6 @@ export function sightOf(actor: Actor, programmeId: string, verdicts: readonly Lo
   const judged = verdicts.some(({ userId }) => userId === actor.userId);
   const rules = may(actor, 'spectrum.rule', programmeId);
   const mayRule = rules && !judged && standing === 'open';
-  const looksOn = rules && !may(actor, 'spectrum.judge', programmeId);
+  const looksOn = rules && !mayByRole(actor, 'spectrum.judge', programmeId);
   return { standing, judged, mayRule, sees: judged || mayRule || looksOn || ruling?.userId === actor.userId };
 }
