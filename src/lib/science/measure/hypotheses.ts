@@ -41,6 +41,8 @@ const IDENTITIES = [
   '[S III] 9533',
   'Paschen-alpha 18756',
 ];
+/** Log evidence that the filters must give a quasar for its costly fit to be worth while. */
+const LEAST_BROAD_SCORE = 0;
 /** Levenberg-Marquardt steps for every suspect, and then for the best. */
 const FIRST_STEPS = 2;
 const MORE_STEPS = 3;
@@ -177,7 +179,9 @@ function suspectsOf(
     settings.candidatesFitted + 2,
   );
   const broadPeaks = scanRedshifts(bands, BROAD_SCAN_LINES, range, 8, 3000);
-  const broad = shortlist(bands, broadPeaks, 'broad', relativeResolution, logNoiseFlux, 3);
+  const broad = shortlist(bands, broadPeaks, 'broad', relativeResolution, logNoiseFlux, 3).filter(
+    (suspect) => suspect.score > LEAST_BROAD_SCORE,
+  );
   const suspects = [...narrow, ...broad];
   // A quasar's narrow lines may give its redshift away before its broad ones do, and the other way round.
   for (const suspect of narrow.slice(0, 2)) {
