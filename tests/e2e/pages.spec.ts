@@ -17,6 +17,8 @@ const PAGES: { name: string; who: string | null; path: string; first?: string; t
   { name: 'night report', who: 'Rua', path: '/nights', first: 'a[href^="/nights/"]', then: '/report' },
   { name: 'review list', who: 'Ines', path: '/review' },
   { name: 'review', who: 'Ines', path: '/review', first: 'a[href^="/review/"]' },
+  { name: 'open questions', who: 'Felix', path: '/review?show=open' },
+  { name: 'review statistics', who: 'Maren', path: '/review/statistics' },
   { name: 'programmes', who: 'Maren', path: '/programmes' },
   { name: 'account', who: 'Ines', path: '/account' },
   { name: 'drafts', who: 'Maren', path: '/drafts' },
