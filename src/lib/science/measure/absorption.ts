@@ -150,9 +150,12 @@ export function absorptionEvidence(
         const node = (Math.log(rest) + logScale - bank.start) / bank.step;
         const k = Math.round(node);
         if (k < 0 || k >= bank.count || !(filter.information[k] > 0)) continue;
+        // Nothing can be taken from light that is not there: a dip below no continuum is no absorption.
+        const light = level(rest * Math.exp(logScale));
+        if (!(light > 0)) continue;
         const width =
           2.3548 * Math.hypot(relativeResolution, filter.sigmaKms / SPEED_OF_LIGHT_KMS) * rest * Math.exp(logScale);
-        const fault = (CONTINUUM_FAULT[family.wide ? 1 : 0] * level(rest * Math.exp(logScale)) * width) ** 2;
+        const fault = (CONTINUUM_FAULT[family.wide ? 1 : 0] * light * width) ** 2;
         const info = filter.information[k] * rescale;
         right.push((-filter.numerator[k] * rescale) / (1 + info * fault));
         information.push(info / (1 + info * fault));
