@@ -40,6 +40,7 @@ describe('rankRepeats', () => {
     expect(reachOf(repeat('', 1, needed(3600), 1))).toBe('fits');
     expect(reachOf(repeat('', 1, needed(3601), 1))).toBe('in part');
     expect(reachOf(repeat('', 1, needed(60), 0))).toBe('down');
+    expect(reachOf(repeat('', 1, needed(60), 4 / 60))).toBe('down');
     expect(reachOf(repeat('', 1, needed(null), 1))).toBe('not known');
     expect(reachOf({ ...repeat('', 1, needed(60), 1), placeKnown: false })).toBe('not known');
   });

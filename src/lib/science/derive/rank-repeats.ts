@@ -16,11 +16,13 @@ export interface Repeat {
 export type Reach = 'fits' | 'in part' | 'down' | 'not known';
 
 const SECONDS_AN_HOUR = 3600;
+/** Pointing at a target and starting an exposure takes this long: less is no time. Common practice, no source. */
+const LEAST_MS = 300_000;
 
 /** Whether what is needed fits into the time that is left. */
 export function reachOf({ needed, up, placeKnown }: Repeat): Reach {
   if (!placeKnown) return 'not known';
-  if (!up || up.untilMs <= up.fromMs) return 'down';
+  if (!up || up.untilMs - up.fromMs < LEAST_MS) return 'down';
   if (!needed || needed.extraSeconds === null) return 'not known';
   return needed.extraSeconds * 1000 <= up.untilMs - up.fromMs ? 'fits' : 'in part';
 }
