@@ -3,6 +3,7 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { VerdictInput } from '$lib/domain/verdict';
 import type { Actor } from '$lib/server/auth/permissions';
 import { database } from '$lib/server/database/connection';
+import { statements } from '$lib/server/database/migrations/0002-review-together';
 import { standingVerdict } from '$lib/server/database/queries/verdicts';
 import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { listQueue } from '$lib/server/review/list-queue';
@@ -154,5 +155,13 @@ describe('listQueue', () => {
     await recordVerdict(ines, spectra[0], accept);
     expect(await waits()).toEqual([spectra[1]]);
     expect(await listQueue(stranger, { night, show: 'all' })).toEqual([]);
+  });
+});
+
+describe('the migration', () => {
+  it('can be run again after a kill, and loses nothing', async () => {
+    await recordVerdict(ines, spectra[0], { ...accept, lookSeconds: 4.2 });
+    for (const statement of [...statements, ...statements]) await database().query(statement);
+    expect(await standing(ines)).toMatchObject({ redshift: 0.3, lookSeconds: 4.2 });
   });
 });
