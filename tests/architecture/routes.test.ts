@@ -64,9 +64,10 @@ describe('every use-case asks for permission', () => {
     const text = readFileSync(path, 'utf8');
     const takesActor = /\bactor: Actor\b/.test(text);
     if (!takesActor) return;
-    const asks = /\b(permit|permitSelf|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
-      text,
-    );
+    const asks =
+      /\b(permit|permitSelf|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
+        text,
+      );
     const isPublic = /Public use-case/.test(text);
     expect(asks || isPublic, `${path} takes an actor and never asks what they may`).toBe(true);
   });
