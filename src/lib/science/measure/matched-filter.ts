@@ -1,5 +1,5 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
-import { normalCumulative } from './normal-distribution';
+import { erfc } from './normal-distribution';
 
 /** Pixels that share one kernel: the line-spread function varies slowly. */
 const BLOCK = 128;
@@ -46,6 +46,7 @@ export function matchedFilter(input: FilterInput, sigmaKms: number): FilterOutpu
     sumResidual[i + 1] = sumResidual[i] + weighted[i];
   }
   let kernel = new Float64Array(64);
+  const sums = new Float64Array(6);
   let middleSigma = 1;
   for (let start = 0; start < count; start += BLOCK) {
     const end = Math.min(count, start + BLOCK);
@@ -55,40 +56,94 @@ export function matchedFilter(input: FilterInput, sigmaKms: number): FilterOutpu
     const sigma = Math.sqrt(lsfSigma[middle] ** 2 + intrinsic * intrinsic) / pixel;
     if (start <= count / 2) middleSigma = sigma;
     const reach = Math.max(2, Math.ceil(3.2 * sigma));
-    const width = 2 * reach + 1;
-    if (kernel.length < width) kernel = new Float64Array(2 * width);
-    for (let t = 0; t < width; t++) {
-      const x = t - reach;
-      kernel[t] = (normalCumulative((x + 0.5) / sigma) - normalCumulative((x - 0.5) / sigma)) / pixel;
-    }
+    if (kernel.length < 2 * reach + 3) kernel = new Float64Array(4 * reach + 6);
+    fillKernel(kernel, reach, sigma, pixel);
     const margin = reach + Math.max(4, reach);
-    for (let j = start; j < end; j++) {
-      const from = Math.max(0, j - reach);
-      const to = Math.min(count - 1, j + reach);
-      let kr = 0;
-      let kk = 0;
-      let k1 = 0;
-      for (let i = from, t = from - j + reach; i <= to; i++, t++) {
-        const k = kernel[t];
-        const wk = weight[i] * k;
-        kr += weighted[i] * k;
-        kk += wk * k;
-        k1 += wk;
-      }
-      const a = Math.max(0, j - margin);
-      const b = Math.min(count, j + margin + 1);
-      const total = sumWeight[b] - sumWeight[a];
-      if (!(total > 0) || !(kk > 0)) continue;
-      const ratio = k1 / total;
-      const info = kk - k1 * ratio;
-      // Where nearly all of the kernel is lost to the constant (edge of a gap) nothing can be said.
-      if (info > 0.02 * kk) {
-        numerator[j] = kr - ratio * (sumResidual[b] - sumResidual[a]);
-        information[j] = info;
+    for (let j = start; j < end; j += 2) {
+      correlatePair(kernel, reach, weight, weighted, count, j, sums);
+      for (let p = 0; p < 2 && j + p < end; p++) {
+        const kr = sums[3 * p];
+        const kk = sums[3 * p + 1];
+        const a = Math.max(0, j + p - margin);
+        const b = Math.min(count, j + p + margin + 1);
+        const total = sumWeight[b] - sumWeight[a];
+        if (!(total > 0) || !(kk > 0)) continue;
+        const ratio = sums[3 * p + 2] / total;
+        const info = kk - sums[3 * p + 2] * ratio;
+        // Where nearly all of the kernel is lost to the constant (edge of a gap) nothing can be said.
+        if (info > 0.02 * kk) {
+          numerator[j + p] = kr - ratio * (sumResidual[b] - sumResidual[a]);
+          information[j + p] = info;
+        }
       }
     }
   }
   return { numerator, information, sigmaPixels: middleSigma };
+}
+
+/**
+ * Fills a kernel of 2 reach + 1 pixels with the share of a Gaussian's flux in each, per ångström, and a zero on either
+ * side. Neighbours share an edge, and edges on both sides of the middle lie equally far from it.
+ */
+function fillKernel(kernel: Float64Array, reach: number, sigma: number, pixel: number): void {
+  const last = 2 * reach + 2;
+  kernel[0] = 0;
+  kernel[last] = 0;
+  let outer = 0.5 * erfc(((reach + 0.5) / sigma) * Math.SQRT1_2);
+  for (let x = reach; x > 0; x--) {
+    const inner = 0.5 * erfc(((x - 0.5) / sigma) * Math.SQRT1_2);
+    kernel[reach + 1 - x] = (inner - outer) / pixel;
+    kernel[reach + 1 + x] = (1 - outer - (1 - inner)) / pixel;
+    outer = inner;
+  }
+  kernel[reach + 1] = (1 - outer - outer) / pixel;
+}
+
+/**
+ * Sums of w k r, w k k and w k for the pixels j and j + 1, side by side: both read the same pixels, the second with the
+ * kernel one step behind, where its zeros add nothing.
+ *
+ * @param sums written: three for j, three for j + 1
+ */
+function correlatePair(
+  kernel: Float64Array,
+  reach: number,
+  weight: Float64Array,
+  weighted: Float64Array,
+  count: number,
+  j: number,
+  sums: Float64Array,
+): void {
+  const from = Math.max(0, j - reach);
+  const to = Math.min(count - 1, j + 1 + reach);
+  let kr = 0;
+  let kk = 0;
+  let k1 = 0;
+  let nextKr = 0;
+  let nextKk = 0;
+  let nextK1 = 0;
+  let t = from - j + reach + 1;
+  let behind = kernel[t - 1];
+  for (let i = from; i <= to; i++, t++) {
+    const k = kernel[t];
+    const w = weight[i];
+    const r = weighted[i];
+    const wk = w * k;
+    kr += r * k;
+    kk += wk * k;
+    k1 += wk;
+    const nextWk = w * behind;
+    nextKr += r * behind;
+    nextKk += nextWk * behind;
+    nextK1 += nextWk;
+    behind = k;
+  }
+  sums[0] = kr;
+  sums[1] = kk;
+  sums[2] = k1;
+  sums[3] = nextKr;
+  sums[4] = nextKk;
+  sums[5] = nextK1;
 }
 
 /**

@@ -1,6 +1,7 @@
 import { lineByName } from '../constants/lines';
 import type { FilterBank } from './detect';
 import { selectInPlace } from './order-statistics';
+import { sumShifted, type ShiftedRow } from './shifted-sums';
 
 /** A line of the scan: how much its absence costs and its presence brings. */
 export interface ScanLine {
@@ -91,7 +92,7 @@ export function scanRedshifts(
   separationKms: number,
   sign: 1 | -1 = 1,
 ): ScanPeak[] {
-  const { start, step, count } = bank;
+  const { start, step } = bank;
   const firstNode = Math.floor(Math.log1p(redshiftRange[0]) / step);
   const lastNode = Math.ceil(Math.log1p(redshiftRange[1]) / step);
   const nodes = lastNode - firstNode + 1;
@@ -100,32 +101,32 @@ export function scanRedshifts(
   const bestFilter = new Uint8Array(nodes);
   const total = new Float64Array(nodes);
   const presences = [...new Set(lines.map((line) => line.presence))];
-  bank.filters.forEach((filter, f) => {
-    total.fill(0);
-    const odds = lineOdds(filter.significance, filter.information, sign);
+  for (let f = 0; f < bank.filters.length; f++) {
+    const { significance, information } = bank.filters[f];
+    const odds = lineOdds(significance, information, sign);
+    const rows: ShiftedRow[] = [];
     for (const presence of presences) {
-      const gain = lineGains(odds, filter.information, presence);
+      const values = lineGains(odds, information, presence);
       for (const line of lines) {
         if (line.presence !== presence) continue;
         // Node of the line's rest wavelength relative to the grid: observed node = redshift node + shift.
-        addShifted(total, gain, Math.round((line.logRest - start) / step) + firstNode, nodes, count);
+        rows.push({ values, shift: Math.round((line.logRest - start) / step) + firstNode });
       }
     }
-    for (let m = 0; m < nodes; m++) {
-      if (total[m] > best[m]) {
-        best[m] = total[m];
-        bestFilter[m] = f;
-      }
-    }
-  });
+    sumShifted(rows, total);
+    keepBest(total, f, best, bestFilter);
+  }
   return distinctPeaks(best, bestFilter, firstNode, step, limit, separationKms);
 }
 
-/** Adds gain[m + shift] to total[m] wherever both exist. */
-function addShifted(total: Float64Array, gain: Float64Array, shift: number, nodes: number, count: number): void {
-  const from = Math.max(0, -shift);
-  const to = Math.min(nodes, count - shift);
-  for (let m = from; m < to; m++) total[m] += gain[m + shift];
+/** Raises `best` to `total` where that is higher, and notes the filter. */
+function keepBest(total: Float64Array, filter: number, best: Float64Array, bestFilter: Uint8Array): void {
+  for (let m = 0; m < total.length; m++) {
+    if (total[m] > best[m]) {
+      best[m] = total[m];
+      bestFilter[m] = filter;
+    }
+  }
 }
 
 /** Odds exp(b) of a line of positive flux at every node, best of the node and its neighbours. */
@@ -150,8 +151,16 @@ function lineOdds(significance: Float64Array, information: Float64Array, sign: 1
 function lineGains(odds: Float64Array, information: Float64Array, presence: number): Float64Array {
   const gain = new Float64Array(odds.length);
   const absent = 1 - presence;
+  let lastOdds = NaN;
+  let lastGain = 0;
   for (let k = 0; k < odds.length; k++) {
-    if (information[k] > 0) gain[k] = Math.min(GAIN_CAP, Math.log(absent + presence * odds[k]));
+    if (!(information[k] > 0)) continue;
+    // Neighbours often share their odds (the best of three nodes), and so one logarithm.
+    if (odds[k] !== lastOdds) {
+      lastOdds = odds[k];
+      lastGain = Math.min(GAIN_CAP, Math.log(absent + presence * lastOdds));
+    }
+    gain[k] = lastGain;
   }
   return gain;
 }
