@@ -116,13 +116,14 @@ export function weighFit(
   const explained = features.map((_, index) => index).filter((index) => onFeatures[index] > 2.5);
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
+  const ownEvidence = best + peakWidth + broken + equivalentWidthPrior(context, fit);
   return {
     fit,
     errors,
     kind,
     family: bestFamily,
-    logEvidence: best + peakWidth + broken + equivalentWidthPrior(context, fit),
-    ownEvidence: best + peakWidth + broken + equivalentWidthPrior(context, fit),
+    logEvidence: ownEvidence,
+    ownEvidence,
     onFeatures,
     explained,
     noiseFactor: errorScale,

@@ -45,62 +45,31 @@ export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, lo
   const { count: n, gram, right } = likelihood;
   const failed = { logEvidence: -Infinity, logReference: -Infinity };
   if (n === 0) return failed;
-  const precision = new Float64Array(n);
+  reserve(n);
+  const { precision, ratio, u, trial, step, matrix } = work;
   const referencePrecision = 1 / LOG_FLUX_SIGMA ** 2;
-  const referenceMean = logNoiseFlux + LOG_FLUX_MEAN;
-  let precisionSum = referencePrecision;
+  const problem: Problem = { n, gram, right, model, referenceMean: logNoiseFlux + LOG_FLUX_MEAN, precisionSum: 0 };
+  problem.precisionSum = referencePrecision;
   let logScatter = 0;
   for (let i = 0; i < n; i++) {
     precision[i] = 1 / model.scatter[i] ** 2;
-    precisionSum += precision[i];
+    problem.precisionSum += precision[i];
     logScatter += Math.log(model.scatter[i]);
+    ratio[i] = Math.exp(model.logRatio[i]);
   }
-  const u = new Float64Array(n);
   // The start: the reference flux that fits best with ratios at their medians, and each line between that and its own.
   let rb = 0;
   let rgr = 0;
   for (let i = 0; i < n; i++) {
-    const ri = Math.exp(model.logRatio[i]);
-    rb += ri * right[i];
-    for (let j = 0; j < n; j++) rgr += ri * gram[i * n + j] * Math.exp(model.logRatio[j]);
+    rb += ratio[i] * right[i];
+    for (let j = 0; j < n; j++) rgr += ratio[i] * gram[i * n + j] * ratio[j];
   }
   const start = Math.log(Math.max(rb / rgr, 0.3 / Math.sqrt(rgr)));
   for (let i = 0; i < n; i++) u[i] = start + model.logRatio[i];
-  const a = new Float64Array(n);
-  const matrix = new Float64Array(n * n);
-  const step = new Float64Array(n);
-  const evaluate = (at: Float64Array): { value: number; reference: number } => {
-    let weighted = referencePrecision * referenceMean;
-    for (let i = 0; i < n; i++) {
-      a[i] = Math.exp(at[i]);
-      weighted += precision[i] * (at[i] - model.logRatio[i]);
-    }
-    const reference = weighted / precisionSum;
-    let value = -0.5 * referencePrecision * (reference - referenceMean) ** 2;
-    for (let i = 0; i < n; i++) {
-      let ga = 0;
-      for (let j = 0; j < n; j++) ga += gram[i * n + j] * a[j];
-      value += a[i] * (right[i] - 0.5 * ga) - 0.5 * precision[i] * (at[i] - model.logRatio[i] - reference) ** 2;
-    }
-    return { value, reference };
-  };
-  const buildHessian = (reference: number, safe: boolean): void => {
-    for (let i = 0; i < n; i++) {
-      let gradient = right[i];
-      for (let j = 0; j < n; j++) gradient -= gram[i * n + j] * a[j];
-      for (let j = 0; j < n; j++) {
-        matrix[i * n + j] = a[i] * gram[i * n + j] * a[j] - (precision[i] * precision[j]) / precisionSum;
-      }
-      const curve = -a[i] * gradient;
-      matrix[i * n + i] += precision[i] + (safe ? Math.max(0, curve) : curve) + 1e-9;
-      step[i] = a[i] * gradient - precision[i] * (u[i] - model.logRatio[i] - reference);
-    }
-  };
-  let current = evaluate(u);
-  const trial = new Float64Array(n);
+  let current = evaluate(problem, u);
+  let reference = work.reference;
   for (let round = 0; round < 25; round++) {
-    evaluate(u);
-    buildHessian(current.reference, true);
+    buildHessian(problem, reference, true);
     if (!choleskyInPlace(matrix, n)) return failed;
     choleskySolve(matrix, step, n);
     let largest = 0;
@@ -109,26 +78,99 @@ export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, lo
     let next = current;
     for (let half = 0; half < 6; half++) {
       for (let i = 0; i < n; i++) trial[i] = u[i] + scale * step[i];
-      next = evaluate(trial);
-      if (next.value >= current.value - 1e-9) break;
+      next = evaluate(problem, trial);
+      if (next >= current - 1e-9) break;
       scale *= 0.4;
     }
-    if (!(next.value >= current.value - 1e-9)) break;
-    u.set(trial);
-    const change = next.value - current.value;
+    if (!(next >= current - 1e-9)) {
+      // Back to the fluxes of the last point that was taken.
+      evaluate(problem, u);
+      break;
+    }
+    for (let i = 0; i < n; i++) u[i] = trial[i];
+    const change = next - current;
     current = next;
+    reference = work.reference;
     if (change < 1e-3 && largest < 0.05) break;
   }
-  evaluate(u);
-  buildHessian(current.reference, false);
+  buildHessian(problem, reference, false);
   if (!choleskyInPlace(matrix, n)) {
-    evaluate(u);
-    buildHessian(current.reference, true);
+    buildHessian(problem, reference, true);
     if (!choleskyInPlace(matrix, n)) return failed;
   }
   let logDeterminant = 0;
   for (let i = 0; i < n; i++) logDeterminant += 2 * Math.log(matrix[i * n + i]);
   const logEvidence =
-    current.value - logScatter - Math.log(LOG_FLUX_SIGMA) - 0.5 * Math.log(precisionSum) - 0.5 * logDeterminant;
-  return { logEvidence, logReference: current.reference };
+    current - logScatter - Math.log(LOG_FLUX_SIGMA) - 0.5 * Math.log(problem.precisionSum) - 0.5 * logDeterminant;
+  return { logEvidence, logReference: reference };
+}
+
+/** One integral's data. */
+interface Problem extends Omit<FluxLikelihood, 'count'> {
+  n: number;
+  model: RatioModel;
+  referenceMean: number;
+  /** Of the ratio priors and of the reference flux's own. */
+  precisionSum: number;
+}
+
+/** Reused between calls; written before read. */
+const work = {
+  precision: new Float64Array(32),
+  ratio: new Float64Array(32),
+  u: new Float64Array(32),
+  trial: new Float64Array(32),
+  step: new Float64Array(32),
+  /** Fluxes at the point evaluated last. */
+  a: new Float64Array(32),
+  matrix: new Float64Array(32 * 32),
+  /** ln of the reference flux that is most probable at the point evaluated last. */
+  reference: 0,
+};
+
+function reserve(n: number): void {
+  if (work.u.length >= n) return;
+  for (const name of ['precision', 'ratio', 'u', 'trial', 'step', 'a'] as const) work[name] = new Float64Array(2 * n);
+  work.matrix = new Float64Array(4 * n * n);
+}
+
+/** Log posterior density Q at a point, the reference flux at its best; leaves the fluxes and the reference in `work`. */
+function evaluate({ n, gram, right, model, referenceMean, precisionSum }: Problem, at: Float64Array): number {
+  const { precision, a } = work;
+  const { logRatio } = model;
+  const referencePrecision = 1 / LOG_FLUX_SIGMA ** 2;
+  let weighted = referencePrecision * referenceMean;
+  for (let i = 0; i < n; i++) {
+    a[i] = Math.exp(at[i]);
+    weighted += precision[i] * (at[i] - logRatio[i]);
+  }
+  const reference = weighted / precisionSum;
+  let value = -0.5 * referencePrecision * (reference - referenceMean) ** 2;
+  for (let i = 0; i < n; i++) {
+    let ga = 0;
+    for (let j = 0; j < n; j++) ga += gram[i * n + j] * a[j];
+    value += a[i] * (right[i] - 0.5 * ga) - 0.5 * precision[i] * (at[i] - logRatio[i] - reference) ** 2;
+  }
+  work.reference = reference;
+  return value;
+}
+
+/**
+ * Sets `step` to the gradient and the lower triangle of `matrix` to minus the second derivatives of Q at `u`, whose
+ * fluxes were evaluated last.
+ *
+ * @param safe leaves out what would make the matrix indefinite
+ */
+function buildHessian({ n, gram, right, model, precisionSum }: Problem, reference: number, safe: boolean): void {
+  const { precision, a, u, step, matrix } = work;
+  for (let i = 0; i < n; i++) {
+    let gradient = right[i];
+    for (let j = 0; j < n; j++) gradient -= gram[i * n + j] * a[j];
+    for (let j = 0; j <= i; j++) {
+      matrix[i * n + j] = a[i] * gram[i * n + j] * a[j] - (precision[i] * precision[j]) / precisionSum;
+    }
+    const curve = -a[i] * gradient;
+    matrix[i * n + i] += precision[i] + (safe ? Math.max(0, curve) : curve) + 1e-9;
+    step[i] = a[i] * gradient - precision[i] * (u[i] - model.logRatio[i] - reference);
+  }
 }

@@ -1,7 +1,7 @@
 import { lineByName } from '../constants/lines';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import type { FilterBank } from './detect';
-import { familyEvidence, type FluxLikelihood, type RatioModel } from './evidence';
+import { familyEvidence } from './evidence';
 import type { Feature } from './features';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import type { ScanPeak } from './scan';
@@ -26,6 +26,8 @@ export interface Suspect {
 interface FamilyLines {
   logRest: Float64Array;
   logRatio: Float64Array;
+  /** Exponential of `logRatio`. */
+  ratio: Float64Array;
   scatter: Float64Array;
 }
 
@@ -37,30 +39,38 @@ const linesOf = new Map<LineFamily, FamilyLines>(
       {
         logRest: Float64Array.from(entries, ([name]) => Math.log(lineByName(name).wavelengthVacuum)),
         logRatio: Float64Array.from(entries, ([, [ratio]]) => Math.log(ratio)),
+        ratio: Float64Array.from(entries, ([, [ratio]]) => Math.exp(Math.log(ratio))),
         scatter: Float64Array.from(entries, ([, [, scatter]]) => scatter),
       },
     ];
   }),
 );
 
-/** Flux likelihood of a family's lines read off the filters at one redshift. */
-function likelihoodFromFilters(
+const MOST_LINES = Math.max(...LINE_FAMILIES.map((family) => Object.keys(family.lines).length));
+
+/** What the filters say of a family's lines; reused between calls, written before read. */
+const seen = {
+  likelihood: { count: 0, gram: new Float64Array(MOST_LINES ** 2), right: new Float64Array(MOST_LINES) },
+  model: { logRatio: new Float64Array(MOST_LINES), scatter: new Float64Array(MOST_LINES) },
+  ratio: new Float64Array(MOST_LINES),
+  information: new Float64Array(MOST_LINES),
+  position: new Float64Array(MOST_LINES),
+};
+
+/** Reads the flux likelihood of a family's lines off the filters at one redshift, into `seen`. */
+function readFilters(
   bank: FilterBank,
   filterIndex: number,
   family: LineFamily,
   logScale: number,
   relativeResolution: number,
-): { likelihood: FluxLikelihood; model: RatioModel } {
+): void {
   const filter = bank.filters[filterIndex];
   const lines = linesOf.get(family)!;
-  const most = lines.logRest.length;
-  const right = new Float64Array(most);
-  const information = new Float64Array(most);
-  const position = new Float64Array(most);
-  const logRatio = new Float64Array(most);
-  const scatter = new Float64Array(most);
+  const { information, position, ratio } = seen;
+  const { gram, right } = seen.likelihood;
   let count = 0;
-  for (let l = 0; l < most; l++) {
+  for (let l = 0; l < lines.logRest.length; l++) {
     const log = lines.logRest[l] + logScale;
     const at = (log - bank.start) / bank.step;
     const k = Math.floor(at);
@@ -72,37 +82,34 @@ function likelihoodFromFilters(
     right[count] = filter.numerator[k] * (1 - t) + filter.numerator[k + 1] * t;
     information[count] = a * (1 - t) + b * t;
     position[count] = log;
-    logRatio[count] = lines.logRatio[l];
-    scatter[count] = lines.scatter[l];
+    ratio[count] = lines.ratio[l];
+    seen.model.logRatio[count] = lines.logRatio[l];
+    seen.model.scatter[count] = lines.scatter[l];
     count++;
   }
   const sigma = Math.hypot(relativeResolution, filter.sigmaKms / SPEED_OF_LIGHT_KMS);
-  const gram = new Float64Array(count * count);
   for (let i = 0; i < count; i++) {
     gram[i * count + i] = 1.0001 * information[i];
     for (let j = 0; j < i; j++) {
       const apart = Math.abs(position[i] - position[j]) / sigma;
-      if (apart > OVERLAP_REACH) continue;
-      const both = Math.sqrt(information[i] * information[j]) * Math.exp(-0.25 * apart * apart);
+      const both =
+        apart > OVERLAP_REACH ? 0 : Math.sqrt(information[i] * information[j]) * Math.exp(-0.25 * apart * apart);
       gram[i * count + j] = both;
       gram[j * count + i] = both;
     }
   }
-  return {
-    likelihood: { count, gram, right: right.slice(0, count) },
-    model: { logRatio: logRatio.slice(0, count), scatter: scatter.slice(0, count) },
-  };
+  seen.likelihood.count = count;
 }
 
-/** Gain of the best single multiple of the family's median ratios: (r.b)^2 / (r G r) / 2, 0 where r.b is negative. */
-function templateGain(likelihood: FluxLikelihood, model: RatioModel): number {
-  const { count, gram, right } = likelihood;
+/** Gain of the best single multiple of the median ratios of what was read: (r.b)^2 / (r G r) / 2, 0 where r.b is negative. */
+function templateGain(): number {
+  const { count, gram, right } = seen.likelihood;
+  const { ratio } = seen;
   let rb = 0;
   let rgr = 0;
   for (let i = 0; i < count; i++) {
-    const ri = Math.exp(model.logRatio[i]);
-    rb += ri * right[i];
-    for (let j = 0; j < count; j++) rgr += ri * gram[i * count + j] * Math.exp(model.logRatio[j]);
+    rb += ratio[i] * right[i];
+    for (let j = 0; j < count; j++) rgr += ratio[i] * gram[i * count + j] * ratio[j];
   }
   return rb > 0 && rgr > 0 ? (0.5 * rb * rb) / rgr : 0;
 }
@@ -125,25 +132,17 @@ export function shortlist(
   const families = LINE_FAMILIES.filter((family) => (family.kind === 'broad') === (bankKind === 'broad'));
   const suspects: Suspect[] = [];
   for (const peak of peaks) {
-    const trials = families
-      .map((family) => {
-        const { likelihood, model } = likelihoodFromFilters(
-          bank,
-          peak.filter,
-          family,
-          peak.logScale,
-          relativeResolution,
-        );
-        return { family, likelihood, model, gain: templateGain(likelihood, model) };
-      })
-      .filter(
-        (trial) => trial.likelihood.count > 0 && (trial.family.kind !== 'lyman' || lymanCovered(bank, peak.logScale)),
-      )
-      .sort((a, b) => b.gain - a.gain)
-      .slice(0, 2);
+    const trials: { family: LineFamily; gain: number }[] = [];
+    for (const family of families) {
+      if (family.kind === 'lyman' && !lymanCovered(bank, peak.logScale)) continue;
+      readFilters(bank, peak.filter, family, peak.logScale, relativeResolution);
+      if (seen.likelihood.count > 0) trials.push({ family, gain: templateGain() });
+    }
+    trials.sort((a, b) => b.gain - a.gain);
     const best = new Map<SuspectKind, number>();
-    for (const { family, likelihood, model } of trials) {
-      const score = Math.log(family.weight) + familyEvidence(likelihood, model, logNoiseFlux).logEvidence;
+    for (const { family } of trials.slice(0, 2)) {
+      readFilters(bank, peak.filter, family, peak.logScale, relativeResolution);
+      const score = Math.log(family.weight) + familyEvidence(seen.likelihood, seen.model, logNoiseFlux).logEvidence;
       best.set(family.kind, Math.max(score, best.get(family.kind) ?? -Infinity));
     }
     for (const [kind, score] of best) {

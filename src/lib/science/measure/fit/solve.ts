@@ -20,11 +20,21 @@ export function choleskyInPlace(matrix: Float64Array, n: number, stride: number 
   return true;
 }
 
-/** Solves L L^T x = right in place, L from `choleskyInPlace`. */
-export function choleskySolve(factor: Float64Array, right: Float64Array, n: number, stride: number = n): void {
-  for (let i = 0; i < n; i++) {
+/**
+ * Solves L L^T x = right in place, L from `choleskyInPlace`.
+ *
+ * @param first leading elements of `right` that are known to be 0
+ */
+export function choleskySolve(
+  factor: Float64Array,
+  right: Float64Array,
+  n: number,
+  stride: number = n,
+  first: number = 0,
+): void {
+  for (let i = first; i < n; i++) {
     let sum = right[i];
-    for (let k = 0; k < i; k++) sum -= factor[i * stride + k] * right[k];
+    for (let k = first; k < i; k++) sum -= factor[i * stride + k] * right[k];
     right[i] = sum / factor[i * stride + i];
   }
   for (let i = n - 1; i >= 0; i--) {
@@ -43,7 +53,7 @@ export function invertPositiveDefinite(matrix: Float64Array, n: number): Float64
   for (let j = 0; j < n; j++) {
     column.fill(0);
     column[j] = 1;
-    choleskySolve(factor, column, n);
+    choleskySolve(factor, column, n, n, j);
     for (let i = 0; i < n; i++) inverse[i * n + j] = column[i];
   }
   return inverse;
@@ -68,7 +78,8 @@ export function nonNegativeSolve(gram: Float64Array, right: Float64Array, n: num
     for (let i = 0; i < n; i++) if (free[i]) index[m++] = i;
     for (let a = 0; a < m; a++) {
       target[a] = right[index[a]];
-      for (let b = 0; b < m; b++) block[a * m + b] = gram[index[a] * n + index[b]];
+      // The factorisation reads the lower triangle alone.
+      for (let b = 0; b <= a; b++) block[a * m + b] = gram[index[a] * n + index[b]];
       block[a * m + a] *= 1 + 1e-10;
     }
     if (m > 0 && !choleskyInPlace(block, m)) {
@@ -98,7 +109,7 @@ export function nonNegativeSolve(gram: Float64Array, right: Float64Array, n: num
       const diagonal = gram[i * n + i];
       if (free[i] || !(diagonal > 0)) continue;
       let gradient = right[i];
-      for (let j = 0; j < n; j++) gradient -= gram[i * n + j] * x[j];
+      for (let a = 0; a < m; a++) gradient -= gram[i * n + index[a]] * x[index[a]];
       const scaled = gradient / Math.sqrt(diagonal);
       if (scaled > steepest) {
         steepest = scaled;
