@@ -103,9 +103,10 @@ export function buildProfiles(
         if (component.fixedSigmaKms !== undefined) byWidth.fill(0, offset, offset + size);
       }
       for (let k = 0; k < window.basis.length; k++) {
-        const row = window.basis[k];
+        const row = window.weightedBasis[k];
+        const shift = offset - low;
         let dot = 0;
-        for (let i = low; i < high; i++) dot += data.weight[i] * row[i - window.from] * profile[offset + i - low];
+        for (let i = low; i < high; i++) dot += row[i - window.from] * profile[i + shift];
         onBasis[slot * BASIS_LIMIT + k] = dot;
       }
       offset += size;

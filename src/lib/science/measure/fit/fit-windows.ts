@@ -19,6 +19,8 @@ export interface FitWindow {
   to: number;
   /** Orthonormal (under the weights) polynomials, degree + 1 rows of to - from values. */
   basis: Float64Array[];
+  /** The same rows times the weights. */
+  weightedBasis: Float64Array[];
   /** Projections of the flux on the basis. */
   fluxOnBasis: Float64Array;
   /** Flux minus its projection. */
@@ -107,11 +109,13 @@ function projectContinuum(
   const middle = 0.5 * (wavelength[from] + wavelength[to - 1]);
   const half = 0.5 * (wavelength[to - 1] - wavelength[from]) || 1;
   const basis: Float64Array[] = [];
+  const weightedBasis: Float64Array[] = [];
   const fluxOnBasis = new Float64Array(degree + 1);
   const residual = flux.slice(from, to);
   for (let k = 0; k <= degree; k++) {
     const row = new Float64Array(length);
-    for (let i = 0; i < length; i++) row[i] = ((wavelength[from + i] - middle) / half) ** k;
+    if (k === 0) row.fill(1);
+    else for (let i = 0; i < length; i++) row[i] = ((wavelength[from + i] - middle) / half) ** k;
     for (const earlier of basis) {
       let dot = 0;
       for (let i = 0; i < length; i++) dot += weight[from + i] * row[i] * earlier[i];
@@ -121,16 +125,19 @@ function projectContinuum(
     for (let i = 0; i < length; i++) norm += weight[from + i] * row[i] * row[i];
     if (!(norm > 0)) return null;
     const inverse = 1 / Math.sqrt(norm);
+    const weighted = new Float64Array(length);
     let onFlux = 0;
     for (let i = 0; i < length; i++) {
       row[i] *= inverse;
-      onFlux += weight[from + i] * row[i] * residual[i];
+      weighted[i] = weight[from + i] * row[i];
+      onFlux += weighted[i] * residual[i];
     }
     for (let i = 0; i < length; i++) residual[i] -= onFlux * row[i];
     fluxOnBasis[k] = onFlux;
     basis.push(row);
+    weightedBasis.push(weighted);
   }
   let power = 0;
   for (let i = 0; i < length; i++) power += weight[from + i] * residual[i] * residual[i];
-  return { from, to, basis, fluxOnBasis, residual, power, usable };
+  return { from, to, basis, weightedBasis, fluxOnBasis, residual, power, usable };
 }

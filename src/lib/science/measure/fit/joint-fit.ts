@@ -56,7 +56,7 @@ export function jointFit(
 ): JointFit | null {
   const windows = cutWindows(data, components, start.logScale, start.sigmaKms);
   if (windows.length === 0) return null;
-  let state = solveAt(data, components, windows, start.logScale, [...start.sigmaKms], hold, null);
+  let state = solveAt(data, components, windows, start.logScale, [...start.sigmaKms], hold, null, -Infinity)!;
   let damping = 1e-3;
   for (let step = 0; step < steps; step++) {
     const move = shapeStep(state, damping, hold);
@@ -73,9 +73,9 @@ export function jointFit(
       [width(0), width(1)],
       hold,
       state.fit,
+      state.objective - 1e-9 * Math.abs(state.objective),
     );
-    const better = trial.objective >= state.objective - 1e-9 * Math.abs(state.objective);
-    if (better) {
+    if (trial) {
       const change = trial.objective - state.objective;
       state = trial;
       damping = Math.max(1e-7, damping * 0.1);
@@ -113,6 +113,12 @@ function shapeStep(state: State, damping: number, hold: readonly boolean[]): Flo
   return right;
 }
 
+/**
+ * Solves the fluxes at given shape parameters and sets up the next step.
+ *
+ * @param previous the fit that the step starts from; null for the first
+ * @param least null is returned where a step's objective is lower, before the costly equations of the shape are set up
+ */
 function solveAt(
   data: FitData,
   components: readonly LineComponent[],
@@ -121,7 +127,8 @@ function solveAt(
   sigmaKms: [number, number],
   hold: readonly boolean[],
   previous: JointFit | null,
-): State {
+  least: number,
+): State | null {
   const n = components.length;
   const gram = new Float64Array(n * n);
   const right = new Float64Array(n);
@@ -147,15 +154,16 @@ function solveAt(
       priorCost += amplitude[i] * (withPriors[i * n + j] - gram[i * n + j]) * amplitude[j];
     }
   }
+  const used = [0, 1].map((k) => components.some((component) => component.width === k));
+  const deviation = WIDTH_PRIOR.map((prior, k) => (Math.log(sigmaKms[k]) - prior.mean) / prior.sigma);
+  for (const k of [0, 1]) if (used[k]) priorCost += deviation[k] * deviation[k];
+  const objective = gain - priorCost;
+  if (previous && !(objective >= least)) return null;
   const shape = shapeEquations(data, components, windows, profiles, amplitude, free, withPriors);
-  for (const k of [0, 1] as const) {
-    const prior = WIDTH_PRIOR[k];
-    const used = components.some((component) => component.width === k);
-    if (!used) continue;
-    const deviation = (Math.log(sigmaKms[k]) - prior.mean) / prior.sigma;
-    priorCost += deviation * deviation;
-    shape.information[(k + 1) * 4] += 1 / prior.sigma ** 2;
-    shape.gradient[k + 1] -= deviation / prior.sigma;
+  for (const k of [0, 1]) {
+    if (!used[k]) continue;
+    shape.information[(k + 1) * 4] += 1 / WIDTH_PRIOR[k].sigma ** 2;
+    shape.gradient[k + 1] -= deviation[k] / WIDTH_PRIOR[k].sigma;
   }
   let parameters = 0;
   for (let i = 0; i < n; i++) if (free[i]) parameters++;
@@ -176,7 +184,7 @@ function solveAt(
     response: shape.response,
     gramWithPriors: withPriors,
   };
-  return { fit, objective: gain - priorCost, gradient: shape.gradient };
+  return { fit, objective, gradient: shape.gradient };
 }
 
 /** Adds one window's part to the normal equations of the fluxes, its continuum eliminated. */

@@ -15,7 +15,15 @@ export interface ShapeEquations {
 /** Reused between calls; written before read. */
 let residual = new Float64Array(2048);
 let derivatives = [new Float64Array(2048), new Float64Array(2048), new Float64Array(2048)];
+let weighted = new Float64Array(2048);
 const projected = [new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT)];
+
+/** Pixels of a window, counted from its first, in which the shape parameters act, and which parameters do. */
+interface Reach {
+  low: number;
+  high: number;
+  active: [boolean, boolean, boolean];
+}
 
 /** Sets up the equations of the shape parameters at a linear solution. */
 export function shapeEquations(
@@ -38,30 +46,28 @@ export function shapeEquations(
     const length = window.to - from;
     if (residual.length < length) {
       residual = new Float64Array(2 * length);
+      weighted = new Float64Array(2 * length);
       derivatives = derivatives.map(() => new Float64Array(2 * length));
     }
-    const active = differentiate(window, w, components, profiles, amplitude);
+    const { low, high, active } = differentiate(window, w, components, profiles, amplitude);
     for (let p = 0; p < 3; p++) {
-      if (!active[p]) continue;
-      const dp = derivatives[p];
-      for (let k = 0; k < window.basis.length; k++) {
-        const row = window.basis[k];
-        let dot = 0;
-        for (let i = 0; i < length; i++) dot += weight[from + i] * row[i] * dp[i];
-        projected[p][k] = dot;
-      }
+      if (active[p]) projectRow(window, derivatives[p], low, high, projected[p]);
     }
     for (let p = 0; p < 3; p++) {
       if (!active[p]) continue;
       const dp = derivatives[p];
       let toResidual = 0;
-      for (let i = 0; i < length; i++) toResidual += weight[from + i] * dp[i] * residual[i];
+      for (let i = low; i < high; i++) {
+        const value = weight[from + i] * dp[i];
+        weighted[i] = value;
+        toResidual += value * residual[i];
+      }
       gradient[p] += toResidual;
       for (let q = 0; q <= p; q++) {
         if (!active[q]) continue;
         const dq = derivatives[q];
         let sum = 0;
-        for (let i = 0; i < length; i++) sum += weight[from + i] * dp[i] * dq[i];
+        for (let i = low; i < high; i++) sum += weighted[i] * dq[i];
         for (let k = 0; k < window.basis.length; k++) sum -= projected[p][k] * projected[q][k];
         information[p * 3 + q] += sum;
         if (q !== p) information[q * 3 + p] += sum;
@@ -70,9 +76,10 @@ export function shapeEquations(
         const c = profiles.component[s];
         if (!free[c]) continue;
         const { profile } = profiles;
-        const shift = profiles.offset[s] - profiles.low[s];
+        const shift = profiles.offset[s] - profiles.low[s] + from;
+        const end = Math.min(high, profiles.high[s] - from);
         let sum = 0;
-        for (let i = profiles.low[s]; i < profiles.high[s]; i++) sum += weight[i] * dp[i - from] * profile[i + shift];
+        for (let i = Math.max(low, profiles.low[s] - from); i < end; i++) sum += weighted[i] * profile[i + shift];
         for (let k = 0; k < window.basis.length; k++) sum -= projected[p][k] * profiles.onBasis[s * BASIS_LIMIT + k];
         cross[c * 3 + p] += sum;
       }
@@ -81,20 +88,37 @@ export function shapeEquations(
   return { information, gradient, response: eliminateFluxes(gram, cross, free, n, information) };
 }
 
-/** Fills `residual` and `derivatives` for one window; tells which parameters act in it. */
+/** Projections of a row of values, 0 outside `low` to `high`, on a window's continuum basis. */
+function projectRow(window: FitWindow, values: Float64Array, low: number, high: number, onto: Float64Array): void {
+  for (let k = 0; k < window.basis.length; k++) {
+    const row = window.weightedBasis[k];
+    let dot = 0;
+    for (let i = low; i < high; i++) dot += row[i] * values[i];
+    onto[k] = dot;
+  }
+}
+
+/** Fills `residual` and `derivatives` for one window, as far as the shape parameters act there. */
 function differentiate(
   window: FitWindow,
   w: number,
   components: readonly LineComponent[],
   profiles: ComponentProfiles,
   amplitude: Float64Array,
-): [boolean, boolean, boolean] {
+): Reach {
   const { from } = window;
-  const length = window.to - from;
-  const active: [boolean, boolean, boolean] = [false, false, false];
-  for (let i = 0; i < length; i++) residual[i] = window.residual[i];
-  for (const row of derivatives) row.fill(0, 0, length);
-  for (let s = profiles.windowSlots[w]; s < profiles.windowSlots[w + 1]; s++) {
+  const reach: Reach = { low: window.to - from, high: 0, active: [false, false, false] };
+  const end = profiles.windowSlots[w + 1];
+  for (let s = profiles.windowSlots[w]; s < end; s++) {
+    if (amplitude[profiles.component[s]] === 0) continue;
+    reach.low = Math.min(reach.low, profiles.low[s] - from);
+    reach.high = Math.max(reach.high, profiles.high[s] - from);
+  }
+  const { low, high, active } = reach;
+  if (high <= low) return reach;
+  for (let i = low; i < high; i++) residual[i] = window.residual[i];
+  for (const row of derivatives) row.fill(0, low, high);
+  for (let s = profiles.windowSlots[w]; s < end; s++) {
     const c = profiles.component[s];
     const value = amplitude[c];
     if (value === 0) continue;
@@ -104,19 +128,20 @@ function differentiate(
     const toShift = derivatives[0];
     active[0] = true;
     active[widthIndex] = true;
-    const shift = profiles.offset[s] - profiles.low[s];
-    for (let i = profiles.low[s]; i < profiles.high[s]; i++) {
-      residual[i - from] -= value * profile[i + shift];
-      toShift[i - from] += value * byShift[i + shift];
-      toWidth[i - from] += value * byWidth[i + shift];
+    const shift = profiles.offset[s] - profiles.low[s] + from;
+    const last = profiles.high[s] - from;
+    for (let i = profiles.low[s] - from; i < last; i++) {
+      residual[i] -= value * profile[i + shift];
+      toShift[i] += value * byShift[i + shift];
+      toWidth[i] += value * byWidth[i + shift];
     }
     for (let k = 0; k < window.basis.length; k++) {
       const row = window.basis[k];
       const back = value * profiles.onBasis[s * BASIS_LIMIT + k];
-      for (let i = 0; i < length; i++) residual[i] += back * row[i];
+      for (let i = low; i < high; i++) residual[i] += back * row[i];
     }
   }
-  return active;
+  return reach;
 }
 
 /** Subtracts H^T G^-1 H from the shape information and returns -G^-1 H, rows of components by three columns. */
