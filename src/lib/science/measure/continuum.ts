@@ -1,5 +1,6 @@
 import { medianInPlace } from './order-statistics';
 import { solvePenalisedSmoother } from './penalised-smoother';
+import { Scratch } from './scratch';
 import type { WorkingSpectrum } from './working-spectrum';
 
 /** How stiff a continuum is, in natural logarithm of wavelength. */
@@ -14,6 +15,8 @@ export interface ContinuumScale {
 export const FLEXIBLE_CONTINUUM: ContinuumScale = { bin: 0.0025, period: 0.04 };
 /** Passes under quasar lines of 10,000 km/s. */
 export const STIFF_CONTINUUM: ContinuumScale = { bin: 0.01, period: 0.35 };
+
+const scratch = new Scratch();
 
 const CLIP_HIGH = 2;
 const CLIP_LOW = 3;
@@ -37,7 +40,7 @@ export function smoothContinuum(working: WorkingSpectrum, scale: ContinuumScale)
   const step = span / bins || 1;
   const centre = new Float64Array(bins);
   const binWeight = new Float64Array(bins);
-  const scratch = new Float64Array(count);
+  const inBin = scratch.take(count);
   let first = 0;
   for (let b = 0; b < bins; b++) {
     const end = b === bins - 1 ? Infinity : Math.exp(start + (b + 1) * step);
@@ -46,13 +49,13 @@ export function smoothContinuum(working: WorkingSpectrum, scale: ContinuumScale)
     let i = first;
     for (; i < count && wavelength[i] < end; i++) {
       if (weight[i] > 0) {
-        scratch[used++] = flux[i];
+        inBin[used++] = flux[i];
         total += weight[i];
       }
     }
     first = i;
     if (used === 0) continue;
-    centre[b] = medianInPlace(scratch, used);
+    centre[b] = medianInPlace(inBin, used);
     // The variance of a median is pi/2 times that of the mean.
     binWeight[b] = total / 1.5708;
   }
@@ -66,10 +69,10 @@ export function smoothContinuum(working: WorkingSpectrum, scale: ContinuumScale)
 }
 
 function robustSmooth(centre: Float64Array, binWeight: Float64Array, bins: number, penalty: number): Float64Array {
-  const scratch = new Float64Array(bins);
+  const values = new Float64Array(bins);
   let filled = 0;
-  for (let b = 0; b < bins; b++) if (binWeight[b] > 0) scratch[filled++] = binWeight[b];
-  const typical = medianInPlace(scratch, filled);
+  for (let b = 0; b < bins; b++) if (binWeight[b] > 0) values[filled++] = binWeight[b];
+  const typical = medianInPlace(values, filled);
   const weights = new Float64Array(bins);
   // Weights are bounded to a factor of 30 about the median, so that the smoothing length stays nearly uniform.
   const base = (b: number) => (binWeight[b] > 0 ? Math.min(30, Math.max(1 / 30, binWeight[b] / typical)) : 0);
@@ -78,9 +81,9 @@ function robustSmooth(centre: Float64Array, binWeight: Float64Array, bins: numbe
   for (let round = 0; round < 6; round++) {
     let used = 0;
     for (let b = 0; b < bins; b++) {
-      if (binWeight[b] > 0) scratch[used++] = Math.abs(centre[b] - smooth[b]) * Math.sqrt(binWeight[b]);
+      if (binWeight[b] > 0) values[used++] = Math.abs(centre[b] - smooth[b]) * Math.sqrt(binWeight[b]);
     }
-    const scatter = Math.max(1, 1.4826 * medianInPlace(scratch, used));
+    const scatter = Math.max(1, 1.4826 * medianInPlace(values, used));
     for (let b = 0; b < bins; b++) {
       if (!(binWeight[b] > 0)) continue;
       const deviation = ((centre[b] - smooth[b]) * Math.sqrt(binWeight[b])) / scatter;

@@ -1,5 +1,6 @@
 import { matchedFilter, rebinFilterInput, type FilterInput } from './matched-filter';
 import { medianInPlace, selectInPlace } from './order-statistics';
+import { Scratch } from './scratch';
 
 /** Intrinsic velocity sigmas of the narrow kernels, km/s (FWHM 70 to 820). */
 export const NARROW_SIGMAS_KMS: readonly number[] = [30, 90, 180, 350];
@@ -28,6 +29,8 @@ export interface FilterBank {
   filters: GridFilter[];
 }
 
+const scratch = { significances: new Scratch(), numerator: new Scratch(), information: new Scratch() };
+
 /**
  * Scatter of a filter's own output about its median, relative to what the declared variances promise, shrunk towards 1
  * by how few independent elements measure it: ln f is scaled by N / (N + 2.2 / max(0.15, |ln f|)^2), the ratio of the
@@ -35,11 +38,11 @@ export interface FilterBank {
  */
 export function noiseFactorOf(significances: Float64Array, used: number, independent: number): number {
   if (used < 10 || independent < 3) return 1;
-  const scratch = significances.subarray(0, used);
-  const centre = medianInPlace(scratch, used);
-  for (let i = 0; i < used; i++) scratch[i] = Math.abs(scratch[i] - centre);
+  const values = significances.subarray(0, used);
+  const centre = medianInPlace(values, used);
+  for (let i = 0; i < used; i++) values[i] = Math.abs(values[i] - centre);
   // 35 % of a Gaussian lies within 0.4538 sigma: lines may cover half of the spectrum before this feels them.
-  const raw = selectInPlace(scratch, used, Math.floor(0.35 * used)) / 0.4538;
+  const raw = selectInPlace(values, used, Math.floor(0.35 * used)) / 0.4538;
   if (!(raw > 0)) return 1;
   const log = Math.log(raw);
   const prior = Math.max(0.15, Math.abs(log));
@@ -55,18 +58,23 @@ export function noiseFactorOf(significances: Float64Array, used: number, indepen
 export function filterBank(input: FilterInput, sigmasKms: readonly number[], step: number, check: boolean): FilterBank {
   const start = Math.log(input.wavelength[0]);
   const count = Math.max(2, Math.floor((Math.log(input.wavelength[input.count - 1]) - start) / step) + 1);
-  const scratch = new Float64Array(input.count);
+  const significances = scratch.significances.take(input.count);
   const filters = sigmasKms.map((sigmaKms) => {
     const middle = input.count >> 1;
     const pixelKms = ((input.edges[middle + 1] - input.edges[middle]) / input.wavelength[middle]) * 299792.458;
     const factor = Math.max(1, Math.min(16, Math.floor((0.6 * sigmaKms) / pixelKms)));
     const binned = sigmaKms > 500 ? rebinFilterInput(input, factor) : input;
-    const output = matchedFilter(binned, sigmaKms);
+    const output = matchedFilter(
+      binned,
+      sigmaKms,
+      scratch.numerator.take(binned.count),
+      scratch.information.take(binned.count),
+    );
     let used = 0;
     for (let i = 0; i < binned.count; i++) {
-      if (output.information[i] > 0) scratch[used++] = output.numerator[i] / Math.sqrt(output.information[i]);
+      if (output.information[i] > 0) significances[used++] = output.numerator[i] / Math.sqrt(output.information[i]);
     }
-    const noiseFactor = check ? noiseFactorOf(scratch, used, used / Math.max(1, 3.545 * output.sigmaPixels)) : 1;
+    const noiseFactor = check ? noiseFactorOf(significances, used, used / Math.max(1, 3.545 * output.sigmaPixels)) : 1;
     return onGrid(binned, output.numerator, output.information, start, step, count, sigmaKms, noiseFactor);
   });
   return { start, step, count, filters };

@@ -3,6 +3,7 @@ import type { FilterBank, GridFilter } from './detect';
 import { spikeAdvantage } from './cosmic-rays';
 import { CONTINUUM_FAULT } from './continuum-fault';
 import { lowerBound } from './noise';
+import { Scratch } from './scratch';
 import type { WorkingSpectrum } from './working-spectrum';
 
 /** A bump that stands out, whatever made it. */
@@ -32,6 +33,8 @@ export interface Feature {
  */
 const ARTEFACT_RATE = { clean: 1e-6, sky: 2e-4, edge: 2e-4, spike: 1e-3 } as const;
 
+const scratch = new Scratch();
+
 /**
  * Local maxima of significance over all widths of a bank.
  *
@@ -46,7 +49,7 @@ export function findFeatures(
   threshold: number,
 ): Feature[] {
   const { count, start, step, filters } = bank;
-  const best = new Float64Array(count);
+  const best = scratch.take(count);
   const which = new Uint8Array(count);
   filters.forEach((filter, f) => {
     for (let k = 0; k < count; k++) {

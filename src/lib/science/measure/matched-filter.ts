@@ -1,5 +1,8 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { erfc } from './normal-distribution';
+import { Scratch } from './scratch';
+
+const scratch = { sumWeight: new Scratch(), sumResidual: new Scratch(), weighted: new Scratch() };
 
 /** Pixels that share one kernel: the line-spread function varies slowly. */
 const BLOCK = 128;
@@ -30,16 +33,20 @@ export interface FilterOutput {
  * numerator = S(wkr) - S(wk) S(wr) / S(w), information = S(wkk) - S(wk)^2 / S(w).
  *
  * @param sigmaKms intrinsic velocity sigma, km/s
+ * @param numerator zeros, a value a pixel, to write into; likewise `information`
  * @returns arrays of one value a pixel; information is 0 where no usable pixel lies under the kernel
  * Source: Turin (1960, IRE Trans. IT-6, 311) for the filter; the constant's elimination is ordinary least squares.
  */
-export function matchedFilter(input: FilterInput, sigmaKms: number): FilterOutput {
+export function matchedFilter(
+  input: FilterInput,
+  sigmaKms: number,
+  numerator: Float64Array = new Float64Array(input.count),
+  information: Float64Array = new Float64Array(input.count),
+): FilterOutput {
   const { count, wavelength, edges, residual, weight, lsfSigma } = input;
-  const numerator = new Float64Array(count);
-  const information = new Float64Array(count);
-  const sumWeight = new Float64Array(count + 1);
-  const sumResidual = new Float64Array(count + 1);
-  const weighted = new Float64Array(count);
+  const sumWeight = scratch.sumWeight.take(count + 1);
+  const sumResidual = scratch.sumResidual.take(count + 1);
+  const weighted = scratch.weighted.take(count);
   for (let i = 0; i < count; i++) {
     weighted[i] = weight[i] * residual[i];
     sumWeight[i + 1] = sumWeight[i] + weight[i];

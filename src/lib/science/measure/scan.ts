@@ -1,6 +1,7 @@
 import { lineByName } from '../constants/lines';
 import type { FilterBank } from './detect';
 import { selectInPlace } from './order-statistics';
+import { Scratch } from './scratch';
 import { sumShifted, type ShiftedRow } from './shifted-sums';
 
 /** A line of the scan: how much its absence costs and its presence brings. */
@@ -71,6 +72,14 @@ export interface ScanPeak {
   filter: number;
 }
 
+const scratch = {
+  best: new Scratch(),
+  total: new Scratch(),
+  raw: new Scratch(),
+  odds: new Scratch(),
+  gains: [] as Scratch[],
+};
+
 /** One line adds no more than this, so that a single feature cannot outvote several. */
 const GAIN_CAP = 60;
 
@@ -97,16 +106,17 @@ export function scanRedshifts(
   const lastNode = Math.ceil(Math.log1p(redshiftRange[1]) / step);
   const nodes = lastNode - firstNode + 1;
   if (nodes < 1) return [];
-  const best = new Float64Array(nodes).fill(-Infinity);
+  const best = scratch.best.take(nodes).fill(-Infinity);
   const bestFilter = new Uint8Array(nodes);
-  const total = new Float64Array(nodes);
+  const total = scratch.total.take(nodes);
   const presences = [...new Set(lines.map((line) => line.presence))];
+  while (scratch.gains.length < presences.length) scratch.gains.push(new Scratch());
   for (let f = 0; f < bank.filters.length; f++) {
     const { significance, information } = bank.filters[f];
     const odds = lineOdds(significance, information, sign);
     const rows: ShiftedRow[] = [];
-    for (const presence of presences) {
-      const values = lineGains(odds, information, presence);
+    for (const [p, presence] of presences.entries()) {
+      const values = lineGains(odds, information, presence, scratch.gains[p].take(odds.length));
       for (const line of lines) {
         if (line.presence !== presence) continue;
         // Node of the line's rest wavelength relative to the grid: observed node = redshift node + shift.
@@ -132,13 +142,13 @@ function keepBest(total: Float64Array, filter: number, best: Float64Array, bestF
 /** Odds exp(b) of a line of positive flux at every node, best of the node and its neighbours. */
 function lineOdds(significance: Float64Array, information: Float64Array, sign: 1 | -1): Float64Array {
   const count = significance.length;
-  const raw = new Float64Array(count);
+  const raw = scratch.raw.take(count);
   for (let k = 0; k < count; k++) {
     if (!(information[k] > 0)) continue;
     const s = Math.min(12, sign * significance[k]);
     raw[k] = s > 0 ? Math.exp(0.5 * s * s) / (1 + 2.5 * s) : Math.exp(-0.9 * Math.min(3, -s));
   }
-  const odds = new Float64Array(count);
+  const odds = scratch.odds.take(count);
   for (let k = 0; k < count; k++) {
     let value = raw[k];
     if (k > 0 && raw[k - 1] > value) value = raw[k - 1];
@@ -148,8 +158,8 @@ function lineOdds(significance: Float64Array, information: Float64Array, sign: 1
   return odds;
 }
 
-function lineGains(odds: Float64Array, information: Float64Array, presence: number): Float64Array {
-  const gain = new Float64Array(odds.length);
+/** What a line of given presence brings at every node, written into `gain`, which comes zeroed. */
+function lineGains(odds: Float64Array, information: Float64Array, presence: number, gain: Float64Array): Float64Array {
   const absent = 1 - presence;
   let lastOdds = NaN;
   let lastGain = 0;

@@ -111,9 +111,12 @@ function projectContinuum(
   const basis: Float64Array[] = [];
   const weightedBasis: Float64Array[] = [];
   const fluxOnBasis = new Float64Array(degree + 1);
-  const residual = flux.slice(from, to);
+  // One piece of memory holds all rows of a window: many small ones keep the collector busy.
+  const memory = new Float64Array((2 * degree + 3) * length);
+  const residual = memory.subarray(0, length);
+  for (let i = 0; i < length; i++) residual[i] = flux[from + i];
   for (let k = 0; k <= degree; k++) {
-    const row = new Float64Array(length);
+    const row = memory.subarray((2 * k + 1) * length, (2 * k + 2) * length);
     if (k === 0) row.fill(1);
     else for (let i = 0; i < length; i++) row[i] = ((wavelength[from + i] - middle) / half) ** k;
     for (const earlier of basis) {
@@ -125,7 +128,7 @@ function projectContinuum(
     for (let i = 0; i < length; i++) norm += weight[from + i] * row[i] * row[i];
     if (!(norm > 0)) return null;
     const inverse = 1 / Math.sqrt(norm);
-    const weighted = new Float64Array(length);
+    const weighted = memory.subarray((2 * k + 2) * length, (2 * k + 3) * length);
     let onFlux = 0;
     for (let i = 0; i < length; i++) {
       row[i] *= inverse;
