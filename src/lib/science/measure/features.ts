@@ -182,8 +182,9 @@ function artefactRates(
   lobes: Uint8Array,
 ): { clean: number; sky: number } {
   const { count, start, step } = bank;
-  const elements = { clean: 1, sky: 1 };
-  const dips = { clean: 0, sky: 0 };
+  // Clean pixels, then those of the sky.
+  const elements = [1, 1];
+  const dips = [0, 0];
   const middle = working.count >> 1;
   const resolution = Math.hypot(working.lsfSigma[middle] / working.wavelength[middle], filter.sigmaKms / 299792.458);
   const perNode = step / (2.3548 * resolution);
@@ -194,14 +195,14 @@ function artefactRates(
     wavelength *= ratio;
     if (!(filter.information[k] > 0) || lobes[k]) continue;
     while (pixel < working.count - 1 && working.edges[pixel + 1] <= wavelength) pixel++;
-    const place = working.mask[pixel] & (MASK.skyLine | MASK.telluric) ? 'sky' : 'clean';
+    const place = working.mask[pixel] & (MASK.skyLine | MASK.telluric) ? 1 : 0;
     elements[place] += Math.min(1, perNode);
     const s = filter.significance[k];
     if (s < -4.5 && s <= filter.significance[k - 1] && s < filter.significance[k + 1]) dips[place]++;
   }
   return {
-    clean: Math.max(ARTEFACT_RATE.clean, Math.min(HIGHEST_RATE, Math.max(0, dips.clean - 1) / elements.clean)),
-    sky: Math.max(ARTEFACT_RATE.sky, Math.min(HIGHEST_RATE, (dips.sky + 0.3) / elements.sky)),
+    clean: Math.max(ARTEFACT_RATE.clean, Math.min(HIGHEST_RATE, Math.max(0, dips[0] - 1) / elements[0])),
+    sky: Math.max(ARTEFACT_RATE.sky, Math.min(HIGHEST_RATE, (dips[1] + 0.3) / elements[1])),
   };
 }
 

@@ -2,6 +2,7 @@ import { MASK, type Spectrum } from '$lib/domain/spectrum';
 import { FLEXIBLE_CONTINUUM, smoothContinuum, STIFF_CONTINUUM } from './continuum';
 import { removeCosmicRays } from './cosmic-rays';
 import { estimateWeights, inflateSkyVariance, markSkyPixels } from './noise';
+import { Scratch } from './scratch';
 import { workingSpectrum, type WorkingSpectrum } from './working-spectrum';
 
 /** A spectrum cleaned, with its continua. */
@@ -45,10 +46,13 @@ export function prepareSpectrum(spectrum: Spectrum): PreparedSpectrum {
 /** Widest telluric band, in ln(wavelength), that a continuum may bridge. */
 const WIDEST_BRIDGE = 0.045;
 
+const scratch = new Scratch();
+
 /** Telluric bands say nothing of an object's continuum: their pixels are left out of it, where they are narrow enough. */
 function bridged(working: WorkingSpectrum): WorkingSpectrum {
   const { count, wavelength, mask } = working;
-  const weight = Float64Array.from(working.weight);
+  const weight = scratch.take(count);
+  weight.set(working.weight);
   for (let i = 0; i < count;) {
     if ((mask[i] & MASK.telluric) === 0) {
       i++;

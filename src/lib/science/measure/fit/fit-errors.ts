@@ -1,5 +1,8 @@
+import { Scratch } from '../scratch';
 import type { JointFit } from './joint-fit';
 import { invertPositiveDefinite } from './solve';
+
+const scratch = new Scratch();
 
 /** Standard errors of a joint fit, before scaling by a noise factor. */
 export interface FitErrors {
@@ -34,8 +37,10 @@ export function fitErrors(
   const index: number[] = [];
   for (let i = 0; i < n; i++) if (fit.free[i] && fit.gram[i * n + i] > 0) index.push(i);
   const m = index.length;
-  const block = new Float64Array(m * m);
-  index.forEach((i, a) => index.forEach((j, b) => (block[a * m + b] = fit.gramWithPriors[i * n + j])));
+  const block = scratch.take(m * m);
+  for (let a = 0; a < m; a++) {
+    for (let b = 0; b < m; b++) block[a * m + b] = fit.gramWithPriors[index[a] * n + index[b]];
+  }
   for (let a = 0; a < m; a++) block[a * m + a] *= 1 + 1e-10;
   const blockInverse = invertPositiveDefinite(block, m);
   const amplitude = new Float64Array(n);
@@ -44,16 +49,19 @@ export function fitErrors(
     const own = fit.gram[i * n + i];
     amplitude[i] = own > 0 ? 1 / Math.sqrt(own) : Infinity;
   }
-  index.forEach((i, a) => {
-    index.forEach((j, b) => {
+  const { response } = fit;
+  for (let a = 0; a < m; a++) {
+    const i = index[a];
+    for (let b = 0; b < m; b++) {
+      const j = index[b];
       let value = blockInverse ? blockInverse[a * m + b] : a === b ? 1 / block[a * m + a] : 0;
       for (let k = 0; k < 3; k++) {
-        for (let l = 0; l < 3; l++) value += fit.response[i * 3 + k] * shape[k * 3 + l] * fit.response[j * 3 + l];
+        for (let l = 0; l < 3; l++) value += response[i * 3 + k] * shape[k * 3 + l] * response[j * 3 + l];
       }
       covariance[i * n + j] = value;
-    });
+    }
     amplitude[i] = Math.sqrt(Math.max(0, covariance[i * n + i]));
-  });
+  }
   const root = (k: number) => (shape[k * 4] > 0 ? Math.sqrt(shape[k * 4]) : Infinity);
   return { logScale: root(0), logSigma: [root(1), root(2)], amplitude, covariance };
 }

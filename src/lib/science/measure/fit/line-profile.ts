@@ -65,10 +65,11 @@ export function addLineProfile(
   let cumulative = normalCumulative(t);
   let density = normalDensity(t);
   for (; i < end && edges[i] < high; i++) {
-    const nextT = (edges[i + 1] - centre) / sigma;
+    const upper = edges[i + 1];
+    const nextT = (upper - centre) / sigma;
     const nextCumulative = normalCumulative(nextT);
     const nextDensity = normalDensity(nextT);
-    const scale = amplitude / (edges[i + 1] - edges[i]);
+    const scale = amplitude / (upper - edges[i]);
     const k = i - from + offset;
     profile[k] += scale * (nextCumulative - cumulative);
     if (byShift && byWidth) {

@@ -1,6 +1,7 @@
 import { BASIS_LIMIT, type ComponentProfiles } from './component-profiles';
 import type { LineComponent } from './components';
 import type { FitData, FitWindow } from './fit-windows';
+import { Scratch } from '../scratch';
 import { choleskyInPlace, choleskySolve } from './solve';
 
 /** Information and gradient of (ln(1+z), ln sigma narrow, ln sigma broad), the fluxes of the free set eliminated. */
@@ -11,6 +12,8 @@ export interface ShapeEquations {
   /** Response of the fluxes to the shape, count by 3: minus G^-1 H. */
   response: Float64Array;
 }
+
+const scratch = new Scratch();
 
 /** Reused between calls; written before read. */
 let residual = new Float64Array(2048);
@@ -156,9 +159,9 @@ function eliminateFluxes(
   const index = new Int32Array(n);
   let m = 0;
   for (let i = 0; i < n; i++) if (free[i] && gram[i * n + i] > 0) index[m++] = i;
-  const block = new Float64Array(m * m);
+  const block = scratch.take(m * m);
   for (let a = 0; a < m; a++) {
-    for (let b = 0; b < m; b++) block[a * m + b] = gram[index[a] * n + index[b]];
+    for (let b = 0; b <= a; b++) block[a * m + b] = gram[index[a] * n + index[b]];
     block[a * m + a] *= 1 + 1e-10;
   }
   if (m === 0 || !choleskyInPlace(block, m)) return response;

@@ -1,3 +1,7 @@
+import { Scratch } from '../scratch';
+
+const scratch = { factor: new Scratch(), column: new Scratch(), block: new Scratch(), target: new Scratch() };
+
 /**
  * In-place Cholesky factorisation of the leading n by n block of a row-major symmetric matrix with the given stride.
  *
@@ -46,10 +50,11 @@ export function choleskySolve(
 
 /** Inverse of a symmetric positive definite matrix (row-major n by n); null where it is not positive definite. */
 export function invertPositiveDefinite(matrix: Float64Array, n: number): Float64Array | null {
-  const factor = Float64Array.from(matrix.subarray(0, n * n));
+  const factor = scratch.factor.take(n * n);
+  for (let i = 0; i < n * n; i++) factor[i] = matrix[i];
   if (!choleskyInPlace(factor, n)) return null;
   const inverse = new Float64Array(n * n);
-  const column = new Float64Array(n);
+  const column = scratch.column.take(n);
   for (let j = 0; j < n; j++) {
     column.fill(0);
     column[j] = 1;
@@ -69,8 +74,8 @@ export function invertPositiveDefinite(matrix: Float64Array, n: number): Float64
  */
 export function nonNegativeSolve(gram: Float64Array, right: Float64Array, n: number, free: Uint8Array): Float64Array {
   const x = new Float64Array(n);
-  const block = new Float64Array(n * n);
-  const target = new Float64Array(n);
+  const block = scratch.block.take(n * n);
+  const target = scratch.target.take(n);
   const index = new Int32Array(n);
   for (let i = 0; i < n; i++) if (!(gram[i * n + i] > 0)) free[i] = 0;
   for (let round = 0; round < 3 * n + 3; round++) {
