@@ -1,5 +1,6 @@
 import { parseForm } from '$lib/api/parse-form';
 import { guardedAction, guardedLoad } from '$lib/server/auth/guards';
+import { foundProgramme, foundProgrammeSchema } from '$lib/server/programmes/found-programme';
 import { invitationSchema, inviteMember } from '$lib/server/programmes/invite-member';
 import { listInvitations } from '$lib/server/programmes/list-invitations';
 import { listProgrammes } from '$lib/server/programmes/list-programmes';
@@ -12,6 +13,11 @@ export const load = guardedLoad('signed-in', async ({ locals }: PageServerLoadEv
 }));
 
 export const actions = {
+  found: guardedAction('admin', async ({ locals, request }: RequestEvent) => {
+    const input = parseForm(foundProgrammeSchema, await request.formData());
+    await foundProgramme(locals.actor, input);
+    return { founded: input.name };
+  }),
   invite: guardedAction('signed-in', async ({ locals, request }: RequestEvent) => {
     const input = parseForm(invitationSchema, await request.formData(), ['roles']);
     const { link } = await inviteMember(locals.actor, input);

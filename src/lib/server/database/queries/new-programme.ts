@@ -2,7 +2,7 @@ import type { Transaction } from 'sequelize';
 import type { Instrument } from '$lib/domain/instrument';
 import { database } from '../connection';
 import { InstrumentVersion } from '../models/observing';
-import { Programme } from '../models/people';
+import { Programme, ProgrammeMember } from '../models/people';
 
 export async function insertProgramme(
   programme: { slug: string; name: string; isDemo: boolean },
@@ -19,4 +19,14 @@ export async function insertInstrument(
   database();
   const { id } = await InstrumentVersion.create(instrument as never, { transaction });
   return id;
+}
+
+export async function insertMembership(
+  programmeId: string,
+  userId: string,
+  roles: string[],
+  transaction: Transaction,
+): Promise<void> {
+  const rows = roles.map((role) => ({ programmeId, userId, role }));
+  await ProgrammeMember.bulkCreate(rows, { transaction });
 }
