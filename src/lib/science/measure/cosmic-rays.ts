@@ -37,8 +37,11 @@ export function spikeAdvantage(
     const centre = peak + 0.2 * step;
     let rk = 0;
     let kk = 0;
+    let lower = normalCumulative((from - centre - 0.5) / sigma);
     for (let j = from; j <= to; j++) {
-      const k = normalCumulative((j - centre + 0.5) / sigma) - normalCumulative((j - centre - 0.5) / sigma);
+      const upper = normalCumulative((j - centre + 0.5) / sigma);
+      const k = upper - lower;
+      lower = upper;
       rk += weight[j] * residual[j] * k;
       kk += weight[j] * k * k;
     }

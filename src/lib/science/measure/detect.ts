@@ -94,6 +94,7 @@ function onGrid(
   const gridInformation = new Float64Array(count);
   const significance = new Float64Array(count);
   const scale = 1 / (noiseFactor * noiseFactor);
+  const root = Math.sqrt(scale);
   const { wavelength } = input;
   let i = 0;
   const ratio = Math.exp(step);
@@ -118,7 +119,7 @@ function onGrid(
     }
     gridNumerator[k] = n * scale;
     gridInformation[k] = f * scale;
-    significance[k] = (n / Math.sqrt(f)) * Math.sqrt(scale);
+    significance[k] = (n / Math.sqrt(f)) * root;
   }
   return { sigmaKms, numerator: gridNumerator, information: gridInformation, significance, noiseFactor };
 }

@@ -1,3 +1,7 @@
+import { Scratch } from './scratch';
+
+const scratch = { diagonal: new Scratch(), first: new Scratch(), second: new Scratch(), right: new Scratch() };
+
 /**
  * Minimises sum w (y - s)^2 + penalty * sum (second difference of s)^2 by a banded Cholesky (LDL) solution.
  *
@@ -9,10 +13,10 @@
  */
 export function solvePenalisedSmoother(values: Float64Array, weights: Float64Array, penalty: number): Float64Array {
   const n = values.length;
-  const diagonal = new Float64Array(n);
-  const first = new Float64Array(n);
-  const second = new Float64Array(n);
-  const right = new Float64Array(n);
+  const diagonal = scratch.diagonal.take(n);
+  const first = scratch.first.take(n);
+  const second = scratch.second.take(n);
+  const right = scratch.right.take(n);
   // A whisper of weight towards zero keeps the system regular where nothing is known.
   const ridge = 1e-12;
   for (let i = 0; i < n; i++) {

@@ -3,6 +3,7 @@ import { BASIS_LIMIT, buildProfiles, type ComponentProfiles } from './component-
 import type { LineComponent } from './components';
 import { cutWindows, type FitData, type FitWindow } from './fit-windows';
 import { addRatioPriors } from './ratio-priors';
+import { Scratch } from '../scratch';
 import { shapeEquations } from './shape-equations';
 
 /** Priors on ln sigma (km/s): mean and standard deviation, narrow and broad; and hard bounds. */
@@ -148,6 +149,7 @@ function solveAt(
   let gain = 0;
   let priorCost = 0;
   for (let i = 0; i < n; i++) {
+    if (amplitude[i] === 0) continue;
     gain += 2 * amplitude[i] * right[i];
     for (let j = 0; j < n; j++) {
       gain -= amplitude[i] * gram[i * n + j] * amplitude[j];
@@ -187,6 +189,8 @@ function solveAt(
   return { fit, objective, gradient: shape.gradient };
 }
 
+const scratch = new Scratch();
+
 /** Adds one window's part to the normal equations of the fluxes, its continuum eliminated. */
 function addNormalEquations(
   data: FitData,
@@ -200,19 +204,24 @@ function addNormalEquations(
   const { weight } = data;
   const { profile, low, high, offset, onBasis, component } = profiles;
   const { from, residual } = window;
+  const weighted = scratch.take(window.to - from);
   const end = profiles.windowSlots[w + 1];
   for (let s = profiles.windowSlots[w]; s < end; s++) {
     const c = component[s];
     const shift = offset[s] - low[s];
     let toFlux = 0;
-    for (let i = low[s]; i < high[s]; i++) toFlux += weight[i] * profile[i + shift] * residual[i - from];
+    for (let i = low[s]; i < high[s]; i++) {
+      const value = weight[i] * profile[i + shift];
+      weighted[i - from] = value;
+      toFlux += value * residual[i - from];
+    }
     right[c] += toFlux;
     for (let t = profiles.windowSlots[w]; t <= s; t++) {
       const first = Math.max(low[s], low[t]);
       const last = Math.min(high[s], high[t]);
       const otherShift = offset[t] - low[t];
       let sum = 0;
-      for (let i = first; i < last; i++) sum += weight[i] * profile[i + shift] * profile[i + otherShift];
+      for (let i = first; i < last; i++) sum += weighted[i - from] * profile[i + otherShift];
       for (let k = 0; k < window.basis.length; k++) sum -= onBasis[s * BASIS_LIMIT + k] * onBasis[t * BASIS_LIMIT + k];
       gram[c * n + component[t]] += sum;
       if (t !== s) gram[component[t] * n + c] += sum;
