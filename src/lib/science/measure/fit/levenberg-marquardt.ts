@@ -32,7 +32,7 @@ export interface LevenbergMarquardtResult {
  * @param count number of residuals, at least the number of parameters
  * @returns the minimum reached; `converged` tells whether the tolerance was met
  * @throws RangeError where there are fewer residuals than parameters
- * Source: Moré (1978, Lecture Notes in Mathematics 630, 105) for the scaling; Nielsen (1999, IMM-REP-1999-05) for the
+ * Source: Moré (1978, LNM 630, 105) for the scaling; Nielsen (1999, IMM-REP-1999-05) for the
  * damping.
  */
 export function levenbergMarquardt(
