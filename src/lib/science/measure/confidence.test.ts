@@ -8,6 +8,7 @@ const strong = {
   resolvedDoublet: false,
   unmistakableProfile: false,
   unknownIdentity: false,
+  lacksBalmer: false,
   absorptionFeatures: null,
 };
 

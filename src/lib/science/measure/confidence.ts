@@ -14,6 +14,8 @@ export interface ConfidenceInput {
   unmistakableProfile: boolean;
   /** Rests on C IV alone or on a single feature of unknown identity. */
   unknownIdentity: boolean;
+  /** A Balmer line that the forbidden lines ask for is in range and not seen. */
+  lacksBalmer: boolean;
   /** Absorption alone: the number of strong features behind it, else null. */
   absorptionFeatures: number | null;
 }
@@ -25,7 +27,7 @@ export interface ConfidenceInput {
 export function confidenceOf(input: ConfidenceInput): Confidence {
   const evidence = input.independentLines >= 2 || input.resolvedDoublet || input.unmistakableProfile;
   const absorptionHolds = input.absorptionFeatures === null ? evidence : input.absorptionFeatures >= 3;
-  if (input.probability >= 0.995 && absorptionHolds && !input.unknownIdentity) return 'secure';
+  if (input.probability >= 0.995 && absorptionHolds && !input.unknownIdentity && !input.lacksBalmer) return 'secure';
   if (input.probability >= 0.9) return 'probable';
   if (input.probabilityOfNoGalaxy <= 0.5) return 'ambiguous';
   return 'none';

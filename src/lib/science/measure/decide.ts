@@ -5,6 +5,7 @@ import { absorptionCandidate, emissionCandidate } from './build-candidate';
 import { confidenceOf } from './confidence';
 import { asFinal, finalFit, type FinalFit } from './final-fit';
 import type { Hypotheses } from './hypotheses';
+import { lacksBalmer, type LineSignal } from './lacks-balmer';
 import { systemicRedshift } from './lyman-alpha';
 import type { Posterior } from './posterior';
 import type { PreparedSpectrum } from './prepare';
@@ -116,6 +117,7 @@ export function decide(
   const confidence = confidenceOf({
     probability,
     probabilityOfNoGalaxy: rivals.nothing + rivals.star,
+    lacksBalmer: top.emission !== null && refits[0] !== null && lacksBalmer(signalsInRange(refits[0])),
     ...evidence,
   });
   const second = top.emission
@@ -172,5 +174,13 @@ function blended(refit: FinalFit): boolean {
       const apart = Math.abs(Math.log(a.component.members[0].rest / b.component.members[0].rest)) * 299792.458;
       return apart < 1.2 * FWHM_PER_SIGMA * fit.sigmaKms[0];
     }),
+  );
+}
+
+/** Signal-to-noise of every line that the fit reached, those it gave nothing too. */
+function signalsInRange({ fit, errors }: FinalFit): LineSignal[] {
+  const n = fit.components.length;
+  return fit.components.flatMap(({ name }, i) =>
+    fit.gram[i * n + i] > 0 ? [{ line: name, signalToNoise: fit.amplitude[i] / errors.amplitude[i] }] : [],
   );
 }

@@ -27,7 +27,7 @@ const WIDEST_KMS = 4200;
 const WIDEST_NARROW_KMS = 435;
 
 /** What the confidence word is decided from besides probabilities. */
-export type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy'>;
+export type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy' | 'lacksBalmer'>;
 
 /** What speaks for an answer besides its probability. */
 export function evidenceOf(
