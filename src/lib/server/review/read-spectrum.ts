@@ -1,7 +1,7 @@
 import type { Measurement } from '$lib/domain/measurement';
 import { Refusal } from '$lib/domain/refusal';
 import { may, permit, type Actor } from '../auth/permissions';
-import { findReviewed } from '../database/queries/reviewed-spectrum';
+import { findReviewed, type ReviewedSpectrum } from '../database/queries/reviewed-spectrum';
 import { explainPlace } from './explain-place';
 
 export interface ReviewHead {
@@ -18,29 +18,36 @@ export interface ReviewHead {
   verdictCount: number;
 }
 
+/** A measured spectrum by its id; refuses where there is none. */
+export async function findMeasured(spectrumId: string): Promise<ReviewedSpectrum> {
+  const found = await findReviewed(spectrumId);
+  if (found) return found;
+  throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.', 'Go back to Review.');
+}
+
+/** A found spectrum as the page's head shows it. */
+export function headOf(found: ReviewedSpectrum): ReviewHead {
+  const { measurement, exposureSeconds, civilDate } = found;
+  return {
+    id: found.id,
+    name: found.name ?? found.originalName,
+    why: explainPlace(measurement, found.entropyBits),
+    nightId: found.nightId,
+    nightLabel: `Night of ${civilDate}`,
+    programmeName: found.programmeName,
+    instrumentName: found.instrumentName ?? 'instrument not described',
+    exposure: exposureSeconds === null ? 'exposure unknown' : `${Math.round(exposureSeconds)} s`,
+    measurement,
+    verdictCount: Number(found.verdictCount),
+  };
+}
+
 /** What the review page says of a spectrum besides its pixels. Nobody sees another's verdict here. */
 export async function readSpectrum(
   actor: Actor | null,
   spectrumId: string,
 ): Promise<{ spectrum: ReviewHead; canJudge: boolean }> {
-  const found = await findReviewed(spectrumId);
-  if (!found)
-    throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.', 'Go back to Review.');
+  const found = await findMeasured(spectrumId);
   permit(actor, 'spectrum.read', found.programmeId);
-  const { measurement, exposureSeconds, civilDate } = found;
-  return {
-    spectrum: {
-      id: found.id,
-      name: found.name ?? found.originalName,
-      why: explainPlace(measurement, found.entropyBits),
-      nightId: found.nightId,
-      nightLabel: `Night of ${civilDate}`,
-      programmeName: found.programmeName,
-      instrumentName: found.instrumentName ?? 'instrument not described',
-      exposure: exposureSeconds === null ? 'exposure unknown' : `${Math.round(exposureSeconds)} s`,
-      measurement,
-      verdictCount: Number(found.verdictCount),
-    },
-    canJudge: may(actor, 'spectrum.judge', found.programmeId),
-  };
+  return { spectrum: headOf(found), canJudge: may(actor, 'spectrum.judge', found.programmeId) };
 }
