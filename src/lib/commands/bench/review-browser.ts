@@ -1,0 +1,120 @@
+import type { Page } from '@playwright/test';
+
+/** What a press of a key that leads to the next spectrum took, ms from the key event. */
+export interface NextTimes {
+  /** Until the frame with the next spectrum was handed to the screen. */
+  drawn: number[];
+}
+
+/** Pause between two verdicts, ms: quick, yet long enough that a person could have looked. */
+const LOOK_MS = 900;
+
+/**
+ * Watches the page from inside: when a canvas was last drawn on (each drawing begins by clearing it), and when a frame
+ * that shows another spectrum than at the key press has been painted. Must be installed before the page loads.
+ */
+export function watchDrawing(): void {
+  const state = { lastClear: 0 };
+  const prototype = CanvasRenderingContext2D.prototype;
+  const clearRect = prototype.clearRect;
+  prototype.clearRect = function (...box) {
+    state.lastClear = performance.now();
+    return clearRect.apply(this, box);
+  };
+  const title = () => document.querySelector('h1')?.textContent ?? '';
+  Object.assign(window, {
+    benchNext: () =>
+      new Promise<number>((resolve) => {
+        const before = title();
+        addEventListener(
+          'keydown',
+          ({ timeStamp: pressed }) => {
+            const look = () => {
+              if (title() === before || state.lastClear < pressed || !document.querySelector('.plot canvas')) {
+                return requestAnimationFrame(look);
+              }
+              // A message sent from a frame's callback arrives once that frame is painted.
+              const { port1, port2 } = new MessageChannel();
+              port1.onmessage = () => resolve(performance.now() - pressed);
+              port2.postMessage(null);
+            };
+            requestAnimationFrame(look);
+          },
+          { once: true, capture: true },
+        );
+      }),
+    benchRedraw: () =>
+      new Promise<number>((resolve) => {
+        const start = performance.now();
+        document.dispatchEvent(new KeyboardEvent('keydown', { key: 'ArrowRight', bubbles: true }));
+        const { port1, port2 } = new MessageChannel();
+        port1.onmessage = () => {
+          // Reading a size makes the browser lay the page out, which the frame would do next.
+          void document.body.offsetHeight;
+          resolve(state.lastClear > start ? performance.now() - start : NaN);
+        };
+        queueMicrotask(() => port2.postMessage(null));
+      }),
+    benchFrames: () => {
+      const frames: number[] = [];
+      let running = true;
+      const tick = (at: number) => {
+        frames.push(at);
+        if (running) requestAnimationFrame(tick);
+      };
+      requestAnimationFrame(tick);
+      return () => {
+        running = false;
+        return frames;
+      };
+    },
+  });
+}
+
+interface BenchWindow {
+  benchNext: () => Promise<number>;
+  benchRedraw: () => Promise<number>;
+  benchFrames: () => () => number[];
+  benchStop?: () => number[];
+}
+declare const window: BenchWindow & Window;
+
+/** Presses a key that leads to the next spectrum again and again; the first ones warm the page up and are not counted. */
+export async function timeNext(page: Page, key: string, count: number, warmUp: number): Promise<number[]> {
+  const times: number[] = [];
+  for (let i = 0; i < warmUp + count; i++) {
+    await page.waitForTimeout(LOOK_MS);
+    const pressed = page.evaluate(() => window.benchNext());
+    // The listener is set before the key goes down: both go through the same pipe, in order.
+    await page.keyboard.press(key);
+    const time = await pressed;
+    if (i >= warmUp) times.push(time);
+  }
+  return times;
+}
+
+/** Script and layout of one redraw as an arrow key moves the redshift, ms. */
+export async function timeRedraws(page: Page, count: number): Promise<number[]> {
+  const times: number[] = [];
+  for (let i = 0; i < count + 10; i++) {
+    const time = await page.evaluate(() => window.benchRedraw());
+    if (i >= 10) times.push(time);
+    await page.waitForTimeout(20);
+  }
+  return times;
+}
+
+/** Times between frames while the redshift is dragged through the spectrum, ms. */
+export async function timeDrag(page: Page, moves: number): Promise<number[]> {
+  const box = (await page.getByRole('application', { name: /^Spectrum plot/ }).boundingBox())!;
+  const y = box.y + box.height / 2;
+  await page.mouse.move(box.x + box.width / 2, y);
+  await page.mouse.down();
+  await page.evaluate(() => void (window.benchStop = window.benchFrames()));
+  for (let i = 0; i < moves; i++) {
+    await page.mouse.move(box.x + box.width * (0.5 + 0.3 * Math.sin((6 * i) / moves)), y);
+  }
+  const frames = await page.evaluate(() => window.benchStop!());
+  await page.mouse.up();
+  return frames.slice(1).map((at, i) => at - frames[i]);
+}
