@@ -122,7 +122,7 @@ export async function seedNight(
       header: {},
       warnings: [],
     }));
-    const file = { id: added.id, programmeId, sha256, originalName: name, instrument: null };
+    const file = { id: added.id, programmeId, sha256, originalName: name, instrumentId: null, instrument: null };
     const [ids] = await storeFileContents([{ file, content: { spectra: content, problems: [] } }], transaction);
     const results = new Map(ids.map((spectrum, i) => [spectrum, { measurement: seededMeasurement(spectra[i]) }]));
     await storeMeasurements(results, transaction);

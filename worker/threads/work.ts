@@ -18,7 +18,7 @@ export async function takeFile({ file, measureUpTo }: { file: File; measureUpTo:
   if (spectra.length > measureUpTo) return { content, results: spectra.map(() => null) };
   const results = spectra.map((spectrum) => {
     try {
-      return measureOne(spectrum);
+      return measureOne(spectrum, file.instrument);
     } catch (error) {
       // A job of its own tries it again, and sets it aside in the end.
       log.error({ file: file.sha256, err: error }, 'measuring failed');

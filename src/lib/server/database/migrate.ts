@@ -5,9 +5,10 @@ import { database } from './connection';
 import * as firstLight from './migrations/0001-first-light';
 import * as reviewTogether from './migrations/0002-review-together';
 import * as nightReport from './migrations/0003-night-report';
+import * as instruments from './migrations/0005-instruments';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight, reviewTogether, nightReport];
+const MIGRATIONS = [firstLight, reviewTogether, nightReport, instruments];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({

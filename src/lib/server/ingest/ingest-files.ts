@@ -87,15 +87,17 @@ async function store(read: { file: StoredFile; taken: TakenFile }[], transaction
     transaction,
   );
   const results = new Map<string, MeasureResult>();
+  const instruments = new Map<string, string | null>();
   const waiting: string[] = [];
-  read.forEach(({ taken }, i) =>
+  read.forEach(({ file, taken }, i) =>
     ids[i].forEach((spectrumId, k) => {
       const result = taken.results[k];
+      instruments.set(spectrumId, file.instrumentId);
       if (result) results.set(spectrumId, result);
       else waiting.push(spectrumId);
     }),
   );
-  await storeMeasurements(results, transaction);
+  await storeMeasurements(results, transaction, instruments);
   const wishes = [];
   for (let i = 0; i < waiting.length; i += SPECTRA_PER_JOB) {
     const spectrumIds = waiting.slice(i, i + SPECTRA_PER_JOB);

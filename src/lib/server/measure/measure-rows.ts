@@ -6,6 +6,7 @@ import { readSpectra } from '$lib/formats/read-spectra';
 import { withDerived } from '$lib/science/derive/with-derived';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
 import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
+import { completeSettingsHash } from './settings-hash';
 
 /** Measures the named rows of a file's bytes; an input at fault gives its problem in its place. */
 export function measureRows(
@@ -17,7 +18,7 @@ export function measureRows(
   const { spectra } = readSpectra(bytes, fileName, instrument);
   return rows.map(({ extension, row }) => {
     try {
-      return measureOne(toSpectrum(findRow(spectra, extension, row, fileName), instrument));
+      return measureOne(toSpectrum(findRow(spectra, extension, row, fileName), instrument), instrument);
     } catch (error) {
       if (error instanceof InputProblem) return { problem: error.problem };
       throw error;
@@ -25,9 +26,11 @@ export function measureRows(
   });
 }
 
-/** Measures a spectrum, with its derived quantities. */
-export function measureOne(spectrum: Spectrum): MeasureResult {
-  return { measurement: withDerived(measureSpectrum(spectrum), spectrum) };
+/** Measures a spectrum, with its derived quantities; the settings hash covers the instrument it was read by. */
+export function measureOne(spectrum: Spectrum, instrument?: Instrument): MeasureResult {
+  const measurement = withDerived(measureSpectrum(spectrum), spectrum);
+  const { engine } = measurement;
+  return { measurement: { ...measurement, engine: { ...engine, settings: completeSettingsHash(engine, instrument) } } };
 }
 
 function findRow(spectra: RawSpectrum[], extension: number, row: number, fileName: string): RawSpectrum {

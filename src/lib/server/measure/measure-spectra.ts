@@ -44,7 +44,7 @@ export async function measureSpectra(spectrumIds: string[], jobId: string, measu
     }
   }
   const nights = await inTransaction(async (transaction) => {
-    await storeMeasurements(results, transaction);
+    await storeMeasurements(results, transaction, new Map(waiting.map(({ id, instrumentId }) => [id, instrumentId])));
     await fulfil([jobId], transaction);
     return touchNightsOfFiles([...new Set(waiting.map(({ fileId }) => fileId))], transaction);
   });

@@ -20,6 +20,8 @@ export class MeasurementRecord extends Model<
   declare spectrumId: string;
   declare engineVersion: string;
   declare settingsHash: string;
+  /** The version of the instrument that the spectrum was read by. */
+  declare instrumentId: CreationOptional<string | null>;
   declare lineList: string;
   declare redshift: number | null;
   declare redshiftError: number | null;
@@ -97,6 +99,7 @@ export function defineAnswers(sequelize: Sequelize): void {
       spectrumId: UUID,
       engineVersion: STRING(40),
       settingsHash: STRING(64),
+      instrumentId: UUID,
       lineList: STRING(40),
       redshift: DOUBLE,
       redshiftError: DOUBLE,

@@ -19,6 +19,10 @@ export class InstrumentVersion extends Model<
   declare name: string;
   declare version: number;
   declare description: InstrumentDescription;
+  /** What changed, in the words of whoever saved it. */
+  declare note: CreationOptional<string>;
+  declare createdBy: CreationOptional<string | null>;
+  declare createdAt: CreationOptional<Date>;
 }
 
 export class Night extends Model<InferAttributes<Night>, InferCreationAttributes<Night>> {
@@ -39,9 +43,11 @@ export class SpectrumFile extends Model<InferAttributes<SpectrumFile>, InferCrea
   declare sizeBytes: number;
   declare originalName: string;
   declare instrumentId: string | null;
-  declare state: CreationOptional<'waiting' | 'read' | 'failed'>;
+  declare state: CreationOptional<'waiting' | 'read' | 'failed' | 'needs assignment'>;
   declare problems: Problem[];
   declare tries: CreationOptional<number>;
+  /** Of a file that needs an assignment: SHA-256 of the names of its columns. */
+  declare shape: CreationOptional<string | null>;
 }
 
 export class NightFile extends Model<InferAttributes<NightFile>, InferCreationAttributes<NightFile>> {
@@ -79,13 +85,24 @@ export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, Infer
   declare header: Record<string, string | number | boolean>;
   declare state: CreationOptional<'waiting' | 'measured' | 'failed'>;
   declare problem: CreationOptional<Problem | null>;
+  /** The measurement that pages, queue and drafts show; null until there is one. */
+  declare currentMeasurementId: CreationOptional<string | null>;
   declare tries: CreationOptional<number>;
 }
 
 export function defineObserving(sequelize: Sequelize): void {
   const { STRING, TEXT, DATE, DATEONLY, DOUBLE, BIGINT, INTEGER, TINYINT, UUID, CHAR, JSON } = DataTypes;
   InstrumentVersion.init(
-    { id: idColumn, programmeId: UUID, name: STRING(200), version: INTEGER, description: JSON },
+    {
+      id: idColumn,
+      programmeId: UUID,
+      name: STRING(200),
+      version: INTEGER,
+      description: JSON,
+      note: STRING(500),
+      createdBy: UUID,
+      createdAt: DATE(6),
+    },
     { sequelize, tableName: 'instruments' },
   );
   Night.init(
@@ -112,6 +129,7 @@ export function defineObserving(sequelize: Sequelize): void {
       state: STRING(10),
       problems: JSON,
       tries: TINYINT,
+      shape: CHAR(64),
     },
     { sequelize, tableName: 'files' },
   );
@@ -144,6 +162,7 @@ export function defineObserving(sequelize: Sequelize): void {
       header: JSON,
       state: STRING(10),
       problem: JSON,
+      currentMeasurementId: UUID,
       tries: TINYINT,
     },
     { sequelize, tableName: 'spectra' },

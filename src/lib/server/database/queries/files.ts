@@ -12,13 +12,15 @@ export interface StoredFile {
   programmeId: string;
   sha256: string;
   originalName: string;
+  instrumentId: string | null;
   instrument: Instrument | null;
 }
 
 /** Of these files, those that are not read or set aside yet. */
 export async function findWaitingFiles(ids: string[]): Promise<StoredFile[]> {
   const rows = await database().query<Omit<StoredFile, 'instrument'> & { instrument: string | Instrument | null }>(
-    `SELECT f.id, f.programme_id AS programmeId, f.sha256, f.original_name AS originalName, i.description AS instrument
+    `SELECT f.id, f.programme_id AS programmeId, f.sha256, f.original_name AS originalName,
+        f.instrument_id AS instrumentId, i.description AS instrument
       FROM files f LEFT JOIN instruments i ON i.id = f.instrument_id
       WHERE f.id IN (:ids) AND f.state = 'waiting' ORDER BY f.id`,
     { replacements: { ids }, type: QueryTypes.SELECT },

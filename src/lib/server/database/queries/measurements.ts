@@ -14,6 +14,7 @@ export interface WaitingSpectrum {
   rowIndex: number;
   sha256: string;
   originalName: string;
+  instrumentId: string | null;
   instrument: Instrument | null;
 }
 
@@ -21,7 +22,7 @@ export interface WaitingSpectrum {
 export async function findWaiting(ids: string[]): Promise<WaitingSpectrum[]> {
   const rows = await database().query<WaitingSpectrum>(
     `SELECT s.id, s.file_id AS fileId, s.extension, s.row_index AS rowIndex, f.sha256, f.original_name AS originalName,
-        i.description AS instrument
+        f.instrument_id AS instrumentId, i.description AS instrument
       FROM spectra s JOIN files f ON f.id = s.file_id LEFT JOIN instruments i ON i.id = f.instrument_id
       WHERE s.id IN (:ids) AND s.state = 'waiting' ORDER BY f.id, s.extension, s.row_index`,
     { replacements: { ids }, type: QueryTypes.SELECT },
@@ -39,17 +40,44 @@ export function entropyBits({ candidates, rivals }: Pick<Measurement, 'candidate
   return shares.reduce((sum, p) => (p > 0 ? sum - p * Math.log2(p) : sum), 0);
 }
 
-/** Writes results; a spectrum whose measurement by this engine and settings stands already keeps it. */
-export async function storeMeasurements(results: Map<string, MeasureResult>, transaction: Transaction): Promise<void> {
-  const measured: { id: string; spectrumId: string; measurement: Measurement }[] = [];
+/** A measurement to be written, and the version of the instrument that its spectrum was read by. */
+export interface NewMeasurement {
+  spectrumId: string;
+  instrumentId: string | null;
+  measurement: Measurement;
+}
+
+/**
+ * Writes results, with the version of the instrument that each spectrum was read by; a spectrum whose measurement by this engine and settings stands already
+ * keeps it. The first measurement of a spectrum becomes its current one.
+ */
+export async function storeMeasurements(
+  results: ReadonlyMap<string, MeasureResult>,
+  transaction: Transaction,
+  instruments: ReadonlyMap<string, string | null> = new Map(),
+): Promise<void> {
+  const measured: NewMeasurement[] = [];
   for (const [spectrumId, result] of results) {
-    if ('measurement' in result) measured.push({ id: newIdentifier(), spectrumId, measurement: result.measurement });
-    else {
+    if ('measurement' in result) {
+      measured.push({ spectrumId, instrumentId: instruments.get(spectrumId) ?? null, measurement: result.measurement });
+    } else {
       const where = { id: spectrumId, state: 'waiting' };
       await SpectrumRecord.update({ state: 'failed', problem: result.problem }, { where, transaction });
     }
   }
   if (measured.length === 0) return;
+  await insertMeasurements(measured, transaction);
+  await database().query(
+    `UPDATE spectra s SET s.state = 'measured', s.problem = NULL, s.current_measurement_id = COALESCE(
+        s.current_measurement_id, (SELECT MAX(m.id) FROM measurements m WHERE m.spectrum_id = s.id))
+      WHERE s.id IN (:ids)`,
+    { replacements: { ids: measured.map(({ spectrumId }) => spectrumId) }, transaction },
+  );
+}
+
+/** Writes measurements with their candidates and lines beside what is there; those that stand already are passed over. */
+export async function insertMeasurements(inputs: NewMeasurement[], transaction: Transaction): Promise<void> {
+  const measured = inputs.map((input) => ({ ...input, id: newIdentifier() }));
   await MeasurementRecord.bulkCreate(measured.map(asRow), { ignoreDuplicates: true, transaction });
   const ids = measured.map(({ id }) => id);
   const written = await MeasurementRecord.findAll({ where: { id: ids }, attributes: ['id'], raw: true, transaction });
@@ -68,11 +96,9 @@ export async function storeMeasurements(results: Map<string, MeasureResult>, tra
   );
   if (candidates.length) await CandidateRecord.bulkCreate(candidates, { transaction });
   if (lines.length) await LineFitRecord.bulkCreate(lines, { transaction });
-  const where = { id: measured.map(({ spectrumId }) => spectrumId) };
-  await SpectrumRecord.update({ state: 'measured', problem: null }, { where, transaction });
 }
 
-function asRow({ id, spectrumId, measurement }: { id: string; spectrumId: string; measurement: Measurement }) {
+function asRow({ id, spectrumId, instrumentId, measurement }: NewMeasurement & { id: string }) {
   const { engine, candidates, lines, redshift, redshiftError, redshiftErrorMeasured, redshiftSystemic } = measurement;
   const { secondRedshift, probability, confidence, noiseFactor, fluxUnit, flags } = measurement;
   // Tied doublets share a signal-to-noise ratio: the brighter of them names the feature.
@@ -86,6 +112,7 @@ function asRow({ id, spectrumId, measurement }: { id: string; spectrumId: string
   return {
     id,
     spectrumId,
+    instrumentId,
     engineVersion: engine.version,
     settingsHash: engine.settings,
     lineList: engine.lineList,

@@ -3,7 +3,7 @@ import type { Flag } from '$lib/domain/flag';
 import type { Measurement } from '$lib/domain/measurement';
 import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { database } from '../connection';
-import { LATEST_MEASUREMENT } from './night-snapshot';
+import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { LAST_WORD_RULING } from './rulings';
 import { CURRENT_VERDICT, judgedBy } from './verdicts';
 
@@ -40,7 +40,7 @@ export async function nightMeasurementRows(
         IF(d.id IS NULL, v.redshift, d.redshift) AS verdictRedshift,
         IF(d.id IS NULL, v.confidence, d.confidence) AS verdictConfidence, u.name AS verdictBy
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
-      LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+      LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
       LEFT JOIN verdicts v ON v.id = ${CURRENT_VERDICT} AND (:judges = 0 OR ${judgedBy(':userId')})
       LEFT JOIN rulings d ON d.id = ${LAST_WORD_RULING}
         AND (:judges = 0 OR d.user_id = :userId OR ${judgedBy(':userId')})

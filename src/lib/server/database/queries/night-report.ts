@@ -3,7 +3,7 @@ import type { Confidence } from '$lib/domain/confidence';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Candidate } from '$lib/domain/measurement';
 import { database } from '../connection';
-import { LATEST_MEASUREMENT } from './night-snapshot';
+import { CURRENT_MEASUREMENT } from './night-snapshot';
 
 const select = { type: QueryTypes.SELECT } as const;
 const parsed = <T>(value: T | string | null): T | null =>
@@ -26,7 +26,7 @@ export async function reportRows(nightId: string): Promise<ReportRow[]> {
         m.entropy_bits AS entropyBits, m.confidence,
         IF(m.confidence = 'secure', NULL, JSON_EXTRACT(m.detail, '$.candidates[0]')) AS first
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
-      JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+      JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
       WHERE nf.night_id = :nightId ORDER BY s.id`,
     { replacements: { nightId }, ...select },
   );

@@ -10,8 +10,11 @@ type Counts = Pick<NightSnapshot, 'files' | 'spectra' | 'confidence'>;
 const select = { type: QueryTypes.SELECT } as const;
 const parsed = <T>(value: T | string): T => (typeof value === 'string' ? (JSON.parse(value) as T) : value);
 
-/** Latest measurement of a spectrum, by the order of identifiers. */
-export const LATEST_MEASUREMENT = `m.id = (SELECT MAX(x.id) FROM measurements x WHERE x.spectrum_id = s.id)`;
+/**
+ * For use inside a query: `m` is the current measurement of spectrum `s`. The first one of a spectrum is current until
+ * people accept another.
+ */
+export const CURRENT_MEASUREMENT = `m.id = s.current_measurement_id`;
 
 export async function countNight(nightId: string): Promise<Counts> {
   const replacements = { nightId };
@@ -28,7 +31,7 @@ export async function countNight(nightId: string): Promise<Counts> {
     ),
     database().query<{ confidence: Confidence; n: number | string }>(
       `SELECT m.confidence, COUNT(*) AS n FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
-        JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+        JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
         WHERE nf.night_id = :nightId GROUP BY m.confidence`,
       { replacements, ...select },
     ),

@@ -1,6 +1,6 @@
 import { QueryTypes } from 'sequelize';
 import { database } from '../connection';
-import { LATEST_MEASUREMENT } from './night-snapshot';
+import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { judgedBy } from './verdicts';
 
 const JUDGED = judgedBy(':userId');
@@ -32,7 +32,7 @@ export async function queueRows(
     `SELECT s.id, COALESCE(s.name, f.original_name) AS name, m.confidence, m.redshift, m.probability,
         m.entropy_bits AS entropyBits, ${JUDGED} AS judged,
         f.programme_id AS programmeId, p.looks AS wanted, MIN(n.id) AS nightId, MIN(n.civil_date) AS civilDate
-      FROM spectra s JOIN files f ON f.id = s.file_id JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+      FROM spectra s JOIN files f ON f.id = s.file_id JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
       JOIN programmes p ON p.id = f.programme_id JOIN night_files nf ON nf.file_id = f.id JOIN nights n ON n.id = nf.night_id
       WHERE f.programme_id IN (:programmeIds) AND s.state = 'measured' AND (:night IS NULL OR n.id = :night)
         AND (:confidence IS NULL OR m.confidence = :confidence)

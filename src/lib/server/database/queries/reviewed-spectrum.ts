@@ -2,7 +2,7 @@ import { QueryTypes } from 'sequelize';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Measurement } from '$lib/domain/measurement';
 import { database } from '../connection';
-import { LATEST_MEASUREMENT } from './night-snapshot';
+import { CURRENT_MEASUREMENT } from './night-snapshot';
 
 export interface ReviewedSpectrum {
   id: string;
@@ -26,7 +26,7 @@ export interface ReviewedSpectrum {
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 
-/** A measured spectrum with its newest measurement and where it came from; null where there is none. */
+/** A measured spectrum with its current measurement and where it came from; null where there is none. */
 export async function findReviewed(spectrumId: string): Promise<ReviewedSpectrum | null> {
   if (!UUID.test(spectrumId)) return null;
   const [row] = await database().query<ReviewedSpectrum & { detail: string | Measurement }>(
@@ -37,9 +37,9 @@ export async function findReviewed(spectrumId: string): Promise<ReviewedSpectrum
         (SELECT COUNT(DISTINCT v.user_id) FROM verdicts v WHERE v.spectrum_id = s.id AND v.kind <> 'withdrawn'
           AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = v.id)) AS verdictCount
       FROM spectra s JOIN files f ON f.id = s.file_id JOIN programmes p ON p.id = f.programme_id
-      JOIN measurements m ON m.spectrum_id = s.id AND ${LATEST_MEASUREMENT}
+      JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
       JOIN night_files nf ON nf.file_id = f.id JOIN nights n ON n.id = nf.night_id
-      LEFT JOIN instruments i ON i.id = f.instrument_id
+      LEFT JOIN instruments i ON i.id = COALESCE(m.instrument_id, f.instrument_id)
       WHERE s.id = :spectrumId ORDER BY n.civil_date LIMIT 1`,
     { replacements: { spectrumId }, type: QueryTypes.SELECT },
   );
