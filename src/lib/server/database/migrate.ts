@@ -6,9 +6,10 @@ import * as firstLight from './migrations/0001-first-light';
 import * as reviewTogether from './migrations/0002-review-together';
 import * as nightReport from './migrations/0003-night-report';
 import * as instruments from './migrations/0005-instruments';
+import * as reviewTrust from './migrations/0007-review-trust';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight, reviewTogether, nightReport, instruments];
+const MIGRATIONS = [firstLight, reviewTogether, nightReport, instruments, reviewTrust];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({
