@@ -1,5 +1,13 @@
 import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
-import { normalCumulative, normalDensity } from '../normal-distribution';
+import {
+  CUMULATIVE_NODES,
+  cumulativeSeries,
+  DENSITY_NODES,
+  densitySeries,
+  GAUSSIAN_LIMIT,
+  nearestNode,
+  NODE_STEP,
+} from './gaussian-table';
 
 /** Where profiles are written: the pixel grid and the line-spread function. */
 export interface ProfileGrid {
@@ -59,27 +67,35 @@ export function addLineProfile(
   const high = centre + PROFILE_REACH * sigma;
   let i = Math.max(from, pixelOf(edges, low));
   const end = from + length;
-  if (i >= end || edges[i] > high) return;
+  // Beyond either end of the grid nothing of the line is seen.
+  if (i >= end || edges[i] > high || edges[i + 1] < low) return;
   const widthFactor = (intrinsic * intrinsic) / (sigma * sigma);
-  let t = (edges[i] - centre) / sigma;
-  let cumulative = normalCumulative(t);
-  let density = normalDensity(t);
+  const perSigma = 1 / sigma;
+  const shiftFactor = centre * perSigma;
+  let t = Math.max(-GAUSSIAN_LIMIT, (edges[i] - centre) * perSigma);
+  let k = nearestNode(t);
+  let node = k * NODE_STEP - GAUSSIAN_LIMIT;
+  let cumulative = CUMULATIVE_NODES[k] + DENSITY_NODES[k] * cumulativeSeries(node, t - node);
+  let density = DENSITY_NODES[k] * densitySeries(node, t - node);
   for (; i < end && edges[i] < high; i++) {
     const upper = edges[i + 1];
-    const nextT = (upper - centre) / sigma;
-    const nextCumulative = normalCumulative(nextT);
-    const nextDensity = normalDensity(nextT);
+    const nextT = Math.min(GAUSSIAN_LIMIT, (upper - centre) * perSigma);
+    k = nearestNode(nextT);
+    node = k * NODE_STEP - GAUSSIAN_LIMIT;
+    const nodeDensity = DENSITY_NODES[k];
+    const nextCumulative = CUMULATIVE_NODES[k] + nodeDensity * cumulativeSeries(node, nextT - node);
     const scale = amplitude / (upper - edges[i]);
-    const k = i - from + offset;
-    profile[k] += scale * (nextCumulative - cumulative);
+    const at = i - from + offset;
+    profile[at] += scale * (nextCumulative - cumulative);
     if (byShift && byWidth) {
-      const dWidth = -scale * (nextT * nextDensity - t * density);
+      const nextDensity = nodeDensity * densitySeries(node, nextT - node);
+      const dWidth = scale * (t * density - nextT * nextDensity) * widthFactor;
       // Moving the line by d ln(1+z) shifts it by its wavelength and widens its intrinsic part in proportion.
-      byShift[k] += (-scale * (nextDensity - density) * centre) / sigma + dWidth * widthFactor;
-      byWidth[k] += dWidth * widthFactor;
+      byShift[at] += scale * (density - nextDensity) * shiftFactor + dWidth;
+      byWidth[at] += dWidth;
+      density = nextDensity;
     }
     t = nextT;
     cumulative = nextCumulative;
-    density = nextDensity;
   }
 }
