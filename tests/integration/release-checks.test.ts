@@ -19,7 +19,7 @@ let installation: Installation;
 beforeAll(async () => void (installation = await makeInstallation()));
 afterAll(() => installation.destroy());
 
-const world = (spectra: SeededSpectrum[]) => makeWorld(installation, spectra);
+const world = (spectra: SeededSpectrum[], radiusArcsec?: number) => makeWorld(installation, spectra, radiusArcsec);
 const code = (wanted: string) => ({ code: wanted });
 
 describe('what blocks a draft', () => {
@@ -59,11 +59,12 @@ describe('what blocks a draft', () => {
   });
 
   it('is one place under two names, unless declared a true pair', async () => {
-    const { slug, draft, drafter } = await world([
+    const close = [
       { name: 'A', ra: 60, dec: -30 },
       { name: 'B', ra: 60 + 0.5 / 3600, dec: -30 },
       { name: 'C', ra: 60, dec: -30.001 },
-    ]);
+    ];
+    const { slug, draft, drafter } = await world(close, 0.2);
     const id = await draft();
     const { checks } = await previewDraft(drafter, slug, id);
     expect(checks).toMatchObject([

@@ -1,4 +1,5 @@
 import type { VerdictInput } from '$lib/domain/verdict';
+import { database } from '$lib/server/database/connection';
 import type { Actor } from '$lib/server/auth/permissions';
 import { createCatalogue } from '$lib/server/release/create-catalogue';
 import { createDraft } from '$lib/server/release/create-draft';
@@ -22,10 +23,14 @@ export const byHand = (redshift: number, redshiftError: number | null = null): V
 
 let worlds = 0;
 
-/** A programme of its own with two curators, two scientists, measured spectra and a catalogue. */
-export async function makeWorld(installation: Installation, spectra: SeededSpectrum[]) {
+/** A programme of its own, where places further apart than the radius are two targets, with two curators, two scientists, measured spectra and a catalogue. */
+export async function makeWorld(installation: Installation, spectra: SeededSpectrum[], targetRadiusArcsec = 1) {
   const slug = `world-${++worlds}`;
   const programme = await installation.makeProgramme(slug);
+  const replacements = { programme, targetRadiusArcsec };
+  await database().query('UPDATE programmes SET target_radius_arcsec = :targetRadiusArcsec WHERE id = :programme', {
+    replacements,
+  });
   const person = (name: string, ...roles: Parameters<Installation['makePerson']>[2]) =>
     installation.makePerson(`${name} ${slug}`, programme, roles);
   const [drafter, signer, scientist, other] = [

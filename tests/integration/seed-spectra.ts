@@ -9,7 +9,7 @@ import { lineByName } from '$lib/science/constants/lines';
 
 /** What a seeded spectrum is to be; what is left out is ordinary. */
 export interface SeededSpectrum {
-  /** Name of the target; two spectra may share one. */
+  /** Name of the target; two spectra may share one, and then have one place. */
   name: string;
   ra?: number | null;
   dec?: number | null;
@@ -85,6 +85,12 @@ export function seededMeasurement(spectrum: SeededSpectrum): Measurement {
   };
 }
 
+/** A place of its own for each name, since one place is one target; within 4 degrees of 63. */
+function raOfName(name: string): number {
+  const digest = createHash('sha256').update(name).digest();
+  return 63 + 4 * (digest.readUInt32BE(0) / 2 ** 32);
+}
+
 let files = 0;
 
 /** Puts spectra and their measurements into a night of a programme as a file would; returns the ids of the spectra. */
@@ -108,7 +114,7 @@ export async function seedNight(
     const night = { programmeId, instrumentId: null };
     const id = await insertNight({ ...night, civilDate: '2026-11-14', notes: '', createdBy }, transaction);
     const [added] = await addFilesToNight({ id, ...night }, [{ name, sha256, sizeBytes: 1 }], transaction);
-    const content = spectra.map(({ name: target, ra = 63, dec = -31 }, i) => ({
+    const content = spectra.map(({ name: target, ra = raOfName(target), dec = -31 }, i) => ({
       extension: 1,
       row: i + 1,
       name: target,

@@ -41,6 +41,8 @@ export const instrumentSchema = z
     resolutionFwhmAngstrom: z.number().positive().optional(),
     /** Wavelength ranges of the detector known to be bad, vacuum ångström in the observatory's frame. */
     badRegionsAngstrom: z.array(z.tuple([z.number().positive(), z.number().positive()])).optional(),
+    /** How far the position in a header may be from the target list's before it is doubted, arcsec; 3 unless told. */
+    positionToleranceArcsec: z.number().positive().max(3600).optional(),
     columns: columnsSchema.optional(),
   })
   .strict()

@@ -15,6 +15,9 @@ export interface SpectrumSummary {
   medianSignalToNoise: number | null;
   /** Mid-exposure, ISO 8601 UTC; left out or null where the file does not say. */
   midExposure?: string | null;
+  /** Start and end of the exposure or of all that went into a stack, ISO 8601 UTC; left out or null where not known. */
+  exposureStart?: string | null;
+  exposureEnd?: string | null;
   /** Zero point of the wavelength scale by the sky's own lines, km/s; null without a sky spectrum that shows them. */
   skyOffsetKms?: number | null;
   /** Robust scatter of one sky line's offset, km/s. */

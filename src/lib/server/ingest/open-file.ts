@@ -2,6 +2,7 @@ import { InputProblem, type Problem } from '$lib/domain/problem';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Spectrum } from '$lib/domain/spectrum';
 import type { FileContent } from '$lib/domain/spectrum-summary';
+import { exposureSpan } from '$lib/formats/observation/exposure-span';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { checkSkyLines } from '$lib/science/frames/sky-lines';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
@@ -52,6 +53,8 @@ export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instr
     try {
       const spectrum = toSpectrum(raw, instrument);
       const sky = isObserverFrameKnown(spectrum) ? checkSkyLines(spectrum) : null;
+      const { midExposureJulianDateUtc } = raw.frame;
+      const span = exposureSpan(raw.header, midExposureJulianDateUtc, raw.exposureSeconds);
       spectra.push(spectrum);
       summaries.push({
         extension: raw.extension,
@@ -64,7 +67,9 @@ export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instr
         wavelengthMin: spectrum.wavelength[0],
         wavelengthMax: spectrum.wavelength[spectrum.wavelength.length - 1],
         medianSignalToNoise: medianSignalToNoise(spectrum),
-        midExposure: isoOfJulianDate(raw.frame.midExposureJulianDateUtc),
+        midExposure: isoOfJulianDate(midExposureJulianDateUtc),
+        exposureStart: isoOfJulianDate(span?.start ?? null),
+        exposureEnd: isoOfJulianDate(span?.end ?? null),
         skyOffsetKms: sky?.offsetKms ?? null,
         skyScatterKms: sky?.scatterKms ?? null,
         header: raw.header,

@@ -63,6 +63,17 @@ export class Target extends Model<InferAttributes<Target>, InferCreationAttribut
   declare raDegrees: number | null;
   declare decDegrees: number | null;
   declare zone: number | null;
+  /** The larger the more urgent; from a target list. */
+  declare priority: CreationOptional<number | null>;
+  declare isListed: CreationOptional<boolean>;
+}
+
+/** One name of a target; two places may share one. */
+export class TargetName extends Model<InferAttributes<TargetName>, InferCreationAttributes<TargetName>> {
+  declare targetId: string;
+  declare folded: string;
+  declare programmeId: string;
+  declare name: string;
 }
 
 export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, InferCreationAttributes<SpectrumRecord>> {
@@ -82,6 +93,14 @@ export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, Infer
   declare midExposure: CreationOptional<Date | null>;
   declare skyOffsetKms: CreationOptional<number | null>;
   declare skyScatterKms: CreationOptional<number | null>;
+  declare kind: CreationOptional<'exposure' | 'stack' | 'combination'>;
+  declare exposureStart: CreationOptional<Date | null>;
+  declare exposureEnd: CreationOptional<Date | null>;
+  /** Same for reductions of one exposure. */
+  declare exposureKey: CreationOptional<string | null>;
+  /** The newer reduction of the same exposure. */
+  declare supersededBy: CreationOptional<string | null>;
+  declare positionDoubt: CreationOptional<Problem | null>;
   declare header: Record<string, string | number | boolean>;
   declare state: CreationOptional<'waiting' | 'measured' | 'failed'>;
   declare problem: CreationOptional<Problem | null>;
@@ -91,7 +110,7 @@ export class SpectrumRecord extends Model<InferAttributes<SpectrumRecord>, Infer
 }
 
 export function defineObserving(sequelize: Sequelize): void {
-  const { STRING, TEXT, DATE, DATEONLY, DOUBLE, BIGINT, INTEGER, TINYINT, UUID, CHAR, JSON } = DataTypes;
+  const { STRING, TEXT, BOOLEAN, DATE, DATEONLY, DOUBLE, BIGINT, INTEGER, TINYINT, UUID, CHAR, JSON } = DataTypes;
   InstrumentVersion.init(
     {
       id: idColumn,
@@ -138,8 +157,26 @@ export function defineObserving(sequelize: Sequelize): void {
     { sequelize, tableName: 'night_files' },
   );
   Target.init(
-    { id: idColumn, programmeId: UUID, name: STRING(200), raDegrees: DOUBLE, decDegrees: DOUBLE, zone: INTEGER },
+    {
+      id: idColumn,
+      programmeId: UUID,
+      name: STRING(200),
+      raDegrees: DOUBLE,
+      decDegrees: DOUBLE,
+      zone: INTEGER,
+      priority: DOUBLE,
+      isListed: BOOLEAN,
+    },
     { sequelize, tableName: 'targets' },
+  );
+  TargetName.init(
+    {
+      targetId: { type: UUID, primaryKey: true },
+      folded: { type: STRING(200), primaryKey: true },
+      programmeId: UUID,
+      name: STRING(200),
+    },
+    { sequelize, tableName: 'target_names' },
   );
   SpectrumRecord.init(
     {
@@ -159,6 +196,12 @@ export function defineObserving(sequelize: Sequelize): void {
       midExposure: DATE(6),
       skyOffsetKms: DOUBLE,
       skyScatterKms: DOUBLE,
+      kind: STRING(12),
+      exposureStart: DATE(6),
+      exposureEnd: DATE(6),
+      exposureKey: CHAR(64),
+      supersededBy: UUID,
+      positionDoubt: JSON,
       header: JSON,
       state: STRING(10),
       problem: JSON,

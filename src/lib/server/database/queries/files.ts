@@ -1,11 +1,12 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Problem } from '$lib/domain/problem';
-import { zoneOf } from '$lib/domain/sky';
-import type { FileContent, SpectrumSummary } from '$lib/domain/spectrum-summary';
+import type { FileContent } from '$lib/domain/spectrum-summary';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
-import { SpectrumFile, SpectrumRecord, Target } from '../models/observing';
+import { SpectrumFile, SpectrumRecord } from '../models/observing';
+import { exposureKey, linkExposures } from './exposures';
+import { placeSpectra } from './place-spectra';
 
 export interface StoredFile {
   id: string;
@@ -57,32 +58,6 @@ export async function markFilesFailed(
 
 type Entry = { file: StoredFile; content: FileContent };
 
-const targetName = (summary: SpectrumSummary, file: StoredFile) => (summary.name ?? file.originalName).slice(0, 200);
-
-/** Ids of the targets that these spectra show, by name, made where there are none; all entries are of one programme. */
-async function targetsOf(entries: Entry[], transaction: Transaction): Promise<Map<string, string>> {
-  const wanted = new Map<string, SpectrumSummary>();
-  for (const { file, content } of entries)
-    for (const summary of content.spectra) wanted.set(targetName(summary, file), summary);
-  if (wanted.size === 0) return new Map();
-  const { programmeId } = entries[0].file;
-  // In one order everywhere, so that two workers wait for each other instead of locking each other out.
-  const names = [...wanted.keys()].sort();
-  const rows = names.map((name) => {
-    const { raDegrees, decDegrees } = wanted.get(name)!;
-    const zone = decDegrees === null ? null : zoneOf(decDegrees);
-    return { id: newIdentifier(), programmeId, name, raDegrees, decDegrees, zone };
-  });
-  await Target.bulkCreate(rows, { ignoreDuplicates: true, transaction });
-  const found = await Target.findAll({
-    where: { programmeId, name: names },
-    attributes: ['id', 'name'],
-    raw: true,
-    transaction,
-  });
-  return new Map(found.map(({ id, name }) => [name, id]));
-}
-
 /**
  * Writes what reading brought: spectra (none twice: file, extension and row are unique), problems, the files' states.
  * Returns for each entry the ids of its spectra in the order of the file.
@@ -92,13 +67,16 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
   const ids = new Map<string, string>();
   const key = (fileId: string, extension: number, row: number) => `${fileId} ${extension} ${row}`;
   for (const group of byProgramme(entries)) {
-    const targets = await targetsOf(group, transaction);
+    const placed = await placeSpectra(group, transaction);
+    let place = 0;
     const rows = group.flatMap(({ file, content }) =>
       content.spectra.map(({ extension, row, header, warnings, ...rest }) => ({
         ...rest,
         id: newIdentifier(),
         fileId: file.id,
-        targetId: targets.get((rest.name ?? file.originalName).slice(0, 200)) ?? null,
+        ...placed[place++],
+        exposureKey: exposureKey(rest, header, file.instrument?.name),
+        kind: isStack(header) ? 'stack' : 'exposure',
         extension,
         rowIndex: row,
         header: { ...header, ...(warnings.length && { 'Farglow warnings': warnings.join('; ') }) },
@@ -110,6 +88,7 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
     for (const found of await SpectrumRecord.findAll({ where, attributes, raw: true, transaction })) {
       ids.set(key(found.fileId, found.extension, found.rowIndex), found.id);
     }
+    await linkExposures([...new Set(placed.map(({ targetId }) => targetId))], transaction);
     for (const { file, content } of group) {
       const state = content.spectra.length ? 'read' : 'failed';
       await SpectrumFile.update({ state, problems: content.problems }, { where: { id: file.id }, transaction });
@@ -119,6 +98,9 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
     content.spectra.map(({ extension, row }) => ids.get(key(file.id, extension, row))!),
   );
 }
+
+/** True where the header counts more than one exposure in it (common practice, no source). */
+const isStack = (header: Record<string, unknown>) => Number(header.NEXPOSUR ?? header.NCOMBINE ?? 1) > 1;
 
 function byProgramme(entries: Entry[]): Entry[][] {
   const groups = new Map<string, Entry[]>();
