@@ -207,11 +207,13 @@ const INSTRUMENT_ROLES = [
  * Which column is what: by the instrument description first, then UTYPE, UCD and generic names together (a column
  * that more of them point to wins; the earlier one on a tie). Where the description names the wavelength or the flux
  * and the table has no such column, the role stays empty.
+ *
+ * @param isAssigned the description was made for just these columns, so that names are not guessed from
  */
-export function assignRoles(table: Table, instrument?: Instrument): Roles {
+export function assignRoles(table: Table, instrument?: Instrument, isAssigned = false): Roles {
   const columns: Roles['columns'] = {};
   const best: Partial<Record<Role, number>> = {};
-  for (const column of table.columns) {
+  for (const column of isAssigned ? [] : table.columns) {
     const scores = new Map<Role, number>();
     const add = (role: Role | null, score: number) => role && scores.set(role, (scores.get(role) ?? 0) + score);
     add(roleOfUtype(column.utype), 4);

@@ -2,6 +2,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { Problem } from '$lib/domain/input-problem';
 import type { Medium, RawSpectrum } from '$lib/domain/spectrum';
 import { columnAxis, describesSpectralAxis, readSpectralAxis } from '../axis/spectral-axis';
+import { assignedWavelengths } from '../axis/assigned-wavelengths';
 import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wavelengths';
 import { mediumOfName, mediumOfType, mediumOfUcd, mediumOfWords } from '../medium';
 import { frameOfWords, readObservation } from '../observation/read-observation';
@@ -10,6 +11,7 @@ import { problemAt, type Place } from '../place';
 import { checkRowCount, readRows, type ReadContext } from '../read-context';
 import { makeRawSpectrum, type Quantity, type SpectrumArrays } from '../raw-spectrum';
 import { parseSpectralUnit, type SpectralUnit } from '../units/spectral-unit';
+import { assignedColumns } from './assigned-columns';
 import { assignRoles, type Role, type Roles } from './roles';
 import type { Column, Table } from './table';
 
@@ -76,26 +78,32 @@ function notSpectra(table: Table, file: string, roles: Roles): Problem {
  * to `problems` and the other rows stand.
  */
 export function tableSpectra(table: Table, context: ReadContext): TableSpectra {
-  const { file, instrument } = context;
-  const roles = assignRoles(table, instrument);
+  const { file } = context;
+  const names = table.columns.map(({ name }) => name);
+  const { instrument, medium: assignedMedium, isAssigned } = assignedColumns(names, context.instrument);
+  const roles = assignRoles(table, instrument, isAssigned);
   const { wavelength, flux } = roles.columns;
   const place: Place = { file, extension: table.extension };
   const fluxAxis = flux?.isVector && !wavelength ? columnAxis(table.columns.indexOf(flux) + 1, 0) : null;
   const axisInHeader = fluxAxis !== null && describesSpectralAxis(table.cards, fluxAxis);
-  if (!flux || (!wavelength && !axisInHeader)) return { spectra: [], notSpectra: notSpectra(table, file, roles) };
+  const assignedAxis = instrument?.columns?.axis;
+  if (!flux || (!wavelength && !axisInHeader && !assignedAxis))
+    return { spectra: [], notSpectra: notSpectra(table, file, roles) };
   const observation = readObservation(table.cards);
   observation.specsys ??= frameOfWords(table.remarks);
-  const medium = wavelength ? tableMedium(table, wavelength) : null;
+  const medium = assignedMedium ?? (wavelength ? tableMedium(table, wavelength) : null);
   const spectra: RawSpectrum[] = [];
 
   const readOne = (read: (column: Column) => Float64Array, at: Place, row: number | null) => {
     const values = read(flux);
     const wavelengths = wavelength
       ? readWavelengths(read(wavelength), roles, wavelengthUnit(wavelength, instrument, place), medium, at)
-      : readSpectralAxis(table.cards, { ...fluxAxis!, length: values.length }, at);
+      : instrument?.columns?.axis
+        ? assignedWavelengths(instrument.columns, values.length, assignedMedium, at)
+        : readSpectralAxis(table.cards, { ...fluxAxis!, length: values.length }, at);
     const arrays: SpectrumArrays = {
       wavelengths,
-      medium: wavelengths.medium,
+      medium: assignedMedium ?? wavelengths.medium,
       flux: { values, unit: instrument?.columns?.fluxUnit ?? flux.unit },
     };
     fillArrays(arrays, roles.columns, read);

@@ -1,8 +1,10 @@
 import type { Instrument } from '$lib/domain/instrument';
 import type { Problem } from '$lib/domain/input-problem';
 import type { RawSpectrum } from '$lib/domain/spectrum';
+import { assignedWavelengths } from '../axis/assigned-wavelengths';
 import { readSpectralAxis } from '../axis/spectral-axis';
 import { unknownUnit, wavelengthsFromValues, type Wavelengths } from '../axis/wavelengths';
+import { assignedColumns, type AssignedColumns } from '../columns/assigned-columns';
 import { roleOfName, type Role } from '../columns/roles';
 import type { Table } from '../columns/table';
 import { mediumOfName, mediumOfType, mediumOfWords } from '../medium';
@@ -22,19 +24,23 @@ const MAX_STACK_PIXELS = 32 * 1024 * 1024;
 type Companions = Partial<Record<Role, Hdu>>;
 
 /** Role of an image by the instrument description, its class cards (HDUCLAS), or its generic name. */
-function imageRole(hdu: Hdu, instrument?: Instrument): Role | null {
+function imageRole(hdu: Hdu, { instrument, isAssigned }: AssignedColumns): Role | null {
   const wanted = instrument?.columns;
   for (const role of ['flux', 'error', 'variance', 'inverseVariance', 'mask', 'sky', 'wavelength'] as const) {
     const name = wanted?.[role];
     if (name !== undefined && (name.toLowerCase() === hdu.name.toLowerCase() || name === String(hdu.extension)))
       return role;
   }
+  if (isAssigned) return null;
   const kind = hdu.cards.own('HDUCLAS2') ? hdu.cards.text('HDUCLAS2')?.toUpperCase() : null;
   const form = hdu.cards.own('HDUCLAS3') ? hdu.cards.text('HDUCLAS3')?.toUpperCase() : null;
   if (kind === 'ERROR') return form === 'MSE' ? 'variance' : form === 'INVMSE' ? 'inverseVariance' : 'error';
   if (kind === 'QUALITY') return 'mask';
   return roleOfName(hdu.name);
 }
+
+/** What an assignment calls an image: its name, or its number where it has none. */
+export const imageName = (hdu: Hdu): string => hdu.name || String(hdu.extension);
 
 function bareUnit(hdu: Hdu): string | null {
   return hdu.cards.own('BUNIT') ? hdu.cards.text('BUNIT') : null;
@@ -69,12 +75,12 @@ function findCompanions(
   images: Hdu[],
   fluxes: Hdu[],
   layout: ImageLayout,
-  instrument?: Instrument,
+  assigned: AssignedColumns,
 ): Companions {
   const next = fluxes[fluxes.indexOf(flux) + 1];
   const companions: Companions = {};
   for (const hdu of images) {
-    const role = imageRole(hdu, instrument);
+    const role = imageRole(hdu, assigned);
     if (!role || role === 'flux' || fluxes.includes(hdu)) continue;
     const within = hdu.extension > flux.extension && (!next || hdu.extension < next.extension);
     const shared = role === 'wavelength' && (hdu.axes[0] === layout.pixels || samePixels(layout, hdu));
@@ -124,11 +130,15 @@ export function imageSpectra(
   tables: Table[],
   context: ReadContext,
 ): { spectra: RawSpectrum[]; notSpectra: Problem[] } {
-  const { file, instrument, problems } = context;
+  const { file, problems } = context;
   const images = hdus.filter((hdu) => hdu.kind === 'image' && hdu.axes.length > 0);
+  const assigned = assignedColumns(images.map(imageName), context.instrument);
+  const { instrument } = assigned;
   const fluxes = images.filter((hdu) => {
-    const role = imageRole(hdu, instrument);
-    return role === 'flux' || (role === null && (hdu.extension === 0 || imageLayout(hdu)?.axis));
+    const role = imageRole(hdu, assigned);
+    return (
+      role === 'flux' || (role === null && !assigned.isAssigned && (hdu.extension === 0 || imageLayout(hdu)?.axis))
+    );
   });
   const spectra: RawSpectrum[] = [];
   const unusable: Problem[] = [];
@@ -136,8 +146,8 @@ export function imageSpectra(
     // Errors and masks may stand outside the HDU that a description names; the flux may not.
     if (!wanted.has(flux.extension)) continue;
     const layout = imageLayout(flux);
-    const companions = layout ? findCompanions(flux, images, fluxes, layout, instrument) : {};
-    if (!layout || (!layout.axis && !companions.wavelength)) {
+    const companions = layout ? findCompanions(flux, images, fluxes, layout, assigned) : {};
+    if (!layout || (!layout.axis && !companions.wavelength && !instrument?.columns?.axis)) {
       unusable.push(notSpectra(flux, file, layout));
       continue;
     }
@@ -145,7 +155,7 @@ export function imageSpectra(
       unusable.push(tooLarge(flux, file));
       continue;
     }
-    const read = collectProblem(problems, () => readImage(flux, layout, companions, tables, context));
+    const read = collectProblem(problems, () => readImage(flux, layout, companions, tables, context, assigned));
     for (const raw of read ?? []) spectra.push(raw);
   }
   return { spectra, notSpectra: unusable };
@@ -157,8 +167,9 @@ function readImage(
   companions: Companions,
   tables: Table[],
   context: ReadContext,
+  { instrument, medium }: AssignedColumns,
 ): RawSpectrum[] {
-  const { file, instrument } = context;
+  const { file } = context;
   const place: Place = { file, extension: flux.extension };
   const observation = readObservation(flux.cards);
   const rowTable = layout.rows > 1 ? tables.find((table) => table.rows === layout.rows && tellsRows(table)) : undefined;
@@ -176,7 +187,9 @@ function readImage(
   const wavelengthsOf = (row: number, at: Place) =>
     companions.wavelength
       ? companionWavelengths(companions.wavelength, rowOf('wavelength', row), instrument, at)
-      : readSpectralAxis(flux.cards, layout.axis!, place);
+      : instrument?.columns?.axis
+        ? assignedWavelengths(instrument.columns, layout.pixels, medium, at)
+        : readSpectralAxis(flux.cards, layout.axis!, place);
   let shared: Wavelengths | null = null;
   const spectra: RawSpectrum[] = [];
   readRows(context, layout.rows, place, (row, at) => {
@@ -185,7 +198,7 @@ function readImage(
     shared ??= wavelengthsOf(row, at);
     const arrays: SpectrumArrays = {
       wavelengths: shared,
-      medium: shared.medium,
+      medium: medium ?? shared.medium,
       flux: { values: rowOf('flux', row), unit: instrument?.columns?.fluxUnit ?? bareUnit(flux) },
     };
     for (const role of ['error', 'variance', 'inverseVariance', 'sky'] as const) {

@@ -57,3 +57,22 @@ describe('line-spread function', () => {
     expect(said.lsfSigma[9]).toBeGreaterThan(1);
   });
 });
+
+describe('a table of resolutions', () => {
+  it('is read by straight lines in the frame of the observatory, with its end values beyond its ends', () => {
+    const instrument: Instrument = {
+      name: 'spectrograph',
+      resolutionTableAngstrom: [
+        [5100, 2.4],
+        [5200, 3.4],
+      ],
+    };
+    const { lsfSigma, lsfSource, wavelength, observerFactor } = toSpectrum(raw({ resolvingPower: null }), instrument);
+    const fwhmAt = (angstrom: number) =>
+      2.3548200450309493 * lsfSigma[wavelength.findIndex((at) => at * observerFactor >= angstrom)];
+    expect(lsfSource).toBe('instrument');
+    expect(fwhmAt(5000)).toBeCloseTo(2.4, 10);
+    expect(fwhmAt(5150)).toBeCloseTo(2.9, 1);
+    expect(fwhmAt(5250)).toBeCloseTo(3.4, 10);
+  });
+});

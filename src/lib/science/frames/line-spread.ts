@@ -17,6 +17,7 @@ export interface LineSpread {
  *
  * @param wavelength pixel centres, increasing
  * @param edges pixel edges, n + 1 values
+ * @param observerFactor takes a wavelength to the observatory's frame, where a table of resolutions holds
  * @param ownSigma the file's sigma a pixel in the order of `wavelength`, NaN where it has none; null where the file has no such array
  */
 export function lineSpread(
@@ -25,6 +26,7 @@ export function lineSpread(
   wavelength: Float64Array,
   edges: Float64Array,
   ownSigma: Float64Array | null,
+  observerFactor = 1,
 ): LineSpread {
   if (ownSigma && ownSigma.some((sigma) => sigma > 0)) {
     return { lsfSigma: fillHoles(ownSigma), lsfSource: 'file' };
@@ -32,11 +34,25 @@ export function lineSpread(
   const ofPower = (power: number) => wavelength.map((angstrom) => angstrom / power / FWHM_PER_SIGMA);
   if (raw.resolvingPower) return { lsfSigma: ofPower(raw.resolvingPower), lsfSource: 'file' };
   if (instrument?.resolvingPower) return { lsfSigma: ofPower(instrument.resolvingPower), lsfSource: 'instrument' };
+  const table = instrument?.resolutionTableAngstrom;
+  if (table) {
+    const lsfSigma = wavelength.map((angstrom) => valueInTable(table, angstrom * observerFactor) / FWHM_PER_SIGMA);
+    return { lsfSigma, lsfSource: 'instrument' };
+  }
   const fwhm = instrument?.resolutionFwhmAngstrom;
   if (fwhm)
     return { lsfSigma: new Float64Array(wavelength.length).fill(fwhm / FWHM_PER_SIGMA), lsfSource: 'instrument' };
   const lsfSigma = wavelength.map((_, i) => ((edges[i + 1] - edges[i]) * ASSUMED_FWHM_PIXELS) / FWHM_PER_SIGMA);
   return { lsfSigma, lsfSource: 'assumed' };
+}
+
+/** A straight line between the pairs of a table, its end values beyond its ends. */
+function valueInTable(table: readonly (readonly [number, number])[], at: number): number {
+  const next = table.findIndex(([wavelength]) => wavelength >= at);
+  if (next < 0) return table[table.length - 1][1];
+  if (next === 0) return table[0][1];
+  const [[x0, y0], [x1, y1]] = [table[next - 1], table[next]];
+  return y0 + ((y1 - y0) * (at - x0)) / (x1 - x0);
 }
 
 /** Values that are not positive take the nearest one that is, the earlier on a tie. */

@@ -14,8 +14,8 @@ function canonical(value: unknown): string {
   return `{${sorted.map(([key, item]) => `${JSON.stringify(key)}:${canonical(item)}`).join(',')}}`;
 }
 
-/** What of a description bears on an answer: not its name, nor why a region is bad. */
-function bearing({ name: _, badRegionsAngstrom, ...rest }: Instrument): object {
+/** What of a description bears on an answer: not its name, how positions are doubted, nor why a region is bad. */
+function bearing({ name: _, positionToleranceArcsec: __, badRegionsAngstrom, ...rest }: Instrument): object {
   return { ...rest, badRegionsAngstrom: badRegionsAngstrom?.map(([from, to]) => [from, to]) };
 }
 
