@@ -1,5 +1,5 @@
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
-import { erfc } from './normal-distribution';
+import { tabulatedCumulative } from './fit/gaussian-table';
 import { Scratch } from './scratch';
 
 const scratch = { sumWeight: new Scratch(), sumResidual: new Scratch(), weighted: new Scratch() };
@@ -96,11 +96,12 @@ function fillKernel(kernel: Float64Array, reach: number, sigma: number, pixel: n
   const last = 2 * reach + 2;
   kernel[0] = 0;
   kernel[last] = 0;
-  let outer = 0.5 * erfc(((reach + 0.5) / sigma) * Math.SQRT1_2);
+  let outer = tabulatedCumulative(-(reach + 0.5) / sigma);
   for (let x = reach; x > 0; x--) {
-    const inner = 0.5 * erfc(((x - 0.5) / sigma) * Math.SQRT1_2);
-    kernel[reach + 1 - x] = (inner - outer) / pixel;
-    kernel[reach + 1 + x] = (1 - outer - (1 - inner)) / pixel;
+    const inner = tabulatedCumulative(-(x - 0.5) / sigma);
+    const share = (inner - outer) / pixel;
+    kernel[reach + 1 - x] = share;
+    kernel[reach + 1 + x] = share;
     outer = inner;
   }
   kernel[reach + 1] = (1 - outer - outer) / pixel;

@@ -1,14 +1,33 @@
+/** Longer stretches are worth a sample, whose k-th value makes a pivot that leaves next to nothing on the wrong side. */
+const SAMPLED = 600;
+
 /**
- * The k-th smallest of the first `count` values, by quickselect; reorders `values` in place.
- * Returns NaN where count is 0.
+ * The k-th smallest of the first `count` values; reorders `values` in place. Returns NaN where count is 0.
+ * Source: Floyd & Rivest (1975, Comm. ACM 18, 165), Algorithm 489.
  */
 export function selectInPlace(values: Float64Array, count: number, k: number): number {
   if (count <= 0) return NaN;
-  let low = 0;
-  let high = count - 1;
-  const target = k < 0 ? 0 : k > high ? high : k;
+  const target = k < 0 ? 0 : k >= count ? count - 1 : k;
+  selectWithin(values, 0, count - 1, target);
+  return values[target];
+}
+
+/** Puts the value of rank `target` in its place, nothing larger before it and nothing smaller after it. */
+function selectWithin(values: Float64Array, from: number, to: number, target: number): void {
+  let low = from;
+  let high = to;
   while (low < high) {
-    const pivot = values[(low + high) >> 1];
+    const size = high - low + 1;
+    if (size > SAMPLED) {
+      const log = Math.log(size);
+      const sample = 0.5 * Math.exp((2 / 3) * log);
+      const rank = target - low + 1;
+      const spread = 0.5 * Math.sqrt((log * sample * (size - sample)) / size) * (rank < size / 2 ? -1 : 1);
+      const first = Math.max(low, Math.floor(target - (rank * sample) / size + spread));
+      const last = Math.min(high, Math.floor(target + ((size - rank) * sample) / size + spread));
+      if (first <= target && target <= last) selectWithin(values, first, last, target);
+    }
+    const pivot = values[size > SAMPLED ? target : (low + high) >> 1];
     let i = low;
     let j = high;
     while (i <= j) {
@@ -26,7 +45,6 @@ export function selectInPlace(values: Float64Array, count: number, k: number): n
     else if (target >= i) low = i;
     else break;
   }
-  return values[target];
 }
 
 /** Median of the first `count` values (lower middle for even counts); reorders `values`. NaN where empty. */

@@ -112,26 +112,30 @@ function projectContinuum(
   const weightedBasis: Float64Array[] = [];
   const fluxOnBasis = new Float64Array(degree + 1);
   // One piece of memory holds all rows of a window: many small ones keep the collector busy.
-  const memory = new Float64Array((2 * degree + 3) * length);
-  const residual = memory.subarray(0, length);
+  const memory = new ArrayBuffer(8 * (2 * degree + 3) * length);
+  // Views made so cost half of what `subarray` does.
+  const rowAt = (k: number) => new Float64Array(memory, 8 * k * length, length);
+  const residual = rowAt(0);
   for (let i = 0; i < length; i++) residual[i] = flux[from + i];
   for (let k = 0; k <= degree; k++) {
-    const row = memory.subarray((2 * k + 1) * length, (2 * k + 2) * length);
+    const row = rowAt(2 * k + 1);
     for (let i = 0; i < length; i++) {
       // A power with a variable exponent costs ten times as much as a product.
       const x = (wavelength[from + i] - middle) / half;
       row[i] = k === 0 ? 1 : k === 1 ? x : k === 2 ? x * x : x ** 3;
     }
-    for (const earlier of basis) {
+    for (let b = 0; b < k; b++) {
+      const earlier = basis[b];
+      const earlierWeighted = weightedBasis[b];
       let dot = 0;
-      for (let i = 0; i < length; i++) dot += weight[from + i] * row[i] * earlier[i];
+      for (let i = 0; i < length; i++) dot += earlierWeighted[i] * row[i];
       for (let i = 0; i < length; i++) row[i] -= dot * earlier[i];
     }
     let norm = 0;
     for (let i = 0; i < length; i++) norm += weight[from + i] * row[i] * row[i];
     if (!(norm > 0)) return null;
     const inverse = 1 / Math.sqrt(norm);
-    const weighted = memory.subarray((2 * k + 2) * length, (2 * k + 3) * length);
+    const weighted = rowAt(2 * k + 2);
     let onFlux = 0;
     for (let i = 0; i < length; i++) {
       row[i] *= inverse;

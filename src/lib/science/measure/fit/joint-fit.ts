@@ -3,7 +3,6 @@ import { BASIS_LIMIT, buildProfiles, type ComponentProfiles } from './component-
 import type { LineComponent } from './components';
 import { cutWindows, type FitData, type FitWindow } from './fit-windows';
 import { addRatioPriors } from './ratio-priors';
-import { Scratch } from '../scratch';
 import { shapeEquations } from './shape-equations';
 
 /** Priors on ln sigma (km/s): mean and standard deviation, narrow and broad; and hard bounds. */
@@ -97,8 +96,8 @@ interface State {
 }
 
 function shapeStep(state: State, damping: number, hold: readonly boolean[]): Float64Array | null {
-  const matrix = Float64Array.from(state.fit.shapeInformation);
-  const right = Float64Array.from(state.gradient);
+  const matrix = state.fit.shapeInformation.slice();
+  const right = state.gradient.slice();
   for (let k = 0; k < 3; k++) {
     if (hold[k] || !(matrix[k * 3 + k] > 0)) {
       for (let j = 0; j < 3; j++) matrix[k * 3 + j] = matrix[j * 3 + k] = 0;
@@ -131,8 +130,12 @@ function solveAt(
   least: number,
 ): State | null {
   const n = components.length;
-  const gram = new Float64Array(n * n);
-  const right = new Float64Array(n);
+  // One piece of memory for all that a fit keeps: every piece costs as much as a small solution.
+  const memory = new ArrayBuffer(8 * (2 * n * n + 2 * n));
+  const gram = new Float64Array(memory, 0, n * n);
+  const withPriors = new Float64Array(memory, 8 * n * n, n * n);
+  const right = new Float64Array(memory, 16 * n * n, n);
+  const amplitude = new Float64Array(memory, 16 * n * n + 8 * n, n);
   const profiles = buildProfiles(data, components, windows, logScale, sigmaKms);
   let power = 0;
   let usable = 0;
@@ -141,24 +144,29 @@ function solveAt(
     usable += windows[w].usable - windows[w].basis.length;
     addNormalEquations(data, windows[w], w, profiles, gram, right, n);
   }
-  const withPriors = Float64Array.from(gram);
-  const amplitudes0 = previous?.amplitude ?? nonNegativeSolve(gram, right, n, new Uint8Array(n).fill(1));
-  addRatioPriors(components, amplitudes0, withPriors, n);
+  withPriors.set(gram);
   const free = new Uint8Array(n).fill(1);
-  const amplitude = nonNegativeSolve(withPriors, right, n, free);
+  const earlier = previous?.amplitude ?? nonNegativeSolve(gram, right, n, free, amplitude);
+  addRatioPriors(components, earlier, withPriors, n);
+  nonNegativeSolve(withPriors, right, n, free.fill(1), amplitude);
   let gain = 0;
   let priorCost = 0;
   for (let i = 0; i < n; i++) {
-    if (amplitude[i] === 0) continue;
-    gain += 2 * amplitude[i] * right[i];
+    const a = amplitude[i];
+    if (a === 0) continue;
+    gain += 2 * a * right[i];
     for (let j = 0; j < n; j++) {
-      gain -= amplitude[i] * gram[i * n + j] * amplitude[j];
-      priorCost += amplitude[i] * (withPriors[i * n + j] - gram[i * n + j]) * amplitude[j];
+      const b = amplitude[j];
+      if (b === 0) continue;
+      const plain = gram[i * n + j];
+      gain -= a * plain * b;
+      priorCost += a * (withPriors[i * n + j] - plain) * b;
     }
   }
-  const used = [0, 1].map((k) => components.some((component) => component.width === k));
+  const used = [false, false];
+  for (const component of components) used[component.width] = true;
   const deviation = WIDTH_PRIOR.map((prior, k) => (Math.log(sigmaKms[k]) - prior.mean) / prior.sigma);
-  for (const k of [0, 1]) if (used[k]) priorCost += deviation[k] * deviation[k];
+  for (let k = 0; k < 2; k++) if (used[k]) priorCost += deviation[k] * deviation[k];
   const objective = gain - priorCost;
   if (previous && !(objective >= least)) return null;
   const shape = shapeEquations(data, components, windows, profiles, amplitude, free, withPriors);
@@ -189,7 +197,8 @@ function solveAt(
   return { fit, objective, gradient: shape.gradient };
 }
 
-const scratch = new Scratch();
+/** Weighted profile of one slot; written before it is read. */
+let weighted = new Float64Array(2048);
 
 /** Adds one window's part to the normal equations of the fluxes, its continuum eliminated. */
 function addNormalEquations(
@@ -204,7 +213,7 @@ function addNormalEquations(
   const { weight } = data;
   const { profile, low, high, offset, onBasis, component } = profiles;
   const { from, residual } = window;
-  const weighted = scratch.take(window.to - from);
+  if (weighted.length < window.to - from) weighted = new Float64Array(2 * (window.to - from));
   const end = profiles.windowSlots[w + 1];
   for (let s = profiles.windowSlots[w]; s < end; s++) {
     const c = component[s];

@@ -7,12 +7,30 @@ export function addRatioPriors(
   gram: Float64Array,
   n: number,
 ): void {
-  for (const prior of RATIO_PRIORS) {
-    const j = components.findIndex((c) => c.width === 0 && c.name === prior.numerator);
-    const i = components.findIndex((c) => c.width === 0 && c.name === prior.denominator);
-    if (i < 0 || j < 0 || !(gram[i * n + i] > 0) || !(gram[j * n + j] > 0)) continue;
-    addRatioPrior(prior, i, j, amplitude, gram, n);
+  for (const { prior, i, j } of pairsOf(components)) {
+    if (gram[i * n + i] > 0 && gram[j * n + j] > 0) addRatioPrior(prior, i, j, amplitude, gram, n);
   }
+}
+
+interface PriorPair {
+  prior: RatioPrior;
+  /** Indices of the denominator and the numerator. */
+  i: number;
+  j: number;
+}
+
+/** Few lists of components are fitted over and over: where the pairs stand is looked up once a list. */
+const pairs = new WeakMap<readonly LineComponent[], PriorPair[]>();
+
+function pairsOf(components: readonly LineComponent[]): PriorPair[] {
+  let found = pairs.get(components);
+  if (!found) {
+    const indexOf = (name: string) => components.findIndex((c) => c.width === 0 && c.name === name);
+    found = RATIO_PRIORS.map((prior) => ({ prior, i: indexOf(prior.denominator), j: indexOf(prior.numerator) }));
+    found = found.filter(({ i, j }) => i >= 0 && j >= 0);
+    pairs.set(components, found);
+  }
+  return found;
 }
 
 /** (a_j - r a_i) / (sigma a) is standard normal, with a the denominator's flux as the previous solution has it. */

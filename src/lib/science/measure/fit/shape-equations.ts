@@ -13,12 +13,13 @@ export interface ShapeEquations {
   response: Float64Array;
 }
 
-const scratch = new Scratch();
+const scratch = { cross: new Scratch(), block: new Scratch(), column: new Scratch() };
 
 /** Reused between calls; written before read. */
 let residual = new Float64Array(2048);
 let derivatives = [new Float64Array(2048), new Float64Array(2048), new Float64Array(2048)];
 let weighted = new Float64Array(2048);
+let index = new Int32Array(64);
 const projected = [new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT)];
 
 /** Pixels of a window, counted from its first, in which the shape parameters act, and which parameters do. */
@@ -39,9 +40,11 @@ export function shapeEquations(
   gram: Float64Array,
 ): ShapeEquations {
   const n = components.length;
-  const information = new Float64Array(9);
-  const gradient = new Float64Array(3);
-  const cross = new Float64Array(n * 3);
+  const memory = new ArrayBuffer(8 * (12 + 3 * n));
+  const information = new Float64Array(memory, 0, 9);
+  const gradient = new Float64Array(memory, 72, 3);
+  const response = new Float64Array(memory, 96, 3 * n);
+  const cross = scratch.cross.take(3 * n);
   const { weight } = data;
   for (let w = 0; w < windows.length; w++) {
     const window = windows[w];
@@ -88,7 +91,8 @@ export function shapeEquations(
       }
     }
   }
-  return { information, gradient, response: eliminateFluxes(gram, cross, free, n, information) };
+  eliminateFluxes(gram, cross, free, n, information, response);
+  return { information, gradient, response };
 }
 
 /** Projections of a row of values, 0 outside `low` to `high`, on a window's continuum basis. */
@@ -147,25 +151,25 @@ function differentiate(
   return reach;
 }
 
-/** Subtracts H^T G^-1 H from the shape information and returns -G^-1 H, rows of components by three columns. */
+/** Subtracts H^T G^-1 H from the shape information and writes -G^-1 H, rows of components by three columns. */
 function eliminateFluxes(
   gram: Float64Array,
   cross: Float64Array,
   free: Uint8Array,
   n: number,
   information: Float64Array,
-): Float64Array {
-  const response = new Float64Array(n * 3);
-  const index = new Int32Array(n);
+  response: Float64Array,
+): void {
+  if (index.length < n) index = new Int32Array(2 * n);
   let m = 0;
   for (let i = 0; i < n; i++) if (free[i] && gram[i * n + i] > 0) index[m++] = i;
-  const block = scratch.take(m * m);
+  const block = scratch.block.take(m * m);
   for (let a = 0; a < m; a++) {
     for (let b = 0; b <= a; b++) block[a * m + b] = gram[index[a] * n + index[b]];
     block[a * m + a] *= 1 + 1e-10;
   }
-  if (m === 0 || !choleskyInPlace(block, m)) return response;
-  const column = new Float64Array(m);
+  if (m === 0 || !choleskyInPlace(block, m)) return;
+  const column = scratch.column.take(m);
   for (let p = 0; p < 3; p++) {
     for (let a = 0; a < m; a++) column[a] = cross[index[a] * 3 + p];
     choleskySolve(block, column, m);
@@ -176,5 +180,4 @@ function eliminateFluxes(
       information[q * 3 + p] -= sum;
     }
   }
-  return response;
 }

@@ -1,6 +1,11 @@
 import { Scratch } from '../scratch';
 
-const scratch = { factor: new Scratch(), column: new Scratch(), block: new Scratch(), target: new Scratch() };
+const scratch = { factor: new Scratch(), column: new Scratch() };
+
+/** Working memory of `nonNegativeSolve`; written before it is read. */
+let indexOfFree = new Int32Array(64);
+let block = new Float64Array(64 * 64);
+let target = new Float64Array(64);
 
 /**
  * In-place Cholesky factorisation of the leading n by n block of a row-major symmetric matrix with the given stride.
@@ -69,14 +74,23 @@ export function invertPositiveDefinite(matrix: Float64Array, n: number): Float64
  *
  * @param gram G, symmetric, row-major n by n
  * @param free set to 1 where x is positive, 0 where it sits on the bound; also gives the starting set
- * @returns x; variables whose diagonal is not positive stay 0
+ * @param x written and returned; variables whose diagonal is not positive stay 0
  * Source: Lawson & Hanson (1974), chapter 23.
  */
-export function nonNegativeSolve(gram: Float64Array, right: Float64Array, n: number, free: Uint8Array): Float64Array {
-  const x = new Float64Array(n);
-  const block = scratch.block.take(n * n);
-  const target = scratch.target.take(n);
-  const index = new Int32Array(n);
+export function nonNegativeSolve(
+  gram: Float64Array,
+  right: Float64Array,
+  n: number,
+  free: Uint8Array,
+  x: Float64Array = new Float64Array(n),
+): Float64Array {
+  if (indexOfFree.length < n) {
+    indexOfFree = new Int32Array(2 * n);
+    block = new Float64Array(4 * n * n);
+    target = new Float64Array(2 * n);
+  }
+  const index = indexOfFree;
+  x.fill(0);
   for (let i = 0; i < n; i++) if (!(gram[i * n + i] > 0)) free[i] = 0;
   for (let round = 0; round < 3 * n + 3; round++) {
     let m = 0;
