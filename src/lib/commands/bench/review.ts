@@ -1,4 +1,4 @@
-import { cpus } from 'node:os';
+import { cpus, loadavg } from 'node:os';
 import { layOutTable, short } from './print-table';
 import { timeDrag, timeNext, timeRedraws, watchDrawing } from './review-browser';
 import { startInstallation, submitNight } from './review-installation';
@@ -66,7 +66,7 @@ export async function runReview({ count, seed }: ReviewOptions): Promise<void> {
     const frames = await timeDrag(page, 200);
     const rate = (1000 * frames.length) / frames.reduce((sum, time) => sum + time, 0);
     process.stdout.write(
-      `\nReview, ${REVIEW_PIXELS} pixels, seed ${seed}; ${cpus()[0]?.model}, ${cpus().length} cores; times in ms\n\n` +
+      `\nReview, ${REVIEW_PIXELS} pixels, seed ${seed}; ${cpus()[0]?.model}, ${cpus().length} cores, load ${loadavg()[0].toFixed(1)}; times in ms\n\n` +
         `${layOutTable(
           ['', 'median', '95 %', 'longest', 'count', 'goal', 'reached'],
           [
