@@ -54,10 +54,12 @@ export class ReviewState {
   /** A verdict is on its way: the same key once more is not a second one. */
   given = $state(false);
 
-  constructor(spectrum: { id: string; measurement: Measurement }) {
+  /** @param pixels where they are here already: the plots then stay as they are and only draw anew */
+  constructor(spectrum: { id: string; measurement: Measurement }, pixels: ReviewSpectrum | null = null) {
     this.id = spectrum.id;
     this.measurement = spectrum.measurement;
     if (spectrum.measurement.candidates.length > 0) this.choose(0);
+    if (pixels) this.receive(pixels);
   }
 
   whole: View = $derived.by(() => {
