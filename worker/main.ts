@@ -3,6 +3,7 @@ import { Worker } from 'bullmq';
 import { config } from '$lib/server/config/config';
 import { closeDatabase } from '$lib/server/database/connection';
 import { pendingMigrations } from '$lib/server/database/migrate';
+import { cleanStaging } from '$lib/server/ingest/clean-staging';
 import { postReports } from '$lib/server/ingest/post-reports';
 import { log } from '$lib/server/log/log';
 import { JOBS, type JobName } from '$lib/server/queue/jobs';
@@ -18,6 +19,8 @@ const LOCK_MS = 15_000;
 const STALLED_EVERY_MS = 5_000;
 /** Reports of nights that ended are looked for this often. */
 const REPORTS_EVERY_MS = 60_000;
+/** What was begun and left is looked for this often. */
+const CLEAN_EVERY_MS = 3_600_000;
 /** Shutdown waits this long for fits in hand; what is not stored by then is offered again. */
 const SHUTDOWN_MS = 10_000;
 
@@ -68,6 +71,10 @@ async function main(): Promise<void> {
     () => void postReports(new Date()).catch((error: Error) => log.warn({ err: error.message }, 'reports not posted')),
     REPORTS_EVERY_MS,
   );
+  const clean = () =>
+    void cleanStaging(new Date()).catch((error: Error) => log.warn({ err: error.message }, 'staging not cleaned'));
+  clean();
+  const cleaning = setInterval(clean, CLEAN_EVERY_MS);
   log.info({ threads: config().WORKER_THREADS, pid: process.pid }, 'worker is up');
 
   let ending = false;
@@ -78,6 +85,7 @@ async function main(): Promise<void> {
     const late = setTimeout(() => process.exit(1), SHUTDOWN_MS);
     clearInterval(beat);
     clearInterval(reports);
+    clearInterval(cleaning);
     await relay.stop();
     await worker.close();
     await pool().destroy();

@@ -65,7 +65,7 @@ describe('every use-case asks for permission', () => {
     const takesActor = /\bactor: Actor\b/.test(text);
     if (!takesActor) return;
     const asks =
-      /\b(permit|permitSelf|may|programmesWhere|requireAdmin|admitToNight|readNight|readReport|readSpectrum)\(/.test(
+      /\b(permit|permitSelf|may|programmesWhere|requireAdmin|admitToNight|ownUpload|readNight|readReport|readSpectrum)\(/.test(
         text,
       );
     const isPublic = /Public use-case/.test(text);

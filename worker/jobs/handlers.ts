@@ -1,5 +1,6 @@
 import { composeReport } from '$lib/server/ingest/compose-report';
 import { ingestFiles } from '$lib/server/ingest/ingest-files';
+import { unpackArchive } from '$lib/server/ingest/unpack-archive';
 import { sendLetter } from '$lib/server/mail/send-letter';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
 import { composeInvitation } from '$lib/server/programmes/compose-invitation';
@@ -15,5 +16,6 @@ const letters = { invitation: composeInvitation, 'night report': composeReport }
 export const handlers: Handlers = {
   ingest: ({ fileIds }, jobId) => ingestFiles(fileIds, jobId, takeOnThread),
   mail: ({ letterId }, jobId) => sendLetter(letterId, jobId, letters),
+  unpack: ({ uploadId }, jobId) => unpackArchive(uploadId, jobId),
   measure: ({ spectrumIds }, jobId) => measureSpectra(spectrumIds, jobId, measureOnThread),
 };

@@ -2,6 +2,7 @@ import type { Confidence } from './confidence';
 import type { Flag } from './flag';
 import type { Measurement } from './measurement';
 import type { Problem } from './problem';
+import type { Unpacked } from './upload';
 
 /** A whole picture of a night at one revision; sent as it is by the API and by server-sent events. */
 export interface NightSnapshot {
@@ -13,6 +14,10 @@ export interface NightSnapshot {
   files: { total: number; waiting: number; read: number; failed: number };
   spectra: { total: number; waiting: number; measured: number; failed: number };
   confidence: Record<Confidence, number>;
+  /** Files that were announced and have not come: a night left half-submitted. `first` names a few, `by` who told. */
+  missing: { files: number; bytes: number; latest: string | null; by: string | null; first: string[] };
+  /** Archives handed in, latest first, at most 20. */
+  archives: { id: string; name: string; state: 'unpacking' | 'done' | 'failed'; unpacked: Unpacked | null }[];
   /** True when nothing of the night waits for a worker. */
   done: boolean;
   problems: (Problem & { file: string; fileId: string })[];
@@ -48,7 +53,9 @@ export interface NightMeasurement {
   flags: Flag[];
   noiseFactor: number | null;
   strongestLine: { line: string; signalToNoise: number } | null;
-  verdict: { redshift: number | null; confidence: string | null; by: string } | null;
+  verdict: { redshift: number | null; confidence: string | null; by: string; own: boolean } | null;
+  /** True where the reader looks without the engine's answer: all of it is null until their verdict. */
+  answerHidden?: true;
 }
 
 /** What the engine said beyond the table's columns. */

@@ -1,4 +1,5 @@
 import { Gunzip } from 'fflate';
+import { crc32 } from './crc32';
 import { problemAt, type Place } from './place';
 
 /** A file is at most this large, packed or not. */
@@ -59,19 +60,11 @@ export function inflateGzip(bytes: Uint8Array, place: Place): Uint8Array {
   return whole;
 }
 
-const CRC_TABLE = Uint32Array.from({ length: 256 }, (_, n) => {
-  let value = n;
-  for (let bit = 0; bit < 8; bit++) value = value & 1 ? 0xedb88320 ^ (value >>> 1) : value >>> 1;
-  return value;
-});
-
 /** Whether CRC32 and ISIZE, the last eight bytes, are those of the unpacked data (RFC 1952, section 2.3.1). */
 function trailerAgrees(packed: Uint8Array, unpacked: Uint8Array): boolean {
   const trailer = new DataView(packed.buffer, packed.byteOffset + packed.length - 8, 8);
   if (trailer.getUint32(4, true) !== unpacked.length) return false;
-  let crc = 0xffffffff;
-  for (const byte of unpacked) crc = CRC_TABLE[(crc ^ byte) & 255] ^ (crc >>> 8);
-  return trailer.getUint32(0, true) === ~crc >>> 0;
+  return trailer.getUint32(0, true) === crc32(unpacked);
 }
 
 function damaged(place: Place) {

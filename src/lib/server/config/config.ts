@@ -26,6 +26,8 @@ export const configSchema = z
     DEMO: flag.default(false),
     /** Largest file accepted, bytes. */
     MAX_FILE_BYTES: whole(256 * 1024 * 1024),
+    /** Largest archive accepted, bytes; its members are files. */
+    MAX_ARCHIVE_BYTES: whole(4 * 1024 * 1024 * 1024),
     /** Engine threads of one worker process. */
     WORKER_THREADS: whole(Math.max(1, availableParallelism())),
     /** Largest number of open database connections of one process. */

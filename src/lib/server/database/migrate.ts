@@ -5,12 +5,13 @@ import { database } from './connection';
 import * as firstLight from './migrations/0001-first-light';
 import * as reviewTogether from './migrations/0002-review-together';
 import * as nightReport from './migrations/0003-night-report';
+import * as uploads from './migrations/0004-uploads';
 import * as instruments from './migrations/0005-instruments';
 import * as targets from './migrations/0006-targets';
 import * as reviewTrust from './migrations/0007-review-trust';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight, reviewTogether, nightReport, instruments, targets, reviewTrust];
+const MIGRATIONS = [firstLight, reviewTogether, nightReport, uploads, instruments, targets, reviewTrust];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({

@@ -3,6 +3,7 @@ import { Refusal } from '$lib/domain/refusal';
 import { permit, type Actor } from '../auth/permissions';
 import { config } from '../config/config';
 import { inTransaction } from '../database/in-transaction';
+import { removeExpected } from '../database/queries/expected-files';
 import { addFilesToNight, findNight } from '../database/queries/nights';
 import { nudge } from '../queue/nudge';
 import { wishFor } from '../queue/outbox';
@@ -31,7 +32,7 @@ export interface ReceivedFile extends StoredBytes {
 }
 
 /** A name for people: no folders, no control characters, at most 255 characters. */
-function cleanName(name: string): string {
+export function cleanName(name: string): string {
   const last = name.split(/[\\/]/).pop() ?? '';
   return last.replace(/[\u0000-\u001f\u007f]/g, '').slice(-255) || 'unnamed';
 }
@@ -45,7 +46,10 @@ export async function admitToNight(actor: Actor | null, nightId: string): Promis
 }
 
 /** Streams one file to storage; an empty one is refused. Called for a night that `admitToNight` let in. */
-export async function storeBytes(file: { name: string; stream: Readable }): Promise<StoredBytes> {
+export async function storeBytes(file: {
+  name: string;
+  stream: Readable | AsyncIterable<Uint8Array>;
+}): Promise<StoredBytes> {
   const name = cleanName(file.name);
   const { sha256, sizeBytes } = await objects().put(file.stream, config().MAX_FILE_BYTES);
   if (sizeBytes === 0) throw new Refusal('invalid', `${name} is empty.`, 'Check that it was written whole.', name);
@@ -60,6 +64,7 @@ export async function addToNight(night: NightAdmitted, stored: StoredBytes[]): P
   if (stored.length === 0) return [];
   const added = await inTransaction(async (transaction) => {
     const files = await addFilesToNight(night, stored, transaction);
+    await removeExpected(night.id, { sha256: stored.map(({ sha256 }) => sha256) }, transaction);
     const fresh = files.filter(({ isNew }) => isNew).map(({ id }) => id);
     const wishes = [];
     for (let i = 0; i < fresh.length; i += FILES_PER_JOB) {

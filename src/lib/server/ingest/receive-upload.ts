@@ -1,9 +1,13 @@
 import { Readable } from 'node:stream';
 import type { ReadableStream as NodeReadableStream } from 'node:stream/web';
 import busboy from 'busboy';
+import { archiveKind, HEAD_BYTES } from '$lib/formats/archive/archive-kind';
 import { Refusal } from '$lib/domain/refusal';
 import type { Actor } from '../auth/permissions';
+import { peekBytes } from './peek-bytes';
+import { FOREIGN_ARCHIVE } from './queue-archive';
 import { addToNight, admitToNight, storeBytes, type ReceivedFile, type StoredBytes } from './receive-file';
+import { stageArchive } from './stage-archive';
 
 /** More parts than this in one request are refused; a night may have any number of requests. */
 const FILES_PER_REQUEST = 5_000;
@@ -15,6 +19,8 @@ export interface Upload {
   files: ReceivedFile[];
   /** Parts that were not taken, each with its reason; the others were. */
   refused: { name: string; what: string; mend: string }[];
+  /** Archives whose bytes are here; their members follow as they are unpacked. */
+  archives: { id: string; name: string }[];
 }
 
 /**
@@ -28,7 +34,7 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
     throw new Refusal('unsupported', 'Files come as multipart/form-data.', 'Use a form, or curl -F file=@NAME.');
   }
   const body = Readable.fromWeb(request.body as unknown as NodeReadableStream);
-  const upload: Upload = { files: [], refused: [] };
+  const upload: Upload = { files: [], refused: [], archives: [] };
   let first: Refusal | undefined;
   let stored: StoredBytes[] = [];
   const settle = async () => {
@@ -37,14 +43,22 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
   };
 
   const take = async (name: string, stream: Readable) => {
+    const { head, whole, release } = await peekBytes(stream, HEAD_BYTES);
     try {
-      stored.push(await storeBytes({ name, stream }));
+      const kind = archiveKind(head);
+      if (kind === 'foreign') throw new Refusal('unsupported', FOREIGN_ARCHIVE.what, FOREIGN_ARCHIVE.mend, name);
+      if (kind) {
+        upload.archives.push(await stageArchive(night, actor!.userId, { name, kind, stream: whole }));
+        return;
+      }
+      stored.push(await storeBytes({ name, stream: whole }));
       if (stored.length >= FILES_PER_TRANSACTION) await settle();
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       first ??= error;
       upload.refused.push({ name, what: error.what, mend: error.mend });
     } finally {
+      await release();
       stream.resume();
     }
   };
@@ -55,7 +69,7 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
     // What came whole before the connection broke stays: sending the rest again skips it.
     await settle();
   }
-  if (upload.files.length === 0) {
+  if (upload.files.length + upload.archives.length === 0) {
     throw first ?? new Refusal('invalid', 'The body has no file.', 'Send at least one part with a filename.', 'file');
   }
   return upload;

@@ -4,6 +4,8 @@ import { z } from 'zod';
 export const JOBS = {
   ingest: z.object({ fileIds: z.array(z.uuid()).min(1) }),
   mail: z.object({ letterId: z.uuid() }),
+  /** An archive whose bytes are all here. */
+  unpack: z.object({ uploadId: z.uuid() }),
   measure: z.object({ spectrumIds: z.array(z.uuid()).min(1) }),
 } as const;
 

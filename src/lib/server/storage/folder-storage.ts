@@ -14,7 +14,10 @@ export class FolderStorage implements ObjectStore {
     return join(this.folder, 'objects', sha256.slice(0, 2), sha256.slice(2, 4), sha256);
   }
 
-  async put(stream: Readable, maxBytes: number): Promise<{ sha256: string; sizeBytes: number }> {
+  async put(
+    stream: Readable | AsyncIterable<Uint8Array>,
+    maxBytes: number,
+  ): Promise<{ sha256: string; sizeBytes: number }> {
     const incoming = join(this.folder, 'incoming');
     await mkdir(incoming, { recursive: true });
     const temporary = join(incoming, randomUUID());
@@ -23,8 +26,9 @@ export class FolderStorage implements ObjectStore {
     const file = await open(temporary, 'wx', 0o640);
     try {
       try {
-        // The stream stays open past a refusal: the rest of a multipart body still has to flow through it.
-        for await (const chunk of stream.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>) {
+        // A stream stays open past a refusal: the rest of a multipart body still has to flow through it.
+        const chunks = 'iterator' in stream ? stream.iterator({ destroyOnReturn: false }) : stream;
+        for await (const chunk of chunks as AsyncIterable<Uint8Array>) {
           sizeBytes += chunk.length;
           if (sizeBytes > maxBytes) {
             throw new Refusal(
@@ -41,16 +45,20 @@ export class FolderStorage implements ObjectStore {
         await file.close();
       }
       const sha256 = hash.digest('hex');
-      const path = this.path(sha256);
-      await mkdir(dirname(path), { recursive: true });
-      // Same name means same bytes: a second writer replaces the file by its equal, atomically.
-      await rename(temporary, path);
-      await syncFolder(dirname(path));
+      await this.adopt(temporary, sha256);
       return { sha256, sizeBytes };
     } catch (error) {
       await rm(temporary, { force: true });
       throw error;
     }
+  }
+
+  async adopt(file: string, sha256: string): Promise<void> {
+    const path = this.path(sha256);
+    await mkdir(dirname(path), { recursive: true });
+    // Same name means same bytes: a second writer replaces the file by its equal, atomically.
+    await rename(file, path);
+    await syncFolder(dirname(path));
   }
 
   async read(sha256: string): Promise<Uint8Array> {

@@ -4,7 +4,7 @@ import { Refusal } from '$lib/domain/refusal';
 
 /** Ordinary bodies; spectra come through routes that stream and count for themselves. */
 const ORDINARY_BODY_BYTES = 1024 * 1024;
-const STREAMED = /^\/api\/v1\/nights\/[^/]+\/files$/;
+const STREAMED = /^\/api\/v1\/nights\/[^/]+\/(files|uploads(\/[^/]+)?)$/;
 
 /** Refuses bodies over 1 MiB, and bodies of undeclared length, everywhere but on the upload routes. */
 export const capBody: Handle = ({ event, resolve }) => {

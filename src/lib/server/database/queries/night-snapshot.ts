@@ -20,8 +20,8 @@ export async function countNight(nightId: string): Promise<Counts> {
   const replacements = { nightId };
   const [files, spectra, words] = await Promise.all([
     database().query<{ state: 'waiting' | 'read' | 'failed'; n: number | string }>(
-      `SELECT f.state, COUNT(*) AS n FROM night_files nf JOIN files f ON f.id = nf.file_id
-        WHERE nf.night_id = :nightId GROUP BY f.state`,
+      `SELECT IF(f.state = 'needs assignment', 'failed', f.state) AS state, COUNT(*) AS n FROM night_files nf JOIN files f ON f.id = nf.file_id
+        WHERE nf.night_id = :nightId GROUP BY 1`,
       { replacements, ...select },
     ),
     database().query<{ state: 'waiting' | 'measured' | 'failed'; n: number | string }>(
@@ -61,12 +61,31 @@ export async function nightProblems(nightId: string): Promise<NightSnapshot['pro
      UNION ALL
      SELECT f.id, nf.name, JSON_ARRAY(JSON_EXTRACT(s.problem, '$')) FROM night_files nf JOIN files f ON f.id = nf.file_id
       JOIN spectra s ON s.file_id = f.id WHERE nf.night_id = :nightId AND s.state = 'failed'
+     UNION ALL
+     SELECT u.id, u.name, u.problems FROM uploads u WHERE u.night_id = :nightId AND JSON_LENGTH(u.problems) > 0
      LIMIT 1000`,
     { replacements: { nightId }, ...select },
   );
   return rows.flatMap(({ fileId, file, problems }) =>
     parsed<Problem[]>(problems).map((problem) => ({ ...problem, file, fileId })),
   );
+}
+
+/** Names that several files of a night bear, with different bytes; at most 200. */
+export async function sameNames(nightId: string): Promise<NightSnapshot['problems']> {
+  const rows = await database().query<{ name: string; fileId: string; n: number | string }>(
+    `SELECT name COLLATE utf8mb4_bin AS name, MAX(file_id) AS fileId, COUNT(*) AS n FROM night_files
+      WHERE night_id = :nightId GROUP BY 1 HAVING COUNT(*) > 1 ORDER BY 1 LIMIT 200`,
+    { replacements: { nightId }, ...select },
+  );
+  return rows.map(({ name, fileId, n }) => ({
+    code: 'same-name',
+    file: name,
+    fileId,
+    where: name,
+    what: `${n} files of this night have this name and different bytes; all were taken.`,
+    mend: 'Where one replaces the other, look at the later; where they are two things, give each a name of its own.',
+  }));
 }
 
 export async function programmeOfNight(programmeId: string): Promise<NightSnapshot['programme']> {
