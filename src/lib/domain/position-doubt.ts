@@ -1,6 +1,6 @@
 import type { Problem } from './problem';
 import { separationDegrees } from './sky';
-import type { NamedPlace, TargetRegister } from './target-register';
+import { isListedAs, type NamedPlace, type TargetRegister } from './target-register';
 
 /** How far a header's position may be from the list's where the instrument does not say, arcsec: common practice for fibres. */
 export const POSITION_TOLERANCE_ARCSEC = 3;
@@ -16,7 +16,7 @@ function listedApart({ name, raDegrees, decDegrees }: NamedPlace, register: Targ
   if (raDegrees === null || decDegrees === null) return [];
   return register
     .named(name)
-    .filter((target) => target.isListed && target.decDegrees !== null)
+    .filter((target) => isListedAs(target, name) && target.decDegrees !== null)
     .map((target) => 3600 * separationDegrees(raDegrees, decDegrees, target.raDegrees!, target.decDegrees!));
 }
 

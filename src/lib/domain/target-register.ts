@@ -16,6 +16,11 @@ export interface KnownTarget extends NamedPlace {
   folded: string[];
 }
 
+/** True where a list has this name for the target; its other names are spellings of headers. */
+export function isListedAs({ isListed, name }: KnownTarget, wanted: string): boolean {
+  return isListed && foldName(name) === foldName(wanted);
+}
+
 /** A target and how far it is, arcsec. */
 export interface Neighbour {
   target: KnownTarget;
@@ -76,12 +81,18 @@ export class TargetRegister {
   /**
    * The target that a named place is, or null where it is a new one: the nearest within the radius, one of that name
    * first; else one of that name without a place, or of that list entry not further away than `toleranceArcsec`;
-   * without a place the one of that name, one with a place and the older first.
+   * without a place the one of that name, one with a place and the older first. A list itself (`isList`) names what
+   * stands on no list yet.
    */
-  match({ name, raDegrees, decDegrees }: NamedPlace, toleranceArcsec: number): KnownTarget | null {
+  match({ name, raDegrees, decDegrees }: NamedPlace, toleranceArcsec: number, isList = false): KnownTarget | null {
     const called = this.named(name);
     if (raDegrees === null || decDegrees === null) {
-      return called.find(({ isListed }) => isListed) ?? called.find((t) => t.decDegrees !== null) ?? called[0] ?? null;
+      return (
+        called.find((target) => isListedAs(target, name)) ??
+        called.find((t) => t.decDegrees !== null) ??
+        called[0] ??
+        null
+      );
     }
     const near = this.within(raDegrees, decDegrees, this.#radiusArcsec);
     const both = near.find(({ target }) => called.includes(target));
@@ -89,7 +100,7 @@ export class TargetRegister {
     const apart = (target: KnownTarget) =>
       3600 * separationDegrees(raDegrees, decDegrees, target.raDegrees!, target.decDegrees!);
     return (
-      called.find((target) => target.isListed && target.decDegrees !== null && apart(target) <= toleranceArcsec) ??
+      called.find((t) => (isListedAs(t, name) || isList) && t.decDegrees !== null && apart(t) <= toleranceArcsec) ??
       called.find((target) => target.decDegrees === null) ??
       null
     );

@@ -16,6 +16,8 @@ const TABLE = {
   'spectrum.rule': { roles: ['scientist', 'curator'], scope: 'review' },
   'spectrum.assign': { roles: ['scientist', 'curator'], scope: 'review' },
   'spectrum.comment': { roles: ['observer', 'scientist', 'curator'], scope: 'review' },
+  'target.list': { roles: ['observer', 'curator'], scope: 'submit' },
+  'target.combine': { roles: ['observer', 'scientist', 'curator'], scope: 'submit' },
   'review.read-statistics': { roles: ['scientist', 'curator'], scope: 'read' },
   'review.read-people': { roles: ['curator'], scope: 'read' },
   'catalogue.read-draft': { roles: ['curator'], scope: 'read' },

@@ -1,7 +1,7 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import { zoneOf } from '$lib/domain/sky';
 import { foldName } from '$lib/domain/target-name';
-import type { KnownTarget, NamedPlace, TargetRegister } from '$lib/domain/target-register';
+import { isListedAs, type KnownTarget, type NamedPlace, type TargetRegister } from '$lib/domain/target-register';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
 import { Target, TargetName } from '../models/observing';
@@ -10,6 +10,8 @@ import { registerFor, targetRadius } from './target-register';
 export interface WantedTarget extends NamedPlace {
   /** How far its place may be from the listed one. */
   toleranceArcsec: number;
+  /** It stands on a list, which names places. */
+  isList?: boolean;
 }
 
 export interface PlacedTargets {
@@ -17,6 +19,8 @@ export interface PlacedTargets {
   targets: KnownTarget[];
   /** Those that these places or names may be. */
   register: TargetRegister;
+  /** Ids of those that were made. */
+  made: Set<string>;
 }
 
 /**
@@ -30,17 +34,17 @@ export async function placeTargets(
 ): Promise<PlacedTargets> {
   const radius = await targetRadius(programmeId, transaction);
   const known = await registerFor(programmeId, wanted, radius, transaction);
-  const found = wanted.map((place) => known.match(place, place.toleranceArcsec));
+  const found = wanted.map((place) => known.match(place, place.toleranceArcsec, place.isList));
   const complete = found.every((target, i) => target && (target.decDegrees !== null || wanted[i].decDegrees === null));
   if (complete) {
     await addNames(programmeId, found as KnownTarget[], wanted, known, transaction);
-    return { targets: found as KnownTarget[], register: known };
+    return { targets: found as KnownTarget[], register: known, made: new Set() };
   }
   await holdRegister(programmeId, transaction);
   const register = await registerFor(programmeId, wanted, radius, transaction);
   const made: KnownTarget[] = [];
   const targets = wanted.map((place) => {
-    const target = register.match(place, place.toleranceArcsec);
+    const target = register.match(place, place.toleranceArcsec, place.isList);
     if (target) return target;
     const fresh = { id: newIdentifier(), ...placeOf(place), isListed: false, folded: [foldName(place.name)] };
     register.add(fresh);
@@ -54,7 +58,7 @@ export async function placeTargets(
   );
   await placeUnplaced(targets, wanted, register, transaction);
   await addNames(programmeId, targets, wanted, register, transaction);
-  return { targets, register };
+  return { targets, register, made: new Set(made.map(({ id }) => id)) };
 }
 
 const placeOf = ({ name, raDegrees, decDegrees }: NamedPlace) => {
@@ -112,7 +116,7 @@ async function addNames(
     const { name } = wanted[i];
     const folded = foldName(name);
     if (target.folded.includes(folded)) continue;
-    if (register.named(name).some((other) => other.isListed && other.id !== target.id)) continue;
+    if (register.named(name).some((other) => isListedAs(other, name) && other.id !== target.id)) continue;
     register.addName(target, folded);
     rows.push({ targetId: target.id, folded, programmeId, name: name.slice(0, 200) });
   }
