@@ -35,7 +35,8 @@ export function markSkyPixels(working: WorkingSpectrum): void {
   const sigma = new Float64Array(count);
   for (let i = 0; i < count; i++) sigma[i] = weight[i] > 0 ? 1 / Math.sqrt(weight[i]) : 0;
   const quiet = runningMedian(sigma);
-  const skyLevel = sky ? runningMedian(Float64Array.from(sky, (value) => Math.max(0, value))) : null;
+  // Values below 0 are left out by the running median itself.
+  const skyLevel = sky ? runningMedian(sky) : null;
   for (let i = 0; i < count; i++) {
     const loud = sigma[i] > 1.35 * quiet[i] || (sky && skyLevel && sky[i] > 2 * skyLevel[i] && skyLevel[i] > 0);
     if (loud && weight[i] > 0) mask[i] |= MASK.skyLine;

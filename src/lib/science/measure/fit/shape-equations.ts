@@ -20,6 +20,8 @@ let residual = new Float64Array(2048);
 let derivatives = [new Float64Array(2048), new Float64Array(2048), new Float64Array(2048)];
 let weighted = new Float64Array(2048);
 let index = new Int32Array(64);
+/** What the lines' projections on a window's continuum basis add up to. */
+const back = new Float64Array(BASIS_LIMIT);
 const projected = [new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT), new Float64Array(BASIS_LIMIT)];
 
 /** Pixels of a window, counted from its first, in which the shape parameters act, and which parameters do. */
@@ -125,6 +127,7 @@ function differentiate(
   if (high <= low) return reach;
   for (let i = low; i < high; i++) residual[i] = window.residual[i];
   for (const row of derivatives) row.fill(0, low, high);
+  back.fill(0);
   for (let s = profiles.windowSlots[w]; s < end; s++) {
     const c = profiles.component[s];
     const value = amplitude[c];
@@ -142,11 +145,12 @@ function differentiate(
       toShift[i] += value * byShift[i + shift];
       toWidth[i] += value * byWidth[i + shift];
     }
-    for (let k = 0; k < window.basis.length; k++) {
-      const row = window.basis[k];
-      const back = value * profiles.onBasis[s * BASIS_LIMIT + k];
-      for (let i = low; i < high; i++) residual[i] += back * row[i];
-    }
+    for (let k = 0; k < window.basis.length; k++) back[k] += value * profiles.onBasis[s * BASIS_LIMIT + k];
+  }
+  for (let k = 0; k < window.basis.length; k++) {
+    const row = window.basis[k];
+    const share = back[k];
+    for (let i = low; i < high; i++) residual[i] += share * row[i];
   }
   return reach;
 }
