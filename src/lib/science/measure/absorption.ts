@@ -1,7 +1,7 @@
 import { lineByName } from '../constants/lines';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import type { FilterBank } from './detect';
-import { familyEvidence } from './evidence';
+import { familyEvidence, openReference } from './evidence';
 import { CONTINUUM_FAULT } from './continuum-fault';
 import type { ScanLine } from './scan';
 
@@ -110,6 +110,8 @@ export interface AbsorptionEvidence {
   /** Log evidence against a featureless continuum at this redshift, not integrated over redshift. */
   logEvidence: number;
   family: string;
+  /** Whether it rests on wide features. */
+  wide: boolean;
   /** Features deeper than 4 sigma. */
   strongFeatures: number;
   sigmaKms: number;
@@ -133,7 +135,13 @@ export function absorptionEvidence(
   noiseFactors: { lines: number; bands: number },
   level: (wavelength: number) => number,
 ): AbsorptionEvidence {
-  let best: AbsorptionEvidence = { logEvidence: -Infinity, family: 'none', strongFeatures: 0, sigmaKms: 0 };
+  let best: AbsorptionEvidence = {
+    logEvidence: -Infinity,
+    family: 'none',
+    wide: false,
+    strongFeatures: 0,
+    sigmaKms: 0,
+  };
   for (const family of ABSORPTION_FAMILIES) {
     if (family.starOnly && !star) continue;
     const bank = family.wide ? banks.bands : banks.lines;
@@ -179,12 +187,13 @@ export function absorptionEvidence(
       const { logEvidence } = familyEvidence(
         { count, gram, right: Float64Array.from(right) },
         { logRatio: Float64Array.from(logRatio), scatter: Float64Array.from(scatter) },
-        logNoiseFlux,
+        openReference(logNoiseFlux),
       );
       if (logEvidence > best.logEvidence) {
         best = {
           logEvidence,
           family: family.name,
+          wide: family.wide,
           strongFeatures: strong,
           sigmaKms: filter.sigmaKms,
         };

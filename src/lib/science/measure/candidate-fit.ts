@@ -8,7 +8,7 @@ import { jointFit, type JointFit } from './fit/joint-fit';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import { breakLogRatio, LYMAN_COMPONENTS } from './lyman-alpha';
 import type { WeighContext } from './weigh-context';
-import type { Suspect, SuspectKind } from './shortlist';
+import type { Suspect, SuspectKind } from './suspect';
 
 /** A suspect after its joint fit. */
 export interface FittedCandidate {
@@ -20,6 +20,8 @@ export interface FittedCandidate {
   logEvidence: number;
   /** The same before artefacts are allowed for. */
   ownEvidence: number;
+  /** Of a quasar's, the part that its broad lines bring. */
+  broadEvidence: number;
   /** Significance of its lines on every feature. */
   onFeatures: Float64Array;
   /** Indices of the features its lines explain. */
@@ -103,12 +105,15 @@ export function weighFit(
   const errors = fitErrors(fit);
   const errorScale = scale;
   let best = -Infinity;
+  let broadEvidence = 0;
   let bestFamily: LineFamily = LINE_FAMILIES[0];
   for (const family of LINE_FAMILIES) {
     if (family.kind !== kind) continue;
-    const value = Math.log(family.weight) + evidenceOfFamily(fit, family, context, errorScale);
+    const evidence = evidenceOfFamily(fit, family, context, errorScale);
+    const value = Math.log(family.weight) + evidence.logEvidence;
     if (value > best) {
       best = value;
+      broadEvidence = evidence.broad;
       bestFamily = family;
     }
   }
@@ -124,6 +129,7 @@ export function weighFit(
     family: bestFamily,
     logEvidence: ownEvidence,
     ownEvidence,
+    broadEvidence,
     onFeatures,
     explained,
     noiseFactor: errorScale,
@@ -133,21 +139,32 @@ export function weighFit(
 
 /**
  * Takes from every candidate what artefacts would explain of the features it explains: as much as the filter saw there,
- * so that a poorer description of the same feature pays for its poverty; in rough spectra all that it gains.
+ * so that a poorer description of the same feature pays for its poverty; in rough spectra all that it gains. Quasars are
+ * compared on the whole spectrum, where a feature left over has cost its own: all of them pay what the best one does.
  */
 export function allowForArtefacts(context: WeighContext, candidates: readonly FittedCandidate[]): void {
-  const { features } = context;
+  let best: FittedCandidate | null = null;
   for (const candidate of candidates) {
-    let artefacts = 0;
-    for (const j of candidate.explained) {
-      const own = candidate.onFeatures[j];
-      // A forest of absorption makes a quasar's spectrum rough without making its emission doubtful.
-      const rough = features[j].rough && candidate.kind !== 'broad';
-      const counted = rough ? own : Math.min(features[j].bounded, own);
-      artefacts += artefactLogOdds(features[j], counted / candidate.noiseFactor);
-    }
+    if (candidate.kind === 'broad' && candidate.ownEvidence > (best?.ownEvidence ?? -Infinity)) best = candidate;
+  }
+  const ofQuasars = best ? artefactsOf(context, best) : 0;
+  for (const candidate of candidates) {
+    const artefacts = candidate.kind === 'broad' ? ofQuasars : artefactsOf(context, candidate);
     candidate.logEvidence = candidate.ownEvidence - artefacts;
   }
+}
+
+/** Log odds that artefacts made every feature a candidate explains. */
+function artefactsOf({ features }: WeighContext, candidate: FittedCandidate): number {
+  let artefacts = 0;
+  for (const j of candidate.explained) {
+    const own = candidate.onFeatures[j];
+    // A forest of absorption makes a quasar's spectrum rough without making its emission doubtful.
+    const rough = features[j].rough && candidate.kind !== 'broad';
+    const whole = artefactLogOdds(features[j], (rough ? own : features[j].bounded) / candidate.noiseFactor);
+    artefacts += rough ? whole : Math.min(whole, 0.5 * (own / candidate.noiseFactor) ** 2);
+  }
+  return artefacts;
 }
 
 /**

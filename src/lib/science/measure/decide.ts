@@ -7,6 +7,7 @@ import { asFinal, finalFit, type FinalFit } from './final-fit';
 import type { Hypotheses } from './hypotheses';
 import { lacksBalmer, type LineSignal } from './lacks-balmer';
 import { systemicRedshift } from './lyman-alpha';
+import { wholeRedshift } from './quasar/whole-redshift';
 import type { Posterior } from './posterior';
 import type { PreparedSpectrum } from './prepare';
 import { redshiftWithErrors } from './redshift-error';
@@ -66,6 +67,9 @@ export function decide(
   const refit0 = top?.emission
     ? finalFit(prepared.working, prepared.continuum, hypotheses.context.noiseFactor, top.emission, 12)
     : null;
+  if (refit0 && top.emission?.kind === 'broad') {
+    refit0.wholeLogScale = wholeRedshift(hypotheses.asQuasar, top.emission.fit.logScale);
+  }
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
   const group = top && evidence ? groupOf(top, evidence, leavesFeatures(hypotheses, top)) : 'none';
   const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability, group)) : 0;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { familyEvidence } from './evidence';
+import { familyEvidence, openReference } from './evidence';
 
 const single = (right: number, information: number) => ({
   count: 1,
@@ -23,7 +23,7 @@ function bruteForce(right: number, information: number): number {
 
 describe('familyEvidence', () => {
   it.each([0, 2, 5, 10])('agrees with the integral for one line of signal-to-noise %d', (s) => {
-    const { logEvidence } = familyEvidence(single(s, 1), model, 0);
+    const { logEvidence } = familyEvidence(single(s, 1), model, openReference(0));
     expect(Math.abs(logEvidence - bruteForce(s, 1))).toBeLessThan(0.35);
   });
 
@@ -32,13 +32,15 @@ describe('familyEvidence', () => {
       familyEvidence(
         { count: 2, gram: Float64Array.of(1, 0, 0, 1), right: Float64Array.of(10, second) },
         { logRatio: Float64Array.of(0, Math.log(0.8)), scatter: Float64Array.of(0.3, 0.3) },
-        0,
+        openReference(0),
       ).logEvidence;
     expect(both(8)).toBeGreaterThan(both(0) + 25);
   });
 
   it('is minus infinity without lines', () => {
     const none = { count: 0, gram: new Float64Array(0), right: new Float64Array(0) };
-    expect(familyEvidence(none, { logRatio: none.gram, scatter: none.gram }, 0).logEvidence).toBe(-Infinity);
+    expect(familyEvidence(none, { logRatio: none.gram, scatter: none.gram }, openReference(0)).logEvidence).toBe(
+      -Infinity,
+    );
   });
 });

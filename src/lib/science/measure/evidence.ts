@@ -1,11 +1,21 @@
 import { choleskyInPlace, choleskySolve } from './fit/solve';
 
+/** Log-normal prior of the reference flux: mean and standard deviation of its natural logarithm. */
+export interface ReferencePrior {
+  mean: number;
+  sigma: number;
+}
+
 /**
- * Prior of ln(reference flux), relative to the flux that a typical line's noise amounts to: log-normal, so that faint
- * sources are commoner than bright ones and the integral is proper (mean at signal-to-noise 2.7, one sigma at 16).
+ * Prior of a reference flux of which nothing is known, relative to the flux that a typical line's noise amounts to:
+ * log-normal, so that faint sources are commoner than bright ones and the integral is proper (mean at signal-to-noise
+ * 2.7, one sigma at 16).
+ *
+ * @param logNoiseFlux ln of the flux a typical line's noise amounts to
  */
-const LOG_FLUX_MEAN = 1;
-const LOG_FLUX_SIGMA = 1.8;
+export function openReference(logNoiseFlux: number): ReferencePrior {
+  return { mean: logNoiseFlux + 1, sigma: 1.8 };
+}
 
 /** What the data say of a set of line fluxes: log likelihood right.a - a^T gram a / 2 relative to no lines. */
 export interface FluxLikelihood {
@@ -37,18 +47,18 @@ export interface FamilyEvidence {
  * ln Z = Q(u*) - sum ln tau - ln s - ln(sum tau^-2 + s^-2) / 2 - ln det(P + a gram a - diag(a g)) / 2.
  *
  * @param likelihood leading `count` fluxes; every diagonal element must be positive
- * @param logNoiseFlux ln of the flux a typical line's noise amounts to
+ * @param prior of the reference flux; see `openReference`
  * @returns log evidence; -Infinity where count is 0 or the arithmetic fails
  * Source: Tierney & Kadane (1986, JASA 81, 82), eq. 2.2 for the approximation.
  */
-export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, logNoiseFlux: number): FamilyEvidence {
+export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, prior: ReferencePrior): FamilyEvidence {
   const { count: n, gram, right } = likelihood;
   const failed = { logEvidence: -Infinity, logReference: -Infinity };
   if (n === 0) return failed;
   reserve(n);
   const { precision, ratio, u, trial, step, matrix } = work;
-  const referencePrecision = 1 / LOG_FLUX_SIGMA ** 2;
-  const problem: Problem = { n, gram, right, model, referenceMean: logNoiseFlux + LOG_FLUX_MEAN, precisionSum: 0 };
+  const referencePrecision = 1 / prior.sigma ** 2;
+  const problem: Problem = { n, gram, right, model, prior, precisionSum: 0 };
   problem.precisionSum = referencePrecision;
   let logScatter = 0;
   for (let i = 0; i < n; i++) {
@@ -101,7 +111,7 @@ export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, lo
   let logDeterminant = 0;
   for (let i = 0; i < n; i++) logDeterminant += 2 * Math.log(matrix[i * n + i]);
   const logEvidence =
-    current - logScatter - Math.log(LOG_FLUX_SIGMA) - 0.5 * Math.log(problem.precisionSum) - 0.5 * logDeterminant;
+    current - logScatter - Math.log(prior.sigma) - 0.5 * Math.log(problem.precisionSum) - 0.5 * logDeterminant;
   return { logEvidence, logReference: reference };
 }
 
@@ -109,7 +119,7 @@ export function familyEvidence(likelihood: FluxLikelihood, model: RatioModel, lo
 interface Problem extends Omit<FluxLikelihood, 'count'> {
   n: number;
   model: RatioModel;
-  referenceMean: number;
+  prior: ReferencePrior;
   /** Of the ratio priors and of the reference flux's own. */
   precisionSum: number;
 }
@@ -135,17 +145,17 @@ function reserve(n: number): void {
 }
 
 /** Log posterior density Q at a point, the reference flux at its best; leaves the fluxes and the reference in `work`. */
-function evaluate({ n, gram, right, model, referenceMean, precisionSum }: Problem, at: Float64Array): number {
+function evaluate({ n, gram, right, model, prior, precisionSum }: Problem, at: Float64Array): number {
   const { precision, a } = work;
   const { logRatio } = model;
-  const referencePrecision = 1 / LOG_FLUX_SIGMA ** 2;
-  let weighted = referencePrecision * referenceMean;
+  const referencePrecision = 1 / prior.sigma ** 2;
+  let weighted = referencePrecision * prior.mean;
   for (let i = 0; i < n; i++) {
     a[i] = Math.exp(at[i]);
     weighted += precision[i] * (at[i] - logRatio[i]);
   }
   const reference = weighted / precisionSum;
-  let value = -0.5 * referencePrecision * (reference - referenceMean) ** 2;
+  let value = -0.5 * referencePrecision * (reference - prior.mean) ** 2;
   for (let i = 0; i < n; i++) {
     let ga = 0;
     for (let j = 0; j < n; j++) ga += gram[i * n + j] * a[j];

@@ -1,5 +1,5 @@
 import { continuumFault } from './continuum-fault';
-import { familyEvidence, type FluxLikelihood } from './evidence';
+import { familyEvidence, openReference, type FluxLikelihood } from './evidence';
 import { RATIO_PRIORS } from './fit/components';
 import { invertPositiveDefinite } from './fit/solve';
 import type { WeighContext } from './weigh-context';
@@ -30,17 +30,17 @@ interface Row {
  * the narrow-line nucleus' ratios after its broad lines, and count only where they speak for it.
  *
  * @param scale what errors are multiplied by
- *
+ * @returns the evidence, and the part of it that broad lines bring
  */
 export function evidenceOfFamily(
   fit: JointFit,
   family: LineFamily,
   context: WeighContext,
   scale: number = context.noiseFactor,
-): number {
+): { logEvidence: number; broad: number } {
   if (family.kind !== 'broad') {
     const profile = family.kind === 'lyman' ? LYMAN_PROFILE_COMPONENTS : 0;
-    return evidenceOfRows(fit, rowsOf(fit, family, 0, profile, context), [], context, scale);
+    return { logEvidence: evidenceOfRows(fit, rowsOf(fit, family, 0, profile, context), [], context, scale), broad: 0 };
   }
   const narrow: number[] = [];
   const broad: number[] = [];
@@ -50,7 +50,7 @@ export function evidenceOfFamily(
   const wide = evidenceOfRows(fit, rowsOf(fit, family, 1, 0, context), narrow, context, scale);
   const slim = evidenceOfRows(fit, rowsOf(fit, NARROW_NUCLEUS, 0, 0, context), broad, context, scale);
   // Without broad lines that stand on their own the narrow hypothesis says all there is to say.
-  return wide > LEAST_BROAD_EVIDENCE ? wide + Math.max(0, slim) : -Infinity;
+  return { logEvidence: wide > LEAST_BROAD_EVIDENCE ? wide + Math.max(0, slim) : -Infinity, broad: wide };
 }
 
 function rowsOf(fit: JointFit, family: LineFamily, width: 0 | 1, profile: number, context: WeighContext): Row[] {
@@ -135,7 +135,7 @@ function evidenceOfRows(fit: JointFit, rows: Row[], held: number[], context: Wei
       logRatio: Float64Array.from(rows, (row) => row.logRatio),
       scatter: Float64Array.from(rows, (row) => row.scatter),
     },
-    context.logNoiseFlux,
+    openReference(context.logNoiseFlux),
   ).logEvidence;
   return evidence + logPrior;
 }

@@ -23,6 +23,8 @@ export interface FinalFit {
   lyman: { fwhmKms: number; wingShare: number } | null;
   /** Quasars and windy active nuclei alone: each component's own shift. */
   shifts: ComponentShift[] | null;
+  /** Quasars alone: ln(1+z) of the whole spectrum. */
+  wholeLogScale: number | null;
 }
 
 const FULL_NARROW = FULL_COMPONENTS.filter((component) => component.name !== 'Lyman-alpha 1216');
@@ -54,10 +56,10 @@ export function finalFit(
   if (candidate.kind !== 'lyman') {
     const scattered = candidate.kind === 'broad' || isActive(candidate, fit);
     const shifts = scattered ? componentShifts(data, fit) : null;
-    return { fit, errors, errorScale, logScale: fit.logScale, lyman: null, shifts };
+    return { fit, errors, errorScale, logScale: fit.logScale, lyman: null, shifts, wholeLogScale: null };
   }
   const peak = lymanAlphaPeak(data, fit);
-  return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak, shifts: null };
+  return { fit, errors, errorScale, logScale: peak.logScale, lyman: peak, shifts: null, wholeLogScale: null };
 }
 
 /** Continuum signal-to-noise a pixel from which on stellar absorption is fitted; below, its effect hides in the noise. */
@@ -93,7 +95,15 @@ function isActive(candidate: FittedCandidate, fit: JointFit): boolean {
 /** A candidate's own fit in the form of a final one. */
 export function asFinal(candidate: FittedCandidate): FinalFit {
   const { fit, errors, noiseFactor } = candidate;
-  return { fit, errors, errorScale: noiseFactor, logScale: fit.logScale, lyman: null, shifts: null };
+  return {
+    fit,
+    errors,
+    errorScale: noiseFactor,
+    logScale: fit.logScale,
+    lyman: null,
+    shifts: null,
+    wholeLogScale: null,
+  };
 }
 
 /** Significance of a bank's best-matching narrow filter at an observed wavelength; 0 outside. */

@@ -7,9 +7,14 @@ import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
 import { lowerBound } from './noise';
 import type { PreparedSpectrum } from './prepare';
-import { BROAD_SCAN_LINES, NARROW_SCAN_LINES, scanRedshifts } from './scan';
+import { coarsen } from './quasar/coarse-spectrum';
+import { compareQuasars } from './quasar/compare-quasars';
+import { quasarLikelihood, type QuasarLikelihood } from './quasar/quasar-likelihood';
+import { quasarSuspects } from './quasar/quasar-suspects';
+import { NARROW_SCAN_LINES, scanRedshifts } from './scan';
 import type { MeasureSettings } from './settings';
-import { identitiesOf, lymanCovered, shortlist, type Suspect } from './shortlist';
+import { identitiesOf, lymanCovered, shortlist } from './shortlist';
+import type { Suspect } from './suspect';
 import type { WeighContext } from './weigh-context';
 import type { WorkingSpectrum } from './working-spectrum';
 
@@ -30,6 +35,8 @@ export interface Hypotheses {
   star: AbsorptionCandidate;
   banks: { lines: FilterBank; bands: FilterBank };
   relativeResolution: number;
+  /** Weighs the whole spectrum as a quasar's. */
+  asQuasar: QuasarLikelihood;
 }
 
 const IDENTITIES = [
@@ -41,8 +48,8 @@ const IDENTITIES = [
   '[S III] 9533',
   'Paschen-alpha 18756',
 ];
-/** Log evidence that the filters must give a quasar for its costly fit to be worth while. */
-const LEAST_BROAD_SCORE = 0;
+/** Quasar redshifts that get a joint fit. */
+const QUASARS_FITTED = 4;
 /** Levenberg-Marquardt steps for every suspect, and then for the best. */
 const FIRST_STEPS = 2;
 const MORE_STEPS = 3;
@@ -80,7 +87,8 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     noiseFactor: lines.filters[0].noiseFactor,
     logNoiseFlux: typicalLogNoise(lines),
   };
-  const suspects = suspectsOf(lines, bands, features, relativeResolution, context.logNoiseFlux, settings);
+  const asQuasar = quasarLikelihood(coarsen(working, context.noiseFactor));
+  const suspects = suspectsOf(lines, bands, features, relativeResolution, context.logNoiseFlux, settings, asQuasar);
   const tried = suspects
     .map((suspect) => fitCandidate(context, suspect, FIRST_STEPS))
     .filter((fitted): fitted is FittedCandidate => fitted !== null);
@@ -91,6 +99,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const temper = broad.length > 0 ? Math.sqrt(1 + loudest / BROAD_INFORMATION) : 1;
   const broadScale = misfit * temper;
   const weighed = tried.map((t) => (t.kind === 'broad' ? weighFit(context, t.fit, 'broad', broadScale) : t));
+  compareQuasars(weighed, asQuasar);
   allowForArtefacts(context, weighed);
   weighed.sort((a, b) => b.logEvidence - a.logEvidence);
   const level = (wavelength: number) =>
@@ -110,6 +119,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const candidates = weighed.map((one, rank) =>
     rank < REFINED ? refineCandidate(context, one, MORE_STEPS, one.kind === 'broad' ? broadScale : undefined) : one,
   );
+  const besideQuasars = compareQuasars(candidates, asQuasar);
   allowForArtefacts(context, candidates);
   for (const candidate of candidates) {
     candidate.logEvidence += Math.max(0, absorptionAt(candidate.fit.logScale, false).logEvidence);
@@ -124,6 +134,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const star = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
     .map((logScale) => absorptionAt(logScale, true))
     .sort((a, b) => b.logEvidence - a.logEvidence)[0];
+  if (star.wide) star.logEvidence = besideQuasars(star.logEvidence);
   return {
     context,
     features,
@@ -132,6 +143,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     star,
     banks: { lines, bands },
     relativeResolution,
+    asQuasar,
   };
 }
 
@@ -166,6 +178,7 @@ function suspectsOf(
   relativeResolution: number,
   logNoiseFlux: number,
   settings: MeasureSettings,
+  asQuasar: QuasarLikelihood,
 ): Suspect[] {
   const range = [settings.redshiftMinimum, settings.redshiftMaximum] as const;
   const narrowPeaks = scanRedshifts(lines, NARROW_SCAN_LINES, range, 18, 300);
@@ -173,15 +186,11 @@ function suspectsOf(
   const narrow = shortlist(
     lines,
     [...narrowPeaks, ...identities],
-    'narrow',
     relativeResolution,
     logNoiseFlux,
     settings.candidatesFitted + 2,
   );
-  const broadPeaks = scanRedshifts(bands, BROAD_SCAN_LINES, range, 8, 3000);
-  const broad = shortlist(bands, broadPeaks, 'broad', relativeResolution, logNoiseFlux, 3).filter(
-    (suspect) => suspect.score > LEAST_BROAD_SCORE,
-  );
+  const broad = quasarSuspects(bands, asQuasar, range, QUASARS_FITTED);
   const suspects = [...narrow, ...broad];
   // A quasar's narrow lines may give its redshift away before its broad ones do, and the other way round.
   for (const suspect of narrow.slice(0, 2)) {

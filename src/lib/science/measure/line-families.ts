@@ -1,5 +1,5 @@
 import type { ObjectClass } from '$lib/domain/measurement';
-import type { SuspectKind } from './suspect-kind';
+import type { SuspectKind } from './suspect';
 
 /** What a kind of object's lines look like relative to each other, before noise. */
 export interface LineFamily {

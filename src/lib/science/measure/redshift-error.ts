@@ -39,10 +39,17 @@ export interface RedshiftWithErrors {
   total: number;
 }
 
+/** Significance from which on a quasar's narrow line fixes its redshift. */
+const NARROW_SIGNIFICANCE = 5;
+/** Scatter of what the whole spectrum says about the systemic redshift, km/s: measured on simulated quasars. */
+const WHOLE_SCATTER_KMS = 450;
+
 /**
- * The reported redshift. For narrow lines it is the joint fit's, unless an active nucleus' winds pull them apart. A broad-line quasar's lines disagree by more than their
- * errors: each line's own shift is corrected by its mean velocity and weighted by measurement and intrinsic scatter
- * together, so that a strong C IV does not outvote Mg II or [O III].
+ * The reported redshift. For narrow lines it is the joint fit's, unless an active nucleus' winds pull them apart. A
+ * broad-line quasar's lines disagree by more than their errors: each line's own shift is corrected by its mean velocity
+ * and weighted by measurement and intrinsic scatter together, so that a strong C IV does not outvote Mg II or [O III].
+ * Without a narrow line the whole spectrum has its say too, since blends and the forest's bite out of Lyman-alpha move
+ * single lines; a part of the distance between the two counts as error.
  */
 export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWithErrors {
   const own = Math.min(1, final.errors.logScale * final.errorScale);
@@ -50,6 +57,7 @@ export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWit
   if (!final.shifts) return { redshift: plain - 1, measured: own * plain, total: own * plain };
   let weight = 0;
   let sum = 0;
+  let anchored = false;
   for (const { component, shift, information } of final.shifts) {
     const line = final.fit.components[component];
     const known = broad
@@ -57,6 +65,7 @@ export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWit
       : ([line.name, line.width, 0, WIND_SCATTER_KMS[line.name] ?? CALM_SCATTER_KMS] as const);
     const significance = final.fit.amplitude[component] / (final.errors.amplitude[component] * final.errorScale);
     if (!known || !(information > 0) || !(significance > 4)) continue;
+    if (line.width === 0 && !line.name.startsWith('Lyman') && significance > NARROW_SIGNIFICANCE) anchored = true;
     const scatter = known[3] / SPEED_OF_LIGHT_KMS;
     const limit = (line.width === 1 ? 3000 : 600) / SPEED_OF_LIGHT_KMS;
     const bounded = Math.max(-limit, Math.min(limit, shift));
@@ -70,7 +79,18 @@ export function redshiftWithErrors(final: FinalFit, broad: boolean): RedshiftWit
       measured: own * plain,
       total: Math.hypot(own, (broad ? 400 : CALM_SCATTER_KMS) / SPEED_OF_LIGHT_KMS) * plain,
     };
-  const stretch = Math.exp(final.logScale + sum / weight);
   const total = Math.sqrt(1 / weight);
+  if (final.wholeLogScale !== null && !anchored) {
+    const lines = final.logScale + sum / weight;
+    const whole = 1 / (WHOLE_SCATTER_KMS / SPEED_OF_LIGHT_KMS) ** 2;
+    const stretch = Math.exp((weight * lines + whole * final.wholeLogScale) / (weight + whole));
+    const apart = lines - final.wholeLogScale;
+    return {
+      redshift: stretch - 1,
+      measured: own * stretch,
+      total: Math.hypot(Math.max(own, total), 0.3 * apart) * stretch,
+    };
+  }
+  const stretch = Math.exp(final.logScale + sum / weight);
   return { redshift: stretch - 1, measured: own * stretch, total: Math.max(own, total) * stretch };
 }

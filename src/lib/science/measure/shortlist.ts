@@ -1,26 +1,15 @@
 import { lineByName } from '../constants/lines';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import type { FilterBank } from './detect';
-import { familyEvidence } from './evidence';
+import { familyEvidence, openReference } from './evidence';
 import type { Feature } from './features';
 import { LINE_FAMILIES, type LineFamily } from './line-families';
 import type { ScanPeak } from './scan';
-import type { SuspectKind } from './suspect-kind';
-
-export type { SuspectKind };
+import type { Suspect, SuspectKind } from './suspect';
 
 /** Kernels farther apart than this, in sigmas, share nothing worth counting. */
 const OVERLAP_REACH = 8;
 const LOG_LYMAN_ALPHA = Math.log(lineByName('Lyman-alpha 1216').wavelengthVacuum);
-
-/** A redshift worth a joint fit. */
-export interface Suspect {
-  logScale: number;
-  sigmaKms: number;
-  kind: SuspectKind;
-  /** Log evidence against "no lines", from the filters alone. */
-  score: number;
-}
 
 /** A family's lines as numbers. */
 interface FamilyLines {
@@ -124,12 +113,11 @@ function templateGain(): number {
 export function shortlist(
   bank: FilterBank,
   peaks: readonly ScanPeak[],
-  bankKind: 'narrow' | 'broad',
   relativeResolution: number,
   logNoiseFlux: number,
   limit: number,
 ): Suspect[] {
-  const families = LINE_FAMILIES.filter((family) => (family.kind === 'broad') === (bankKind === 'broad'));
+  const families = LINE_FAMILIES.filter((family) => family.kind !== 'broad');
   const suspects: Suspect[] = [];
   for (const peak of peaks) {
     const trials: { family: LineFamily; gain: number }[] = [];
@@ -142,7 +130,8 @@ export function shortlist(
     const best = new Map<SuspectKind, number>();
     for (const { family } of trials.slice(0, 2)) {
       readFilters(bank, peak.filter, family, peak.logScale, relativeResolution);
-      const score = Math.log(family.weight) + familyEvidence(seen.likelihood, seen.model, logNoiseFlux).logEvidence;
+      const score =
+        Math.log(family.weight) + familyEvidence(seen.likelihood, seen.model, openReference(logNoiseFlux)).logEvidence;
       best.set(family.kind, Math.max(score, best.get(family.kind) ?? -Infinity));
     }
     for (const [kind, score] of best) {

@@ -1,0 +1,42 @@
+import type { FittedCandidate } from '../candidate-fit';
+import type { QuasarLikelihood } from './quasar-likelihood';
+
+/** Offsets in ln(1+z) and velocity sigmas at which a fitted redshift is weighed again, km/s. */
+const OFFSETS = [0, -0.003, 0.003];
+const SIGMAS_KMS = [1000, 1800, 3200];
+/**
+ * Log likelihood that broad shapes may bring before they are taken with a grain of salt: blends, iron, absorption and
+ * skew make two descriptions of one quasar differ by more than noise allows.
+ */
+const INFORMATION = 300;
+
+/**
+ * Makes the evidences of the broad-line candidates compare: each joint fit sees the pixels around its own lines alone, so
+ * that a redshift which leaves a strong line unexplained would not pay for it. The best of them keeps its evidence
+ * against "no lines"; the others stand behind it by what the whole spectrum says, narrow lines and priors added.
+ *
+ * @returns the log evidence that another description of the same broad shapes deserves, given its own against none of
+ * them: a quasar's lines and a star's bands are taken on the same footing
+ */
+export function compareQuasars(
+  candidates: readonly FittedCandidate[],
+  weigh: QuasarLikelihood,
+): (logEvidence: number) => number {
+  const broad = candidates.filter((candidate) => candidate.kind === 'broad');
+  if (broad.length === 0) return (logEvidence) => logEvidence;
+  const whole = broad.map(({ fit }) =>
+    Math.max(
+      ...OFFSETS.flatMap((offset) => SIGMAS_KMS.map((sigma) => weigh(fit.logScale + offset, sigma).logEvidence)),
+    ),
+  );
+  const most = Math.max(...whole);
+  const temper = Math.sqrt(1 + Math.max(0, most) / INFORMATION);
+  const best = broad[whole.indexOf(most)];
+  const anchor = Math.min(best.broadEvidence, most / temper);
+  broad.forEach((candidate, i) => {
+    candidate.ownEvidence += anchor - candidate.broadEvidence - (most - whole[i]) / temper;
+    candidate.broadEvidence = anchor - (most - whole[i]) / temper;
+    candidate.logEvidence = candidate.ownEvidence;
+  });
+  return (logEvidence) => Math.min(logEvidence, anchor + (logEvidence - most) / temper);
+}

@@ -1,0 +1,247 @@
+import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
+import { familyEvidence } from '../evidence';
+import { choleskyInPlace, choleskySolve } from '../fit/solve';
+import type { CoarseSpectrum } from './coarse-spectrum';
+import { QUASAR_FEATURES } from './composite';
+
+/** Distance of the continuum's knots in ln(wavelength): 10,500 km/s, so that it cannot follow most broad lines. */
+const KNOT_STEP = 0.035;
+/** Standard deviations of the continuum's values about the running level, and of their second differences. */
+const VALUE_SIGMA = 0.5;
+const BEND_SIGMA = 0.15;
+/** How well the mean transmission of the forest is known, and how far single bins of it scatter, as shares of what it takes. */
+const FOREST_SIGMA = 0.3;
+const FOREST_SCATTER = 0.35;
+const LYMAN_ALPHA = 1215.67;
+const LYMAN_LIMIT = 911.75;
+/** Equivalent widths of one quasar are larger or smaller than the composite's together, scatter in ln. */
+const STRENGTH_SIGMA = 0.4;
+const REACH = 3.5;
+/** Wings of a broad line: share of the flux, and width against the core's. */
+const WING_SHARE = 0.3;
+const WING_WIDTH = 2;
+
+/** How well a quasar at one redshift describes the whole spectrum. */
+export interface QuasarFit {
+  logScale: number;
+  sigmaKms: number;
+  /** Log evidence against the smooth continuum without lines. */
+  logEvidence: number;
+}
+
+/** Weighs a quasar at ln(1+z) with a velocity sigma of its broad lines, km/s. */
+export type QuasarLikelihood = (logScale: number, sigmaKms: number) => QuasarFit;
+
+/**
+ * Likelihood of the whole spectrum as a quasar's: a smooth continuum with a Gaussian prior, the mean absorption of the
+ * forest blueward of Lyman-alpha, and every broad feature of the composite with a log-normal prior on its equivalent
+ * width. Continuum and forest are integrated exactly (they are linear), the features as in `familyEvidence`. All redshifts
+ * are weighed on the same pixels against the same continuum without lines, so that they compare, whichever lines they ask for.
+ *
+ * Source of the forest's mean transmission: Meiksin (2006, MNRAS 365, 807), see `breakLogRatio`.
+ */
+export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
+  const { count: n, logWavelength, flux, level } = coarse;
+  const start = logWavelength[0];
+  const knots = Math.ceil((logWavelength[n - 1] - start) / KNOT_STEP) + 4;
+  const size = knots + 1;
+  const basis = new Float64Array(4 * n);
+  const firstKnot = new Int32Array(n);
+  for (let i = 0; i < n; i++) {
+    const x = (logWavelength[i] - start) / KNOT_STEP;
+    const k = Math.min(knots - 4, Math.floor(x));
+    firstKnot[i] = k;
+    cubicBasis(x - k, level[i], basis, 4 * i);
+  }
+  const inverse = Float64Array.from(coarse.variance, (variance) => 1 / variance);
+  const prior = priorPrecision(size, knots);
+
+  /** Normal equations of the continuum, with the forest's step as the last unknown; returns ln Z without lines. */
+  function setUp({ weight, step, matrix, target, used }: Continuum): number {
+    matrix.set(prior);
+    target.fill(0);
+    for (let k = 0; k < knots; k++) target[k] = 1 / VALUE_SIGMA ** 2;
+    let log = -0.5 * (knots / VALUE_SIGMA ** 2);
+    if (step) {
+      target[knots] = 1 / FOREST_SIGMA ** 2;
+      log -= 0.5 / FOREST_SIGMA ** 2 + Math.log(FOREST_SIGMA);
+    }
+    for (let i = 0; i < n; i++) {
+      const w = weight[i];
+      const k = firstKnot[i];
+      log += 0.5 * Math.log(w) - 0.5 * w * flux[i] * flux[i];
+      for (let a = 0; a < 4; a++) {
+        const wa = w * basis[4 * i + a];
+        target[k + a] += wa * flux[i];
+        for (let b = 0; b <= a; b++) matrix[(k + a) * size + k + b] += wa * basis[4 * i + b];
+      }
+      if (!step || step[i] === 0) continue;
+      const ws = w * step[i];
+      target[knots] += ws * flux[i];
+      for (let a = 0; a < 4; a++) matrix[knots * size + k + a] += ws * basis[4 * i + a];
+      matrix[knots * size + knots] += ws * step[i];
+    }
+    if (!choleskyInPlace(matrix, used, size)) return -Infinity;
+    for (let k = 0; k < used; k++) log -= Math.log(matrix[k * size + k]);
+    const right = target.slice(0, used);
+    choleskySolve(matrix, right, used, size);
+    for (let k = 0; k < used; k++) log += 0.5 * right[k] * target[k];
+    return log;
+  }
+
+  const continuumOf = (weight: Float64Array, step: Float64Array | null): Continuum => ({
+    weight,
+    step,
+    basis,
+    firstKnot,
+    matrix: new Float64Array(size * size),
+    target: new Float64Array(size),
+    used: step ? size : knots,
+    size,
+  });
+  const plain = continuumOf(inverse, null);
+  const nothing = setUp(plain);
+  const own = continuumOf(new Float64Array(n), new Float64Array(n));
+  let lastForest = NaN;
+  let forestLog = 0;
+
+  /** Counts the forest of one redshift as a step of the continuum and as noise. */
+  function growForest(logScale: number): void {
+    const taken = 1 - Math.exp(-0.0036 * Math.exp(logScale) ** 3.46);
+    for (let i = 0; i < n; i++) {
+      const rest = Math.exp(logWavelength[i] - logScale);
+      const lost = rest >= LYMAN_ALPHA ? 0 : rest > LYMAN_LIMIT ? taken : Math.max(taken, 0.9);
+      own.step![i] = -lost * level[i];
+      own.weight[i] = 1 / (coarse.variance[i] + (FOREST_SCATTER * lost * level[i]) ** 2);
+    }
+    forestLog = setUp(own);
+    lastForest = logScale;
+  }
+
+  return function weigh(logScale: number, sigmaKms: number): QuasarFit {
+    const forest = Math.log(LYMAN_ALPHA) + logScale > start + 0.005;
+    if (forest && lastForest !== logScale) growForest(logScale);
+    const lines = evidenceOfLines(coarse, forest ? own : plain, logScale, sigmaKms);
+    return { logScale, sigmaKms, logEvidence: (forest ? forestLog - nothing : 0) + lines };
+  };
+}
+
+/** The continuum's normal equations, solved. */
+interface Continuum {
+  weight: Float64Array;
+  step: Float64Array | null;
+  basis: Float64Array;
+  firstKnot: Int32Array;
+  /** Cholesky factor, row-major with stride `size`; the forest's step is the last unknown. */
+  matrix: Float64Array;
+  target: Float64Array;
+  used: number;
+  size: number;
+}
+
+function evidenceOfLines(coarse: CoarseSpectrum, continuum: Continuum, logScale: number, sigmaKms: number): number {
+  const { count: n, logWavelength, flux, level } = coarse;
+  const { weight, step, basis, firstKnot, matrix, target, used, size } = continuum;
+  const columns: { from: number; values: Float64Array; solved: Float64Array }[] = [];
+  const logRatio: number[] = [];
+  const scatter: number[] = [];
+  const right: number[] = [];
+  const solution = target.slice(0, used);
+  choleskySolve(matrix, solution, used, size);
+  for (const feature of QUASAR_FEATURES) {
+    const sigma = (feature.sigmaKms ?? sigmaKms) / SPEED_OF_LIGHT_KMS;
+    const shift = logScale + (feature.shiftKms ?? 0) / SPEED_OF_LIGHT_KMS;
+    const centres = feature.members.map(([rest]) => Math.log(rest) + shift);
+    const low = Math.min(...centres);
+    const high = Math.max(...centres);
+    if (high + sigma < logWavelength[0] || low - sigma > logWavelength[n - 1]) continue;
+    const from = firstAt(logWavelength, low - REACH * sigma);
+    const to = firstAt(logWavelength, high + REACH * sigma);
+    if (to - from < 3) continue;
+    const values = new Float64Array(to - from);
+    feature.members.forEach(([rest, share], m) => {
+      const middle = level[Math.min(n - 1, firstAt(logWavelength, centres[m]))];
+      const height = (share * middle) / (rest * sigma * 2.5066);
+      for (let i = from; i < to; i++) {
+        const t = (logWavelength[i] - centres[m]) / sigma;
+        const wide = feature.sigmaKms ? 0 : (WING_SHARE / WING_WIDTH) * Math.exp((-0.5 * t * t) / WING_WIDTH ** 2);
+        values[i - from] += height * ((feature.sigmaKms ? 1 : 1 - WING_SHARE) * Math.exp(-0.5 * t * t) + wide);
+      }
+    });
+    const cross = new Float64Array(used);
+    let rightValue = 0;
+    for (let i = from; i < to; i++) {
+      const wv = weight[i] * values[i - from];
+      rightValue += wv * flux[i];
+      for (let a = 0; a < 4; a++) cross[firstKnot[i] + a] += wv * basis[4 * i + a];
+      if (step) cross[used - 1] += wv * step[i];
+    }
+    for (let k = 0; k < used; k++) rightValue -= cross[k] * solution[k];
+    // Half of the solution is enough: the inner products of L^-1 B are those of B^T (L L^T)^-1 B.
+    for (let i = 0; i < used; i++) {
+      let sum = cross[i];
+      for (let k = 0; k < i; k++) sum -= matrix[i * size + k] * cross[k];
+      cross[i] = sum / matrix[i * size + i];
+    }
+    columns.push({ from, values, solved: cross });
+    logRatio.push(Math.log(feature.equivalentWidth));
+    scatter.push(feature.scatter);
+    right.push(rightValue);
+  }
+  const m = columns.length;
+  if (m === 0) return -Infinity;
+  const gram = new Float64Array(m * m);
+  for (let a = 0; a < m; a++) {
+    for (let b = 0; b <= a; b++) {
+      const p = columns[a];
+      const q = columns[b];
+      let sum = 0;
+      const to = Math.min(p.from + p.values.length, q.from + q.values.length);
+      for (let i = Math.max(p.from, q.from); i < to; i++)
+        sum += weight[i] * p.values[i - p.from] * q.values[i - q.from];
+      for (let k = 0; k < used; k++) sum -= p.solved[k] * q.solved[k];
+      gram[a * m + b] = sum;
+      gram[b * m + a] = sum;
+    }
+    gram[a * m + a] = Math.max(gram[a * m + a], 0) * (1 + 1e-6) + 1e-9;
+  }
+  return familyEvidence(
+    { count: m, gram, right: Float64Array.from(right) },
+    { logRatio: Float64Array.from(logRatio), scatter: Float64Array.from(scatter) },
+    { mean: 0, sigma: STRENGTH_SIGMA },
+  ).logEvidence;
+}
+
+/** Values of the four cubic B-splines that reach over a knot interval, times `scale`. */
+function cubicBasis(t: number, scale: number, into: Float64Array, at: number): void {
+  const s = scale / 6;
+  into[at] = s * (1 - t) ** 3;
+  into[at + 1] = s * (3 * t ** 3 - 6 * t ** 2 + 4);
+  into[at + 2] = s * (-3 * t ** 3 + 3 * t ** 2 + 3 * t + 1);
+  into[at + 3] = s * t ** 3;
+}
+
+/** Prior precision of the continuum, lower triangle: values about 1, second differences about 0; and of the forest's step. */
+function priorPrecision(size: number, knots: number): Float64Array {
+  const matrix = new Float64Array(size * size);
+  for (let k = 0; k < knots; k++) matrix[k * size + k] += 1 / VALUE_SIGMA ** 2;
+  const bend = [1, -2, 1];
+  for (let k = 0; k + 2 < knots; k++) {
+    for (let a = 0; a < 3; a++) {
+      for (let b = 0; b <= a; b++) matrix[(k + a) * size + k + b] += (bend[a] * bend[b]) / BEND_SIGMA ** 2;
+    }
+  }
+  matrix[knots * size + knots] = 1 / FOREST_SIGMA ** 2;
+  return matrix;
+}
+
+function firstAt(values: Float64Array, x: number): number {
+  let low = 0;
+  let high = values.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (values[middle] < x) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
