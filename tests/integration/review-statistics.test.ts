@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '$lib/server/auth/permissions';
 import { namedVerdicts } from '$lib/server/database/queries/looks';
+import { readQuestion } from '$lib/server/review/read-question';
 import { readStatistics } from '$lib/server/review/read-statistics';
 import { recordRuling } from '$lib/server/review/record-ruling';
 import { recordVerdict } from '$lib/server/review/record-verdict';
@@ -25,6 +26,7 @@ describe('readStatistics', () => {
     await recordVerdict(other, ids[2], second);
     await recordVerdict(other, ids[3], nothing);
     // Seen the other's verdict by now: their agreeing is no blind look.
+    await readQuestion(other, ids[3]);
     await recordVerdict(other, ids[3], first);
     const third = await person('Tia Third', 'scientist');
     const [a] = await namedVerdicts(ids[2]);

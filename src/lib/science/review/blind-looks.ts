@@ -12,12 +12,15 @@ export interface LookGiven extends RedshiftVerdict {
   word: number | null;
   /** Time of the look, seconds; null where it is not known. */
   seconds: number | null;
+  /** Whether they had been shown something of others' verdicts by then; null where that was not kept. */
+  seenOthers: boolean | null;
 }
 
 /**
- * Each person's verdict on each spectrum as it was before they could see anyone else's: verdicts of others show once one's own is given, so
- * what was changed after both were there is no blind look. Of what came before, the last word counts; where that had been taken back, the
- * next one, which was blind again.
+ * Each person's verdict on each spectrum as it was before they had seen anything of anyone else's. Of what came before, the last word
+ * counts; one that was taken back counts as none. Where what they had seen was not kept, it is inferred: verdicts of others show once one's
+ * own is given, so what was changed after both were there is no blind look; where the last word had been taken back by then, the next one
+ * was blind again.
  *
  * @param rows all rows in the order of time
  * @param ruled `spectrumId userId` of those who ruled on a spectrum: they saw the verdicts and are left out there
@@ -46,9 +49,10 @@ export function blindLooks(rows: readonly LookGiven[], ruled: ReadonlySet<string
 
 /** One person's blind look among their rows; `others` is the first row of anyone else. */
 function blindLook(own: readonly LookGiven[], others: string | null): LookGiven | null {
-  const blind = others === null ? own : own.filter(({ id }) => id < others);
+  const blind = own.filter(({ id, seenOthers }) => !(seenOthers ?? (others !== null && id >= others)));
   const last = blind.at(-1);
   if (last && !last.withdrawn) return last;
   // Nothing of theirs stood when the other's came: the next they gave was given without seeing it.
-  return own.find(({ id, withdrawn }) => !withdrawn && (!last || id > last.id)) ?? null;
+  const next = own.find(({ id, withdrawn }) => !withdrawn && (!last || id > last.id));
+  return next?.seenOthers === null ? next : null;
 }

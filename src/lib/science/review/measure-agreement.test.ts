@@ -12,6 +12,7 @@ const look = (spectrumId: string, userId: string, redshift: number | null, word:
   withdrawn: false,
   word,
   seconds: null,
+  seenOthers: null,
 });
 
 describe('measureAgreement', () => {

@@ -1,43 +1,58 @@
 import { describe, expect, it } from 'vitest';
-import { answerEntropyBits, orderQueue, worthOfALook, type Looked } from './worth-of-a-look';
+import { orderQueue, priorityShares, WORTH_WEIGHTS, worthOfALook, type Looked } from './worth-of-a-look';
 
 const looked = (more: Partial<Looked>): Looked => ({
-  candidates: [0.9, 0.1],
-  rivals: [],
+  entropyBits: 0.5,
   conflict: false,
-  priority: 0,
+  priorityShare: 0,
   ageDays: 0,
   ...more,
 });
 
-describe('answerEntropyBits', () => {
-  it('has the values of the textbook: a fair coin one bit, a fair die log2 6, certainty none', () => {
-    expect(answerEntropyBits([0.5, 0.5], [])).toBeCloseTo(1, 12);
-    expect(answerEntropyBits([1 / 6, 1 / 6, 1 / 6], [1 / 6, 1 / 6, 1 / 6])).toBeCloseTo(Math.log2(6), 12);
-    expect(answerEntropyBits([1], [0, 0, 0])).toBe(0);
+describe('worthOfALook', () => {
+  it('is the sum that the weights name', () => {
+    expect(worthOfALook(looked({}))).toBe(0.5);
+    expect(worthOfALook(looked({ conflict: true, priorityShare: 0.5, ageDays: 10 }))).toBeCloseTo(0.5 + 1 + 0.75 + 0.1);
   });
 
-  it('is 1.75 bits for 1/2, 1/4, 1/8, 1/8 (Cover & Thomas 2006, example 2.1.2)', () => {
-    expect(answerEntropyBits([0.5, 0.25], [0.125, 0.125])).toBeCloseTo(1.75, 12);
+  it('stops counting age, and takes none from a clock that runs behind', () => {
+    const longest = worthOfALook(looked({ ageDays: WORTH_WEIGHTS.mostAgeDays }));
+    expect(worthOfALook(looked({ ageDays: 4000 }))).toBe(longest);
+    expect(worthOfALook(looked({ ageDays: -3 }))).toBe(0.5);
   });
 
-  it('counts what is left of the sum as one more answer', () => {
-    expect(answerEntropyBits([0.5], [])).toBeCloseTo(1, 12);
-    expect(answerEntropyBits([], [])).toBe(0);
+  it('is the same for all answers that must not be told', () => {
+    expect(worthOfALook(looked({ entropyBits: null }))).toBe(WORTH_WEIGHTS.unknownEntropyBits);
   });
 });
 
 describe('orderQueue', () => {
-  it('puts priority before doubt, and doubt before certainty', () => {
-    const sure = looked({ candidates: [1] });
-    const doubtful = looked({ candidates: [0.5, 0.5] });
-    const urgent = looked({ candidates: [1], priority: 1 });
-    expect(orderQueue([sure, doubtful, urgent])).toEqual([urgent, doubtful, sure]);
+  it('puts doubt before certainty, a conflict before doubt of half a bit, and the foremost target before both', () => {
+    const sure = looked({ entropyBits: 0 });
+    const doubtful = looked({});
+    const conflict = looked({ entropyBits: 0, conflict: true });
+    const foremost = looked({ entropyBits: 0, priorityShare: 1 });
+    const queue = [sure, doubtful, conflict, foremost];
+    expect(orderQueue(queue)).toEqual([foremost, conflict, doubtful, sure]);
+    expect(queue[0]).toBe(sure);
   });
 
-  it('raises conflicts, and of equals the one that has waited', () => {
-    expect(worthOfALook(looked({ conflict: true }))).toBeGreaterThan(worthOfALook(looked({})) + 0.9);
-    const old = looked({ ageDays: 3 });
-    expect(orderQueue([looked({}), old])[0]).toBe(old);
+  it('of equals takes the one that has waited, else the order given', () => {
+    const [a, b, old] = [looked({}), looked({}), looked({ ageDays: 3 })];
+    const ordered = orderQueue([a, b, old]);
+    expect(ordered[0]).toBe(old);
+    expect([ordered[1] === a, ordered[2] === b]).toEqual([true, true]);
+  });
+});
+
+describe('priorityShares', () => {
+  it('counts order alone, on any scale', () => {
+    expect([...priorityShares([100, 1, 2, 2])]).toEqual([
+      [1, 0],
+      [2, 0.5],
+      [100, 1],
+    ]);
+    expect([...priorityShares([7])]).toEqual([[7, 1]]);
+    expect(priorityShares([]).size).toBe(0);
   });
 });

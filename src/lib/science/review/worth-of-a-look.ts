@@ -1,46 +1,56 @@
-/** What the order of the review queue is made from. */
+/** What the worth of a look is made from. */
 export interface Looked {
-  /** Calibrated probabilities of the candidates. */
-  candidates: readonly number[];
-  /** Probabilities of the rivals: nothing there, star at rest, passive galaxy. */
-  rivals: readonly number[];
+  /** Shannon entropy of the calibrated answer, bits; null where the reader may not know the answer. */
+  entropyBits: number | null;
   /** Another spectrum of the same target says something else. */
   conflict: boolean;
-  /** Set by the programme; 0 is usual. */
-  priority: number;
-  /** Days since the spectrum was measured. */
+  /** Share of the programme's priorities that lie below the target's, 0 to 1; 0 where it has none. */
+  priorityShare: number;
+  /** Whole days since the spectrum came in. */
   ageDays: number;
 }
 
 /**
- * Shannon entropy, bits, of an answer over its candidates and rivals; what is left of the sum counts as one more answer. 0 where one answer
- * has it all, or there is none.
+ * All weights of the queue's order, in bits, in one place:
  *
- * Source: Shannon (1948, Bell System Technical Journal 27, 379), section 6.
+ *     worth = entropy + conflictBits [conflict] + priorityBits x priorityShare + bitsADay x min(age, mostAgeDays)
  *
- * @example
- * answerEntropyBits([0.5, 0.5], []); // 1
+ * The entropy is what the look can settle. The rest is our choice: a conflict leaves at least as much open as two answers
+ * that are equally likely; the programme's foremost target counts as much again and a half, so that it comes before every
+ * doubtful spectrum of two rival answers; waiting mostly breaks ties, so that nothing waits for ever behind its equals.
  */
-export function answerEntropyBits(candidates: readonly number[], rivals: readonly number[]): number {
-  const given = [...candidates, ...rivals].filter((p) => p > 0);
-  if (given.length === 0) return 0;
-  const sum = given.reduce((total, p) => total + p, 0);
-  const all = sum < 1 ? [...given, 1 - sum] : given.map((p) => p / sum);
-  return all.reduce((bits, p) => (p > 0 ? bits - p * Math.log2(p) : bits), 0);
+export const WORTH_WEIGHTS = {
+  conflictBits: 1,
+  priorityBits: 1.5,
+  bitsADay: 0.01,
+  mostAgeDays: 30,
+  /** Stands in for an entropy that must not be told, the same for all: its place in the queue says nothing. */
+  unknownEntropyBits: 1,
+} as const;
+
+/** Worth of a look, bits (`WORTH_WEIGHTS`). */
+export function worthOfALook({ entropyBits, conflict, priorityShare, ageDays }: Looked): number {
+  const { conflictBits, priorityBits, bitsADay, mostAgeDays, unknownEntropyBits } = WORTH_WEIGHTS;
+  const waited = bitsADay * Math.min(Math.max(0, ageDays), mostAgeDays);
+  return (entropyBits ?? unknownEntropyBits) + (conflict ? conflictBits : 0) + priorityBits * priorityShare + waited;
 }
 
-/** A conflict leaves at least as much open as two answers that are equally likely. */
-const CONFLICT_BITS = 1;
-/** Waiting breaks ties: a day counts a thousandth of a bit, so that nothing waits for ever behind its equals. */
-const BITS_A_DAY = 0.001;
-
-/** Worth of a look, bits; priority goes before it. */
-export function worthOfALook(looked: Looked): number {
-  const open = answerEntropyBits(looked.candidates, looked.rivals);
-  return open + (looked.conflict ? CONFLICT_BITS : 0) + BITS_A_DAY * looked.ageDays;
-}
-
-/** Queue in the order of the worth of a look: priority first, then worth, then the order given. Does not change its input. */
+/** Queue in the order of the worth of a look, greatest first; equals keep the order given. Does not change its input. */
 export function orderQueue<T extends Looked>(queue: readonly T[]): T[] {
-  return [...queue].sort((a, b) => b.priority - a.priority || worthOfALook(b) - worthOfALook(a));
+  return queue
+    .map((entry) => ({ entry, worth: worthOfALook(entry) }))
+    .sort((a, b) => b.worth - a.worth)
+    .map(({ entry }) => entry);
+}
+
+/**
+ * Share of a programme's distinct priorities that lie below each: priorities are of any scale, so only their order counts.
+ * The greatest of several gets 1; a single one too, since naming it at all puts it before the rest.
+ *
+ * @param priorities those of a programme's targets, in any order
+ * @returns by priority
+ */
+export function priorityShares(priorities: readonly number[]): Map<number, number> {
+  const sorted = [...new Set(priorities)].sort((a, b) => a - b);
+  return new Map(sorted.map((priority, i) => [priority, sorted.length === 1 ? 1 : i / (sorted.length - 1)]));
 }

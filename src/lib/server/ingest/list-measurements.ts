@@ -2,9 +2,11 @@ import { z } from 'zod';
 import { decodeCursor, encodeCursor } from '$lib/api/cursor';
 import type { FullAnswer, NightMeasurement } from '$lib/domain/night';
 import { Refusal } from '$lib/domain/refusal';
+import { hiddenAnswers } from '../auth/hidden-answer';
 import { mayByRole, permit, type Actor } from '../auth/permissions';
 import { findNight } from '../database/queries/nights';
 import { nightMeasurementRows } from '../database/queries/night-measurements';
+import { noteSights } from '../database/queries/sights';
 
 export const listMeasurementsSchema = z.object({
   limit: z.coerce.number().int().min(1).max(5000).default(500),
@@ -25,7 +27,18 @@ export async function listMeasurements(
   const { userId } = reader;
   const judges = mayByRole(reader, 'spectrum.judge', night.programmeId);
   const after = cursor ? String(decodeCursor(cursor, 1)[0]) : null;
-  const rows = await nightMeasurementRows(nightId, limit + 1, after, { userId, judges, full: detail === 'full' });
+  const hidden = await hiddenAnswers(reader, night.programmeId);
+  const rows = await nightMeasurementRows(nightId, limit + 1, after, {
+    userId,
+    judges,
+    full: detail === 'full',
+    hidden,
+  });
   const page = rows.slice(0, limit);
+  const told = judges ? page.filter(({ verdict }) => verdict && !verdict.own) : [];
+  await noteSights(
+    userId,
+    told.map(({ spectrum }) => spectrum),
+  );
   return { rows: page, next: rows.length > limit ? encodeCursor([page[page.length - 1].spectrum]) : null };
 }

@@ -3,6 +3,7 @@ import type { NightReport } from '$lib/domain/night-report';
 import type { Site } from '$lib/domain/site';
 import { darkHours, noonToNoon, type Span } from '$lib/science/derive/dark-hours';
 import { summariseSkyCheck } from '$lib/science/derive/summarise-sky-check';
+import { hiddenAnswers } from '../auth/hidden-answer';
 import type { Actor } from '../auth/permissions';
 import { nightMeasurementRows } from '../database/queries/night-measurements';
 import { exposureSpan, instrumentOfNight, reportRows } from '../database/queries/night-report';
@@ -18,13 +19,16 @@ const MOST_SPECTRA = 100_000;
  */
 export async function readReport(actor: Actor | null, nightId: string, nowMs: number): Promise<NightReport> {
   const night = await readNight(actor, nightId);
-  const reader = { userId: actor!.userId, judges: night.mayJudge, full: false };
+  const hidden = await hiddenAnswers(actor!, night.programme.id);
+  const reader = { userId: actor!.userId, judges: night.mayJudge, full: false, hidden };
   const [rows, reports, span, instrument] = await Promise.all([
     nightMeasurementRows(nightId, MOST_SPECTRA, null, reader),
     reportRows(nightId),
     exposureSpan(nightId),
     instrumentOfNight(nightId),
   ]);
+  // What a hidden answer would ask for tells the answer.
+  const withoutHidden = reports.filter(({ spectrum }) => !hidden(spectrum));
   const site = instrument?.site ?? null;
   const dark = site && darkHours(night.civilDate, site);
   const counted = countedFrom(night.civilDate, site, dark, span.lastEnds, nowMs);
@@ -46,7 +50,7 @@ export async function readReport(actor: Actor | null, nightId: string, nowMs: nu
     sky: summariseSkyCheck(checks),
     skyChecks: checks,
     skyWithout: measured.length - checks.length,
-    again: pointAgain(rows, reports, { site, dark, fromMs: counted?.fromMs ?? null }),
+    again: pointAgain(rows, withoutHidden, { site, dark, fromMs: counted?.fromMs ?? null }),
   };
 }
 

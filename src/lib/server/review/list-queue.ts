@@ -1,92 +1,98 @@
-import { z } from 'zod';
-import { CONFIDENCE_WORDS } from '$lib/domain/confidence';
 import { programmesWhere, type Actor } from '../auth/permissions';
-import { standingAssignments } from '../database/queries/assignments';
-import { standingLooks } from '../database/queries/looks';
-import { queueRows } from '../database/queries/review-queue';
+import { standingAssignments, type AssignmentRow } from '../database/queries/assignments';
+import { standingLooks, type LookRow } from '../database/queries/looks';
 import { standingRulings } from '../database/queries/rulings';
+import { explainPlace } from './explain-place';
+import { orderPlaces, type PlacedRow } from './order-places';
+import { isShown, type QueueEntry, type QueueFilter } from './queue-filter';
+import { noteSights } from '../database/queries/sights';
 import { sightOf } from './sees-verdicts';
 
-export const QUEUE_VIEWS = ['waiting', 'mine', 'second', 'open', 'all'] as const;
-export type QueueView = (typeof QUEUE_VIEWS)[number];
+type Ruling = Awaited<ReturnType<typeof standingRulings>>[number];
 
-export const queueFilterSchema = z.object({
-  /** One night only. */
-  night: z.uuid().optional(),
-  confidence: z.enum(CONFIDENCE_WORDS).optional(),
-  /** What is shown: without a verdict of mine, passed on to me, waiting for a second look, open questions, or all. */
-  show: z.enum(QUEUE_VIEWS).default('waiting'),
-});
-export type QueueFilter = z.output<typeof queueFilterSchema>;
-
-export interface QueueEntry {
-  id: string;
-  name: string;
-  confidence: string;
-  redshift: number | null;
-  probability: number;
-  entropyBits: number;
-  /** The asker has given a verdict that stands. */
-  judged: boolean;
-  /** Verdicts differ. Known to those who gave one or may rule. */
-  open: boolean;
-  /** The asker may rule on it. */
-  mayRule: boolean;
-  /** Someone has looked, the programme asks for more looks, and the asker has given none. */
-  second: boolean;
-  /** Passed on to the asker, who has given no verdict since. */
-  mine: boolean;
-  /** Ever passed on to the asker, done or not. */
-  passedToMe: boolean;
-  /** The asker passed it on to someone who has it still. */
-  passedOn: boolean;
-  nightId: string;
-  civilDate: string;
-}
-
-/** Whether an entry belongs to a view of the queue. */
-export function isShown(entry: QueueEntry, show: QueueView): boolean {
-  if (show === 'waiting') return !entry.judged && !entry.passedOn;
-  return show === 'all' || entry[show];
+/** The whole queue of a filter, with what was said of it; only `list-queue` and `read-waiting` make what they send from it. */
+export interface GatheredQueue {
+  rows: PlacedRow[];
+  verdicts: Map<string, LookRow[]>;
+  rulings: Map<string, Ruling>;
+  assignments: Map<string, AssignmentRow>;
 }
 
 const byId = <T extends { spectrumId: string }>(rows: readonly T[]) =>
   new Map(rows.map((row) => [row.spectrumId, row]));
 
-/**
- * Measured spectra in the order of the worth of a look: the entropy of the calibrated answer, largest first. The order
- * does not change with verdicts, so that places in the queue stand still while one works through it. Says nothing of what
- * others' verdicts are.
- */
-export async function listQueue(actor: Actor | null, filter: QueueFilter): Promise<QueueEntry[]> {
-  const programmeIds = programmesWhere(actor, 'spectrum.read');
-  const asker = actor!;
-  const wanted = { ...filter, waitingOnly: filter.show === 'waiting' };
-  const [rows, looks, rulingRows, assigned] = await Promise.all([
-    queueRows(programmeIds, asker.userId, wanted),
+async function gatherQueue(
+  asker: Actor,
+  programmeIds: string[],
+  filter: Pick<QueueFilter, 'night' | 'confidence'>,
+): Promise<GatheredQueue> {
+  const [rows, looks, rulings, assigned] = await Promise.all([
+    orderPlaces(asker, programmeIds, filter),
     standingLooks(programmeIds),
     standingRulings(programmeIds),
     standingAssignments(programmeIds),
   ]);
-  const verdicts = new Map<string, typeof looks>();
-  for (const look of looks) verdicts.set(look.spectrumId, [...(verdicts.get(look.spectrumId) ?? []), look]);
-  const [rulings, assignments] = [byId(rulingRows), byId(assigned)];
-  return rows
-    .map(({ programmeId, wanted: looksWanted, judged, ...row }) => {
-      const given = verdicts.get(row.id) ?? [];
-      const sight = sightOf(asker, programmeId, given, rulings.get(row.id) ?? null);
-      const assignment = assignments.get(row.id);
-      const passedToMe = assignment?.userId === asker.userId;
-      return {
-        ...row,
-        judged: !!judged,
-        open: sight.sees && sight.standing === 'open',
-        mayRule: sight.mayRule,
-        second: !judged && !rulings.has(row.id) && given.length > 0 && given.length < Number(looksWanted),
-        mine: passedToMe && !assignment.done,
-        passedToMe,
-        passedOn: !!assignment && !passedToMe && !assignment.done && assignment.assignedBy === asker.userId,
-      };
-    })
-    .filter((entry) => isShown(entry, filter.show));
+  const verdicts = new Map<string, LookRow[]>();
+  for (const look of looks) {
+    const given = verdicts.get(look.spectrumId);
+    if (given) given.push(look);
+    else verdicts.set(look.spectrumId, [look]);
+  }
+  return { rows, verdicts, rulings: byId(rulings), assignments: byId(assigned) };
+}
+
+function asEntry(row: PlacedRow, asker: Actor, { verdicts, rulings, assignments }: GatheredQueue): QueueEntry {
+  const { id, name, programmeId, wanted, place, hidden, nightId, civilDate } = row;
+  const given = verdicts.get(id) ?? [];
+  // Of a planted spectrum nobody sees another's verdict: its results are private.
+  const seen = Number(row.planted) ? given.filter(({ userId }) => userId === asker.userId) : given;
+  const sight = sightOf(asker, programmeId, seen, rulings.get(id) ?? null);
+  const assignment = assignments.get(id);
+  const passedToMe = assignment?.userId === asker.userId;
+  const { confidence, redshift, probability, entropyBits } = row;
+  const answer = hidden
+    ? { confidence: null, redshift: null, probability: null, entropyBits: null }
+    : { confidence, redshift, probability, entropyBits };
+  return {
+    id,
+    name,
+    ...answer,
+    hidden,
+    why: explainPlace(hidden ? place : { ...place, entropyBits }),
+    judged: !!row.judged,
+    open: sight.sees && sight.standing === 'open',
+    mayRule: sight.mayRule,
+    second: !row.judged && !rulings.has(id) && given.length > 0 && given.length < Number(wanted),
+    mine: passedToMe && !assignment.done,
+    passedToMe,
+    passedOn: !!assignment && !passedToMe && !assignment.done && assignment.assignedBy === asker.userId,
+    nightId,
+    civilDate,
+  };
+}
+
+/** The queue of a filter, every view of it, and what was gathered for it. */
+export async function readQueue(
+  actor: Actor | null,
+  filter: Pick<QueueFilter, 'night' | 'confidence'>,
+): Promise<{ entries: QueueEntry[]; gathered: GatheredQueue }> {
+  const programmeIds = programmesWhere(actor, 'spectrum.read');
+  const gathered = await gatherQueue(actor!, programmeIds, filter);
+  const entries = gathered.rows.map((row) => asEntry(row, actor!, gathered));
+  // Whoever is told that verdicts differ knows something of another's: what they say from now on is no blind look.
+  await noteSights(
+    actor!.userId,
+    entries.filter(({ open }) => open).map(({ id }) => id),
+  );
+  return { entries, gathered };
+}
+
+/**
+ * Measured spectra in the order of the worth of a look. The order does not change with verdicts, so that places in the
+ * queue stand still while one works through it. Says nothing of what others' verdicts are, nor of what the engine says
+ * where its answer is hidden from the asker.
+ */
+export async function listQueue(actor: Actor | null, filter: QueueFilter): Promise<QueueEntry[]> {
+  const { entries } = await readQueue(actor, filter);
+  return entries.filter((entry) => isShown(entry, filter.show));
 }

@@ -1,4 +1,4 @@
-import type { QueueEntry, QueueView } from './list-queue';
+import type { QueueEntry, QueueView } from './queue-filter';
 
 export interface QueuePlace {
   /** Place from 1; 0 where the spectrum is not in the filtered queue. */

@@ -6,6 +6,7 @@ import { commentsOn } from '../database/queries/comments';
 import { namedVerdicts } from '../database/queries/looks';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
 import { standingRuling } from '../database/queries/rulings';
+import { noteSights } from '../database/queries/sights';
 import { sightOf } from './sees-verdicts';
 
 /** What people have said to one another about a spectrum, as far as the reader may see it. */
@@ -40,18 +41,23 @@ export async function readExchange(actor: Actor | null, spectrumId: string): Pro
   if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
   const { programmeId } = spectrum;
   const reader = permit(actor, 'spectrum.read', programmeId);
-  const [verdicts, ruling, assignment, comments, judges] = await Promise.all([
+  const [given, ruling, assignment, comments, judges] = await Promise.all([
     namedVerdicts(spectrumId),
     standingRuling(spectrumId),
     standingAssignment(spectrumId),
     commentsOn(spectrumId),
     may(actor, 'spectrum.assign', programmeId) ? judgesOf(programmeId) : [],
   ]);
+  // Of a planted spectrum nobody sees another's verdict: its results are private.
+  const verdicts = spectrum.planted ? given.filter(({ userId }) => userId === reader.userId) : given;
   const { standing, sees, mayRule } = sightOf(reader, programmeId, verdicts, ruling);
   // A third person to an open question may still give a look of their own instead: comments wait for it.
   const open = !mayByRole(reader, 'spectrum.judge', programmeId) || (sees && !mayRule);
   const shown = comments.filter(({ shownToAll, userId }) => open || shownToAll || userId === reader.userId);
+  const told = shown.some(({ shownToAll, userId }) => !shownToAll && userId !== reader.userId);
+  const noted = assignment?.told && open && assignment.assignedBy !== reader.userId && assignment.note;
   const asked = standing === 'open' || standing === 'ruled';
+  if (told || noted || (sees && asked)) await noteSights(reader.userId, [spectrumId]);
   return {
     passedOn: assignment && !assignment.done ? sayAssignment(assignment, reader, open) : null,
     people: judges,

@@ -10,7 +10,7 @@ import { findMeasured, headOf } from './read-spectrum';
 /** The spectrum as the engine saw it, made again from the stored bytes, packed for the browser's plots. */
 export async function readPixels(actor: Actor | null, spectrumId: string): Promise<ArrayBuffer> {
   const found = await findMeasured(spectrumId);
-  permit(actor, 'spectrum.read', found.programmeId);
+  const reader = permit(actor, 'spectrum.read', found.programmeId);
   const instrument = found.instrument ?? undefined;
   const bytes = await objects().read(found.sha256);
   const isAsked = (extension: number, row: number) => extension === found.extension && row === found.rowIndex;
@@ -21,7 +21,7 @@ export async function readPixels(actor: Actor | null, spectrumId: string): Promi
   const spectrum = toSpectrum(raw, instrument);
   const { wavelength, flux, sky, lsfSigma, observerFactor, fluxUnit, variance } = spectrum;
   const error = variance.map((value) => (Number.isFinite(value) && value > 0 ? Math.sqrt(value) : NaN));
-  const { programmeName: programme, instrumentName, ...labels } = headOf(found);
+  const { programmeName: programme, instrumentName, hidden: _, ...labels } = await headOf(found, reader);
   const continuum = estimateContinuum(spectrum);
   const pixels = { wavelength, flux, error, sky, continuum, lsfSigma, observerFactor, fluxUnit };
   return encodeReviewSpectrum({ ...labels, ...pixels, programme, instrument: instrumentName });

@@ -2,10 +2,12 @@ import type { Question, QuestionRuling, QuestionVerdict } from '$lib/domain/ruli
 import { Refusal } from '$lib/domain/refusal';
 import type { Measurement } from '$lib/domain/measurement';
 import { widestVelocityKms } from '$lib/science/review/standing-decision';
+import { hiddenAnswers } from '../auth/hidden-answer';
 import { may, permit, type Actor } from '../auth/permissions';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
 import { namedVerdicts, type NamedVerdictRow } from '../database/queries/looks';
 import { standingRuling } from '../database/queries/rulings';
+import { noteSights } from '../database/queries/sights';
 import { sightOf, type Sight } from './sees-verdicts';
 
 const iso = (at: Date | string) => new Date(at).toISOString();
@@ -40,7 +42,8 @@ export async function readQuestion(actor: Actor | null, spectrumId: string): Pro
   if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
   const { programmeId, measurement, measurementId } = spectrum;
   const reader = permit(actor, 'spectrum.rule', programmeId);
-  const [rows, row] = await Promise.all([namedVerdicts(spectrumId), standingRuling(spectrumId)]);
+  const [given, row] = await Promise.all([namedVerdicts(spectrumId), standingRuling(spectrumId)]);
+  const rows = spectrum.planted ? given.filter(({ userId }) => userId === reader.userId) : given;
   const sight = sightOf(reader, programmeId, rows, row);
   if (!sight.sees || sight.standing === 'unjudged') {
     throw new Refusal(
@@ -49,6 +52,8 @@ export async function readQuestion(actor: Actor | null, spectrumId: string): Pro
       'Give your own verdict first.',
     );
   }
+  if (rows.some(({ userId }) => userId !== reader.userId)) await noteSights(reader.userId, [spectrumId]);
+  const hidden = (await hiddenAnswers(reader, programmeId))(spectrumId);
   const ruling: QuestionRuling | null = row && {
     id: row.id,
     by: row.by,
@@ -62,7 +67,11 @@ export async function readQuestion(actor: Actor | null, spectrumId: string): Pro
   };
   return {
     standing: sight.standing,
-    verdicts: rows.map((verdict) => shown(verdict, measurement, measurementId)),
+    verdicts: rows.map((verdict) => {
+      const side = shown(verdict, measurement, measurementId);
+      // Which candidate someone took tells what the engine said.
+      return hidden ? { ...side, origin: verdict.redshift === null ? 'no redshift' : 'a redshift' } : side;
+    }),
     apartKms: widestVelocityKms(rows),
     ruling,
     whyNot: whyNot(sight, may(reader, 'spectrum.rule', programmeId), ruling),

@@ -1,5 +1,6 @@
 import type { Measurement } from '$lib/domain/measurement';
 import { Refusal } from '$lib/domain/refusal';
+import { hiddenAnswers, withoutAnswer } from '../auth/hidden-answer';
 import { may, permit, type Actor } from '../auth/permissions';
 import { findReviewed, type ReviewedSpectrum } from '../database/queries/reviewed-spectrum';
 import { explainPlace } from './explain-place';
@@ -14,7 +15,10 @@ export interface ReviewHead {
   programmeName: string;
   instrumentName: string;
   exposure: string;
+  /** Without the engine's answer where it is hidden from the reader. */
   measurement: Measurement;
+  /** The reader looks without the engine's answer, until their verdict. */
+  hidden: boolean;
   verdictCount: number;
 }
 
@@ -25,19 +29,22 @@ export async function findMeasured(spectrumId: string): Promise<ReviewedSpectrum
   throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.', 'Go back to Review.');
 }
 
-/** A found spectrum as the page's head shows it. */
-export function headOf(found: ReviewedSpectrum): ReviewHead {
+/** A found spectrum as the page's head shows it to a reader. */
+export async function headOf(found: ReviewedSpectrum, reader: Actor): Promise<ReviewHead> {
   const { measurement, exposureSeconds, civilDate } = found;
+  const hidden = (await hiddenAnswers(reader, found.programmeId))(found.id);
+  const entropyBits = hidden ? null : found.entropyBits;
   return {
     id: found.id,
     name: found.name ?? found.originalName,
-    why: explainPlace(measurement, found.entropyBits),
+    why: explainPlace({ entropyBits, conflict: null, priorityShare: 0, ageDays: 0 }),
     nightId: found.nightId,
     nightLabel: `Night of ${civilDate}`,
     programmeName: found.programmeName,
     instrumentName: found.instrumentName ?? 'instrument not described',
     exposure: exposureSeconds === null ? 'exposure unknown' : `${Math.round(exposureSeconds)} s`,
-    measurement,
+    measurement: hidden ? withoutAnswer(measurement) : measurement,
+    hidden,
     verdictCount: Number(found.verdictCount),
   };
 }
@@ -48,6 +55,6 @@ export async function readSpectrum(
   spectrumId: string,
 ): Promise<{ spectrum: ReviewHead; canJudge: boolean }> {
   const found = await findMeasured(spectrumId);
-  permit(actor, 'spectrum.read', found.programmeId);
-  return { spectrum: headOf(found), canJudge: may(actor, 'spectrum.judge', found.programmeId) };
+  const reader = permit(actor, 'spectrum.read', found.programmeId);
+  return { spectrum: await headOf(found, reader), canJudge: may(actor, 'spectrum.judge', found.programmeId) };
 }

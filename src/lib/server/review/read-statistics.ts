@@ -31,9 +31,10 @@ export interface ProgrammeStatistics extends LookFigures {
 
 function asLook(row: EveryLookRow): LookGiven {
   const { id, spectrumId, userId, redshift, redshiftError, confidence, lookSeconds: seconds, kind } = row;
+  const seenOthers = row.seenOthers === null ? null : !!row.seenOthers;
   const withdrawn = kind === 'withdrawn';
   const word = confidence === null ? null : CONFIDENCE_WORDS.indexOf(confidence);
-  return { id, spectrumId, userId, redshift, redshiftError, withdrawn, word, seconds };
+  return { id, spectrumId, userId, redshift, redshiftError, withdrawn, word, seconds, seenOthers };
 }
 
 function figuresOf(looks: readonly LookGiven[], of?: string): LookFigures {

@@ -1,8 +1,11 @@
 import { Refusal } from '$lib/domain/refusal';
 import type { VerdictInput } from '$lib/domain/verdict';
+import { isDrawnFor } from '../auth/hidden-answer';
 import { permit, type Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
 import { findReviewed, type ReviewedSpectrum } from '../database/queries/reviewed-spectrum';
+import { hasJudged } from '../database/queries/ever-judged';
+import { hasSeen } from '../database/queries/sights';
 import { appendVerdict, lockSpectrum, standingVerdict, type NewVerdict } from '../database/queries/verdicts';
 
 /** The redshift a verdict stands for, from the candidate it names or as set by hand. */
@@ -47,7 +50,8 @@ export async function recordVerdict(
 ): Promise<{ verdictId: string }> {
   const spectrum = await findReviewed(spectrumId);
   if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
-  const { userId } = permit(actor, 'spectrum.judge', spectrum.programmeId);
+  const judge = permit(actor, 'spectrum.judge', spectrum.programmeId);
+  const { userId } = judge;
   if (input.flags.includes('other') && !input.comment) {
     throw new Refusal(
       'invalid',
@@ -56,13 +60,25 @@ export async function recordVerdict(
       'comment',
     );
   }
+  // Asked before the transaction, so that it waits for no second connection.
+  const drawn = await isDrawnFor(judge, spectrum.programmeId, spectrumId);
   return inTransaction(async (transaction) => {
     await lockSpectrum(spectrumId, transaction);
+    const engineHidden = drawn && !(await hasJudged(userId, spectrumId, transaction));
+    if (engineHidden && input.kind === 'candidate') {
+      throw new Refusal(
+        'conflict',
+        'The engine’s answer is hidden for this look, so there is no candidate to accept.',
+        'Set the redshift by hand, or say that there is none.',
+      );
+    }
     const before = await standingVerdict(spectrumId, userId, transaction);
     const verdict: NewVerdict = {
       ...decided(input, spectrum),
       spectrumId,
       userId,
+      engineHidden,
+      seenOthers: await hasSeen(userId, spectrumId, transaction),
       supersedes: before?.id ?? null,
       restores: null,
     };

@@ -2,6 +2,7 @@ import { Refusal } from '$lib/domain/refusal';
 import { permit, type Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
+import { hasSeen } from '../database/queries/sights';
 import {
   appendVerdict,
   findVerdict,
@@ -41,7 +42,9 @@ export async function undoVerdict(actor: Actor | null, verdictId: string): Promi
       );
     }
     const before = await verdictBefore(verdict);
-    const common = { spectrumId: spectrum.id, userId, supersedes: verdictId, lookSeconds: null };
+    const seenOthers = await hasSeen(userId, spectrum.id, transaction);
+    const given = { spectrumId: spectrum.id, userId, seenOthers, engineHidden: false };
+    const common = { ...given, supersedes: verdictId, lookSeconds: null };
     if (before) {
       const { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment } = before;
       const said = { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment };

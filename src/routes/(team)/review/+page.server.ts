@@ -1,14 +1,14 @@
 import { parseQuery } from '$lib/api/parse';
 import { guardedLoad } from '$lib/server/auth/guards';
-import { isShown, listQueue, QUEUE_VIEWS, queueFilterSchema } from '$lib/server/review/list-queue';
+import { countWaiting } from '$lib/server/review/count-waiting';
+import { readQueue } from '$lib/server/review/list-queue';
+import { isShown, QUEUE_VIEWS, queueFilterSchema } from '$lib/server/review/queue-filter';
 import type { PageServerLoadEvent } from './$types';
 
 export const load = guardedLoad('signed-in', async ({ locals, url }: PageServerLoadEvent) => {
   const filter = parseQuery(url, queueFilterSchema);
-  const everything = await listQueue(locals.actor, { ...filter, show: 'all' });
-  const views = QUEUE_VIEWS.map((view) => ({
-    view,
-    count: everything.filter((entry) => isShown(entry, view)).length,
-  }));
-  return { filter, views, queue: everything.filter((entry) => isShown(entry, filter.show)) };
+  const { entries, gathered } = await readQueue(locals.actor, filter);
+  const views = QUEUE_VIEWS.map((view) => ({ view, count: entries.filter((entry) => isShown(entry, view)).length }));
+  const queue = entries.filter((entry) => isShown(entry, filter.show));
+  return { filter, views, queue, waiting: countWaiting(gathered) };
 });

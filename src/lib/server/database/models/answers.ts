@@ -88,11 +88,15 @@ export class Verdict extends Model<InferAttributes<Verdict>, InferCreationAttrib
   declare restores: string | null;
   /** How long the person looked before giving it, seconds; null where it is not known. */
   declare lookSeconds: CreationOptional<number | null>;
+  /** The engine's answer was hidden from the person until then; null where it was given before this was kept. */
+  declare engineHidden: CreationOptional<boolean | null>;
+  /** The person had been shown something of others' verdicts on it by then; null as above. */
+  declare seenOthers: CreationOptional<boolean | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
 export function defineAnswers(sequelize: Sequelize): void {
-  const { STRING, TEXT, DATE, DOUBLE, TINYINT, UUID, JSON } = DataTypes;
+  const { STRING, TEXT, DATE, DOUBLE, TINYINT, BOOLEAN, UUID, JSON } = DataTypes;
   MeasurementRecord.init(
     {
       id: idColumn,
@@ -164,6 +168,8 @@ export function defineAnswers(sequelize: Sequelize): void {
       supersedes: UUID,
       restores: UUID,
       lookSeconds: DOUBLE,
+      engineHidden: BOOLEAN,
+      seenOthers: BOOLEAN,
       createdAt: DATE(6),
     },
     { sequelize, tableName: 'verdicts' },

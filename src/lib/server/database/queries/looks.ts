@@ -3,6 +3,7 @@ import type { Confidence } from '$lib/domain/confidence';
 import type { Flag } from '$lib/domain/flag';
 import type { VerdictKind } from '$lib/domain/verdict';
 import { database } from '../connection';
+import { NOT_PLANTED } from './planted';
 
 /** For use inside a query with verdicts as `w`: the verdict stands. */
 const STANDS = `w.kind <> 'withdrawn' AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = w.id)`;
@@ -63,15 +64,17 @@ export interface EveryLookRow {
   redshiftError: number | null;
   confidence: Confidence | null;
   lookSeconds: number | null;
+  seenOthers: number | null;
 }
 
-/** All that was ever said in a programme, verdicts taken back included, oldest first: for statistics. */
+/** All that was ever said of a programme's spectra, verdicts taken back included, oldest first: for statistics. None of planted ones. */
 export function everyLook(programmeId: string): Promise<EveryLookRow[]> {
   return database().query<EveryLookRow>(
     `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.kind, w.redshift,
-        w.redshift_error AS redshiftError, w.confidence, w.look_seconds AS lookSeconds
+        w.redshift_error AS redshiftError, w.confidence, w.look_seconds AS lookSeconds,
+        w.seen_others AS seenOthers
       FROM verdicts w JOIN spectra s ON s.id = w.spectrum_id JOIN files f ON f.id = s.file_id
-      WHERE f.programme_id = :programmeId ORDER BY w.id`,
+      WHERE f.programme_id = :programmeId AND ${NOT_PLANTED} ORDER BY w.id`,
     { replacements: { programmeId }, type: QueryTypes.SELECT },
   );
 }
@@ -82,7 +85,7 @@ export function judgedProgrammes(
 ): Promise<{ id: string; name: string; looks: number; measured: number | string }[]> {
   return database().query(
     `SELECT p.id, p.name, p.looks, (SELECT COUNT(*) FROM files f JOIN spectra s ON s.file_id = f.id
-        WHERE f.programme_id = p.id AND s.state = 'measured') AS measured
+        WHERE f.programme_id = p.id AND s.state = 'measured' AND ${NOT_PLANTED}) AS measured
       FROM programmes p WHERE p.id IN (:programmeIds) ORDER BY p.name, p.id`,
     { replacements: { programmeIds }, type: QueryTypes.SELECT },
   );

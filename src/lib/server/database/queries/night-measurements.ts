@@ -15,7 +15,16 @@ type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midEx
   verdictRedshift: number | null;
   verdictConfidence: string | null;
   verdictBy: string | null;
+  verdictOwn: number;
   detail: string | Measurement | null;
+};
+
+/** Takes the place of every key that the engine fills, those of the full answer included, where a reader may not know it. */
+const NO_ANSWER = {
+  ...{ redshift: null, redshiftError: null, redshiftErrorMeasured: null, redshiftSystemic: null, secondRedshift: null },
+  ...{ probability: null, confidence: null, objectClass: null, flags: [], noiseFactor: null, strongestLine: null },
+  ...{ candidates: undefined, lines: undefined, rivals: undefined, derived: undefined, reasons: undefined },
+  answerHidden: true as const,
 };
 
 /**
@@ -27,7 +36,7 @@ export async function nightMeasurementRows(
   nightId: string,
   limit: number,
   after: string | null,
-  reader: { userId: string; judges: boolean; full: boolean },
+  reader: { userId: string; judges: boolean; full: boolean; hidden: (spectrumId: string) => boolean },
 ): Promise<(NightMeasurement & Partial<FullAnswer>)[]> {
   const rows = await database().query<Row>(
     `SELECT s.id AS spectrum, nf.name AS source, s.extension, s.row_index AS \`row\`, s.name, s.ra_degrees AS ra,
@@ -38,7 +47,8 @@ export async function nightMeasurementRows(
         m.noise_factor AS noiseFactor, m.object_class AS objectClass, m.flags, m.flux_unit AS fluxUnit,
         m.strongest_line AS line, m.strongest_line_signal_to_noise AS lineSignalToNoise, ${reader.full ? 'm.detail' : 'NULL'} AS detail,
         IF(d.id IS NULL, v.redshift, d.redshift) AS verdictRedshift,
-        IF(d.id IS NULL, v.confidence, d.confidence) AS verdictConfidence, u.name AS verdictBy
+        IF(d.id IS NULL, v.confidence, d.confidence) AS verdictConfidence, u.name AS verdictBy,
+        COALESCE(d.user_id, v.user_id) = :userId AS verdictOwn
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
       LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
       LEFT JOIN verdicts v ON v.id = ${CURRENT_VERDICT} AND (:judges = 0 OR ${judgedBy(':userId')})
@@ -61,6 +71,7 @@ export async function nightMeasurementRows(
       verdictRedshift,
       verdictConfidence,
       verdictBy,
+      verdictOwn,
       ...row
     }) => ({
       ...row,
@@ -68,7 +79,10 @@ export async function nightMeasurementRows(
       midExposure: midExposure === null ? null : new Date(midExposure).toISOString(),
       flags: typeof flags === 'string' ? (JSON.parse(flags) as Flag[]) : (flags ?? []),
       strongestLine: line === null ? null : { line, signalToNoise: lineSignalToNoise ?? 0 },
-      verdict: verdictBy ? { redshift: verdictRedshift, confidence: verdictConfidence, by: verdictBy } : null,
+      verdict: verdictBy
+        ? { redshift: verdictRedshift, confidence: verdictConfidence, by: verdictBy, own: !!verdictOwn }
+        : null,
+      ...(reader.hidden(row.spectrum) && NO_ANSWER),
     }),
   );
 }

@@ -21,6 +21,8 @@ export interface ReviewedSpectrum {
   measurementId: string;
   measurement: Measurement;
   entropyBits: number;
+  /** 1 for one with a known answer, which nobody is told. */
+  planted: number;
   verdictCount: number | string;
 }
 
@@ -33,12 +35,13 @@ export async function findReviewed(spectrumId: string): Promise<ReviewedSpectrum
     `SELECT s.id, s.name, f.original_name AS originalName, f.programme_id AS programmeId, p.name AS programmeName,
         i.name AS instrumentName, i.description AS instrument, n.id AS nightId, n.civil_date AS civilDate,
         s.exposure_seconds AS exposureSeconds, s.extension, s.row_index AS rowIndex, f.sha256, m.id AS measurementId,
-        m.detail, m.entropy_bits AS entropyBits,
+        m.detail, m.entropy_bits AS entropyBits, pl.spectrum_id IS NOT NULL AS planted,
         (SELECT COUNT(DISTINCT v.user_id) FROM verdicts v WHERE v.spectrum_id = s.id AND v.kind <> 'withdrawn'
           AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = v.id)) AS verdictCount
       FROM spectra s JOIN files f ON f.id = s.file_id JOIN programmes p ON p.id = f.programme_id
       JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      JOIN night_files nf ON nf.file_id = f.id JOIN nights n ON n.id = nf.night_id
+      LEFT JOIN planted_spectra pl ON pl.spectrum_id = s.id LEFT JOIN night_files nf ON nf.file_id = f.id
+      JOIN nights n ON n.id = COALESCE(nf.night_id, pl.night_id)
       LEFT JOIN instruments i ON i.id = COALESCE(m.instrument_id, f.instrument_id)
       WHERE s.id = :spectrumId ORDER BY n.civil_date LIMIT 1`,
     { replacements: { spectrumId }, type: QueryTypes.SELECT },

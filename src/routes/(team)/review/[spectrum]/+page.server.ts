@@ -5,7 +5,8 @@ import { commentInputSchema } from '$lib/domain/spectrum-comment';
 import { verdictInputSchema } from '$lib/domain/verdict';
 import { guardedAction, guardedLoad } from '$lib/server/auth/guards';
 import { commentOn } from '$lib/server/review/comment-on';
-import { listQueue, queueFilterSchema } from '$lib/server/review/list-queue';
+import { listQueue } from '$lib/server/review/list-queue';
+import { queueFilterSchema } from '$lib/server/review/queue-filter';
 import { passOn } from '$lib/server/review/pass-on';
 import { readExchange } from '$lib/server/review/read-exchange';
 import { readLastVerdict } from '$lib/server/review/read-last-verdict';
@@ -24,7 +25,8 @@ export const load = guardedLoad('signed-in', async ({ params, locals, url }: Pag
     readLastVerdict(locals.actor),
   ]);
   const queue = placeInQueue(everything, params.spectrum, filter.show, url.search);
-  return { spectrum, exchange, canJudge, queue, lastVerdict };
+  const why = everything.find(({ id }) => id === params.spectrum)?.why ?? spectrum.why;
+  return { spectrum: { ...spectrum, why }, exchange, canJudge, queue, lastVerdict };
 });
 
 export const actions = {
