@@ -4,6 +4,7 @@ import { Piscina } from 'piscina';
 import { config } from '$lib/server/config/config';
 import type { TakeFile } from '$lib/server/ingest/ingest-files';
 import type { MeasureRows } from '$lib/server/measure/measure-spectra';
+import type { RemeasureRows } from '$lib/server/measure/remeasure-spectra';
 
 let piscina: Piscina | undefined;
 
@@ -29,3 +30,4 @@ const options = (name: string) => ({ name, signal: AbortSignal.timeout(STUCK_MS)
 
 export const takeOnThread: TakeFile = (file, measureUpTo) => pool().run({ file, measureUpTo }, options('takeFile'));
 export const measureOnThread: MeasureRows = (file, rows) => pool().run({ file, rows }, options('measureFile'));
+export const remeasureOnThread: RemeasureRows = (file, rows) => pool().run({ file, rows }, options('remeasureFile'));

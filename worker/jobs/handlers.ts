@@ -3,9 +3,10 @@ import { ingestFiles } from '$lib/server/ingest/ingest-files';
 import { unpackArchive } from '$lib/server/ingest/unpack-archive';
 import { sendLetter } from '$lib/server/mail/send-letter';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
+import { remeasureSpectra } from '$lib/server/measure/remeasure-spectra';
 import { composeInvitation } from '$lib/server/programmes/compose-invitation';
 import type { JobName, JobPayload } from '$lib/server/queue/jobs';
-import { measureOnThread, takeOnThread } from '../thread-pool';
+import { measureOnThread, remeasureOnThread, takeOnThread } from '../thread-pool';
 
 type Handlers = { [N in JobName]: (payload: JobPayload<N>, jobId: string) => Promise<void> };
 
@@ -18,4 +19,5 @@ export const handlers: Handlers = {
   mail: ({ letterId }, jobId) => sendLetter(letterId, jobId, letters),
   unpack: ({ uploadId }, jobId) => unpackArchive(uploadId, jobId),
   measure: ({ spectrumIds }, jobId) => measureSpectra(spectrumIds, jobId, measureOnThread),
+  remeasure: (payload, jobId) => remeasureSpectra(payload, jobId, remeasureOnThread),
 };

@@ -3,7 +3,8 @@ import type { MeasureResult } from '$lib/domain/measure-result';
 import type { TakenFile } from '$lib/server/ingest/ingest-files';
 import { openFile } from '$lib/server/ingest/open-file';
 import { log } from '$lib/server/log/log';
-import { measureOne, measureRows } from '$lib/server/measure/measure-rows';
+import { measureOne, measureRows, rowMissing } from '$lib/server/measure/measure-rows';
+import type { Remeasured } from '$lib/server/measure/remeasure-spectra';
 import { objects } from '$lib/server/storage/storage';
 
 interface File {
@@ -37,4 +38,28 @@ export async function measureFile({
   rows: { extension: number; row: number }[];
 }): Promise<MeasureResult[]> {
   return measureRows(await objects().read(file.sha256), file.name, rows, file.instrument);
+}
+
+/** Reads and measures the named rows of a file anew; each with what its reading says of it now. */
+export async function remeasureFile({
+  file,
+  rows,
+}: {
+  file: File;
+  rows: { extension: number; row: number }[];
+}): Promise<Remeasured[]> {
+  const key = (extension = -1, row = -1) => `${extension} ${row}`;
+  const asked = new Set(rows.map(({ extension, row }) => key(extension, row)));
+  const bytes = await objects().read(file.sha256);
+  const { content, spectra } = openFile(bytes, file.name, file.instrument, (extension, row) =>
+    asked.has(key(extension, row)),
+  );
+  const read = new Map(content.spectra.map((summary, i) => [key(summary.extension, summary.row), i]));
+  return rows.map(({ extension, row }) => {
+    const i = read.get(key(extension, row));
+    if (i !== undefined) return { result: measureOne(spectra[i], file.instrument), summary: content.spectra[i] };
+    const own = content.problems.find((problem) => key(problem.extension, problem.row) === key(extension, row));
+    const problem = own ?? content.problems.at(0) ?? rowMissing(extension, row, file.name);
+    return { result: { problem }, summary: null };
+  });
 }

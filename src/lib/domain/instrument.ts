@@ -34,7 +34,7 @@ export type ColumnAssignment = z.infer<typeof columnsSchema>;
 const mediumSchema = z.enum(['vacuum', 'air']);
 
 /** What a person said of the columns of one kind of file: it holds for every file whose columns are so named. */
-const assignmentSchema = z
+export const assignmentSchema = z
   .object({
     /** The names of all columns of the table, or of all images of the file, in their order. */
     names: z.array(z.string().max(200)).min(1).max(1000),

@@ -30,4 +30,6 @@ export interface SpectrumSummary {
 export interface FileContent {
   spectra: SpectrumSummary[];
   problems: Problem[];
+  /** Set where a person must say what its columns are: SHA-256 of their names, which files of one kind share. */
+  shape?: string;
 }

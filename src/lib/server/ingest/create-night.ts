@@ -12,6 +12,8 @@ export const createNightSchema = z
     /** Civil date of the noon before the night at the site, ISO 8601. */
     civilDate: z.iso.date('give an ISO date, e.g. 2026-11-14'),
     notes: z.string().trim().max(4000).default(''),
+    /** Name of the instrument; left out, the one of the programme that was saved last. */
+    instrument: z.string().trim().min(1).max(200).optional(),
   })
   .strict();
 export type CreateNightInput = z.output<typeof createNightSchema>;
@@ -35,7 +37,15 @@ export async function createNight(actor: Actor | null, input: CreateNightInput):
     );
   }
   return inTransaction(async (transaction) => {
-    const instrument = await latestInstrument(programme.id, transaction);
+    const instrument = await latestInstrument(programme.id, transaction, input.instrument);
+    if (input.instrument && !instrument) {
+      throw new Refusal(
+        'invalid',
+        `The programme has no instrument "${input.instrument}".`,
+        'See Instruments.',
+        'instrument',
+      );
+    }
     const id = await insertNight(
       {
         programmeId: programme.id,

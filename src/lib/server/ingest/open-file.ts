@@ -1,8 +1,11 @@
+import { createHash } from 'node:crypto';
+import { shapeNames } from '$lib/domain/file-shape';
 import { InputProblem, type Problem } from '$lib/domain/problem';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Spectrum } from '$lib/domain/spectrum';
 import type { FileContent } from '$lib/domain/spectrum-summary';
 import { exposureSpan } from '$lib/formats/observation/exposure-span';
+import { describeColumns, needsAssignment } from '$lib/formats/describe-columns';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { checkSkyLines } from '$lib/science/frames/sky-lines';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
@@ -43,9 +46,17 @@ export interface OpenedFile {
   spectra: Spectrum[];
 }
 
-/** Reads a file's bytes; what is wrong with one spectrum loses none of the others. */
-export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instrument): OpenedFile {
-  const { spectra: raws, problems: found } = readSpectra(bytes, fileName, instrument);
+/**
+ * Reads a file's bytes; what is wrong with one spectrum loses none of the others. `wantsRow` tells which spectra are
+ * asked for, by HDU (from 0) and row (from 1), where not all are.
+ */
+export function openFile(
+  bytes: Uint8Array,
+  fileName: string,
+  instrument?: Instrument,
+  wantsRow?: (extension: number, row: number) => boolean,
+): OpenedFile {
+  const { spectra: raws, problems: found } = readSpectra(bytes, fileName, instrument, wantsRow);
   const problems: Problem[] = [...found];
   const summaries: FileContent['spectra'] = [];
   const spectra: Spectrum[] = [];
@@ -80,5 +91,16 @@ export function openFile(bytes: Uint8Array, fileName: string, instrument?: Instr
       problems.push(error.problem);
     }
   }
+  if (needsAssignment(summaries.length, problems)) return { content: unassigned(bytes, fileName, problems), spectra };
   return { content: { spectra: summaries, problems }, spectra };
+}
+
+/** What is kept of a file whose columns cannot be told. One that cannot even be described keeps its problems as they are. */
+function unassigned(bytes: Uint8Array, fileName: string, problems: Problem[]): FileContent {
+  const parts = describeColumns(bytes, fileName);
+  if (parts.length === 0) return { spectra: [], problems };
+  const { what, where } = problems[0];
+  const mend = 'Say once what its columns are; the instrument remembers it for every file like this one.';
+  const shape = createHash('sha256').update(shapeNames(parts)).digest('hex');
+  return { spectra: [], problems: [{ code: 'needs-assignment', what, where, mend }], shape };
 }

@@ -1,6 +1,6 @@
 import type { Instrument } from '$lib/domain/instrument';
 import type { MeasureResult } from '$lib/domain/measure-result';
-import { InputProblem } from '$lib/domain/problem';
+import { InputProblem, type Problem } from '$lib/domain/problem';
 import type { RawSpectrum, Spectrum } from '$lib/domain/spectrum';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { withDerived } from '$lib/science/derive/with-derived';
@@ -36,10 +36,13 @@ export function measureOne(spectrum: Spectrum, instrument?: Instrument): Measure
 function findRow(spectra: RawSpectrum[], extension: number, row: number, fileName: string): RawSpectrum {
   const raw = spectra.find((candidate) => candidate.extension === extension && candidate.row === row);
   if (raw) return raw;
-  throw new InputProblem({
-    code: 'row-missing',
-    what: `HDU ${extension}, row ${row} is no longer read as a spectrum.`,
-    where: fileName,
-    mend: 'Submit the file again.',
-  });
+  throw new InputProblem(rowMissing(extension, row, fileName));
 }
+
+/** A spectrum that its file gave once and gives no more. */
+export const rowMissing = (extension: number, row: number, fileName: string): Problem => ({
+  code: 'row-missing',
+  what: `HDU ${extension}, row ${row} is no longer read as a spectrum.`,
+  where: fileName,
+  mend: 'Look at what the instrument says of its columns, or submit the file again.',
+});

@@ -7,6 +7,7 @@ export const JOBS = {
   /** An archive whose bytes are all here. */
   unpack: z.object({ uploadId: z.uuid() }),
   measure: z.object({ spectrumIds: z.array(z.uuid()).min(1) }),
+  remeasure: z.object({ remeasureId: z.uuid(), spectrumIds: z.array(z.uuid()).min(1) }),
 } as const;
 
 export type JobName = keyof typeof JOBS;

@@ -90,8 +90,10 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
     }
     await linkExposures([...new Set(placed.map(({ targetId }) => targetId))], transaction);
     for (const { file, content } of group) {
-      const state = content.spectra.length ? 'read' : 'failed';
-      await SpectrumFile.update({ state, problems: content.problems }, { where: { id: file.id }, transaction });
+      const unread = content.shape ? 'needs assignment' : 'failed';
+      const state = content.spectra.length ? 'read' : unread;
+      const shape = content.shape ?? null;
+      await SpectrumFile.update({ state, shape, problems: content.problems }, { where: { id: file.id }, transaction });
     }
   }
   return entries.map(({ file, content }) =>

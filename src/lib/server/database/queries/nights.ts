@@ -12,11 +12,15 @@ export async function findProgramme(idOrSlug: string): Promise<Programme | null>
   return Programme.findOne({ where: UUID.test(idOrSlug) ? { id: idOrSlug } : { slug: idOrSlug } });
 }
 
+/** The newest version of the instrument of this name; without a name, of the one that was saved last. */
 export async function latestInstrument(
   programmeId: string,
   transaction: Transaction,
+  name?: string,
 ): Promise<InstrumentVersion | null> {
-  return InstrumentVersion.findOne({ where: { programmeId }, order: [['version', 'DESC']], transaction });
+  const where = name === undefined ? { programmeId } : { programmeId, name };
+  const order: [string, string][] = name === undefined ? [['id', 'DESC']] : [['version', 'DESC']];
+  return InstrumentVersion.findOne({ where, order, transaction });
 }
 
 export async function insertNight(
@@ -92,9 +96,11 @@ export async function addFilesToNight(
     .filter(({ id }) => !before.has(id))
     .map(({ id, sha256 }) => ({ nightId, fileId: id, name: bySha.get(sha256)!.name }));
   await NightFile.bulkCreate(links, { ignoreDuplicates: true, transaction });
-  const failed = files.filter(({ state }) => state === 'failed').map(({ id }) => id);
+  const failed = files.filter(({ state }) => state === 'failed' || state === 'needs assignment').map(({ id }) => id);
   if (failed.length) {
-    await SpectrumFile.update({ state: 'waiting', problems: [], tries: 0 }, { where: { id: failed }, transaction });
+    // Read anew, by the instrument as the night has it now.
+    const anew = { state: 'waiting' as const, problems: [], tries: 0, ...(instrumentId && { instrumentId }) };
+    await SpectrumFile.update(anew, { where: { id: failed }, transaction });
   }
   if (links.length || failed.length) await touchNights([nightId], transaction);
   const ours = new Set([...made.map(({ id }) => id), ...failed]);

@@ -23,3 +23,11 @@ export async function programmeMemberRows(programmeIds: string[]): Promise<Progr
     { replacements: { programmeIds }, type: QueryTypes.SELECT },
   );
 }
+
+/** Ids of all programmes, in the order of their founding. */
+export async function allProgrammeIds(): Promise<string[]> {
+  const rows = await database().query<{ id: string }>('SELECT id FROM programmes ORDER BY id', {
+    type: QueryTypes.SELECT,
+  });
+  return rows.map(({ id }) => id);
+}

@@ -1,0 +1,202 @@
+import type { ChildProcess } from 'node:child_process';
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { Readable } from 'node:stream';
+import { QueryTypes } from 'sequelize';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Instrument } from '$lib/domain/instrument';
+import type { Actor } from '$lib/server/auth/permissions';
+import { database } from '$lib/server/database/connection';
+import { assignColumns } from '$lib/server/ingest/assign-columns';
+import { createNight } from '$lib/server/ingest/create-night';
+import { readAssignment } from '$lib/server/ingest/read-assignment';
+import { listInstruments, readInstrument } from '$lib/server/ingest/read-instrument';
+import { readNight } from '$lib/server/ingest/read-night';
+import { receiveFile } from '$lib/server/ingest/receive-file';
+import { saveInstrument } from '$lib/server/ingest/save-instrument';
+import { tryAssignment } from '$lib/server/ingest/try-assignment';
+import { cancelRemeasure } from '$lib/server/measure/cancel-remeasure';
+import { readRemeasure } from '$lib/server/measure/read-remeasure';
+import { startRemeasure } from '$lib/server/measure/start-remeasure';
+import { makeInstallation, type Installation } from './installation';
+import { startWorker, until } from './worker-process';
+
+const SAMPLE = 'tests/fixtures/sample-night';
+const FILES = ['hz_0001.fits', 'hz_0005.dat', 'hz_0015.csv', 'hz_0018.csv'];
+const bytes = (name: string) => readFileSync(join(SAMPLE, name));
+/** The first columns of hz_0018.csv (wavelength in um, flux, error) under names that say nothing; `copies` tell it apart. */
+const odd = (copies: number) => {
+  const rows = bytes('hz_0018.csv')
+    .toString('utf8')
+    .split('\n')
+    .filter((line) => /^[\d.]/.test(line));
+  return Buffer.from(['aa,bb,cc', ...rows, ''.padEnd(copies, '\n')].join('\n'));
+};
+
+const described: Instrument = { name: 'CH-1', medium: 'vacuum', specsys: 'TOPOCENT', resolvingPower: 1800 };
+
+let installation: Installation;
+let programme: string;
+let [observer, scientist]: Actor[] = [];
+let worker: (ChildProcess & { gone: Promise<void> }) | undefined;
+
+beforeAll(async () => {
+  installation = await makeInstallation();
+  programme = await installation.makeProgramme('again');
+  observer = await installation.makePerson('Ola Server', programme, ['observer']);
+  scientist = await installation.makePerson('Sina Looks', programme, ['scientist']);
+});
+afterAll(async () => {
+  worker?.kill('SIGKILL');
+  await worker?.gone;
+  await installation.destroy();
+});
+
+const save = (description: Instrument, from?: number) =>
+  saveInstrument(observer, { programme: 'again', description, note: '', from });
+const submit = (night: string, name: string, content: Buffer) =>
+  receiveFile(observer, night, { name, stream: Readable.from([content]) });
+const whenMeasured = (night: string) =>
+  until('the end of the night', async () => ((n) => n.done && n)(await readNight(observer, night)));
+const whenEnded = (id: string) =>
+  until('the end of the re-measure', async () => {
+    const { remeasure } = await readRemeasure(observer, id);
+    return remeasure.state !== 'running' && remeasure;
+  });
+const numbers = async (sql: string) =>
+  Number((await database().query<{ n: number }>(sql, { type: QueryTypes.SELECT }))[0].n);
+
+describe('an instrument', () => {
+  it('has a new version for every change, none for none, and keeps the old ones readable', async () => {
+    const first = await save(described, 0);
+    expect(first).toMatchObject({ version: 1, isNew: true, wouldTouch: 0 });
+    expect(await save({ ...described })).toMatchObject({ id: first.id, isNew: false });
+    const second = await save({ ...described, badRegionsAngstrom: [[7590, 7620, 'hot column']] }, 1);
+    expect(second).toMatchObject({ version: 2, isNew: true });
+    const page = await readInstrument(scientist, first.id);
+    expect(page).toMatchObject({ version: 1, isNewest: false, by: 'Ola Server', description: described });
+    expect(page.versions.map(({ version }) => version)).toEqual([2, 1]);
+    expect(page.maySave).toBe(false);
+    const { instruments } = await listInstruments(observer);
+    expect(instruments.map(({ name, version }) => [name, version])).toEqual([['CH-1', 2]]);
+  });
+
+  it('refuses a change of a version that is not the newest, and a person who may not', async () => {
+    await expect(save({ ...described, medium: 'air' }, 1)).rejects.toMatchObject({ code: 'conflict' });
+    await expect(
+      saveInstrument(scientist, { programme: 'again', description: described, note: '' }),
+    ).rejects.toMatchObject({ code: 'forbidden' });
+  });
+});
+
+describe('measuring again', () => {
+  let night: string;
+
+  it('skips what the same engine and settings measured, and counts it', async () => {
+    worker = startWorker(installation.env);
+    night = (await createNight(observer, { civilDate: '2026-11-14', notes: '' })).id;
+    for (const name of FILES) await submit(night, name, bytes(name));
+    await whenMeasured(night);
+    const { id } = await startRemeasure(observer, { night, reason: '' });
+    const { counts } = await whenEnded(id);
+    expect(counts).toMatchObject({ total: 4, skipped: 4, measured: 0 });
+    expect(await numbers('SELECT COUNT(*) AS n FROM measurements')).toBe(4);
+  });
+
+  it(
+    'measures by the newest version of the instrument beside the old, which stay current',
+    { timeout: 60_000 },
+    async () => {
+      const before = await database().query<{ id: string; current: string }>(
+        'SELECT id, current_measurement_id AS current FROM spectra ORDER BY id',
+        { type: QueryTypes.SELECT },
+      );
+      const saved = await save({
+        ...described,
+        resolvingPower: 900,
+        badRegionsAngstrom: [[3000, 5600, 'blue arm off']],
+      });
+      expect(saved.wouldTouch).toBe(4);
+      const { id } = await startRemeasure(observer, { night, reason: 'the blue arm was off' });
+      const { counts, state } = await whenEnded(id);
+      expect([state, counts.total, counts.measured + counts.skipped]).toEqual(['done', 4, 4]);
+      expect(counts.measured).toBe(4);
+      expect(await numbers('SELECT COUNT(*) AS n FROM measurements')).toBe(8);
+      const after = await database().query('SELECT id, current_measurement_id AS current FROM spectra ORDER BY id', {
+        type: QueryTypes.SELECT,
+      });
+      expect(after).toEqual(before);
+      expect(await numbers(`SELECT COUNT(DISTINCT m.instrument_id) AS n FROM measurements m`)).toBe(2);
+      // Once more: the new measurements are there, so nothing is left to do.
+      const again = await whenEnded((await startRemeasure(observer, { night, reason: '' })).id);
+      expect(again.counts).toMatchObject({ total: 4, waiting: 0 });
+      expect(await numbers('SELECT COUNT(*) AS n FROM measurements')).toBe(8);
+      expect(await numbers('SELECT COUNT(*) AS n FROM outbox')).toBe(0);
+    },
+  );
+
+  it('can be cancelled: what waits is left, and a result that comes too late changes nothing', async () => {
+    worker!.kill('SIGKILL');
+    await worker!.gone;
+    await save({ ...described, resolvingPower: 1200 });
+    const { id } = await startRemeasure(observer, { programme: 'again', reason: '' });
+    await expect(startRemeasure(observer, { night, reason: '' })).rejects.toMatchObject({ code: 'conflict' });
+    await expect(cancelRemeasure(scientist, id)).rejects.toMatchObject({ code: 'forbidden' });
+    await cancelRemeasure(observer, id);
+    const { counts, state } = await whenEnded(id);
+    expect([state, counts.cancelled, counts.waiting]).toEqual(['cancelled', 4, 0]);
+    expect(await numbers('SELECT COUNT(*) AS n FROM outbox')).toBe(0);
+    await expect(cancelRemeasure(observer, id)).rejects.toMatchObject({ code: 'conflict' });
+    worker = startWorker(installation.env);
+  });
+
+  it('is refused to those outside the programme as if it were not there', async () => {
+    const other = await installation.makeProgramme('elsewhere');
+    const stranger = await installation.makePerson('Una Elsewhere', other, ['observer', 'curator']);
+    await expect(startRemeasure(stranger, { night, reason: '' })).rejects.toMatchObject({ code: 'not-found' });
+    await expect(startRemeasure(scientist, { night, reason: '' })).rejects.toMatchObject({ code: 'forbidden' });
+  });
+});
+
+describe('files whose columns cannot be told', () => {
+  it('wait for an assignment, are shown, tried, and read together once it is kept', { timeout: 60_000 }, async () => {
+    const night = (await createNight(observer, { civilDate: '2026-11-15', notes: '' })).id;
+    const received = [];
+    for (const n of [1, 2, 3]) received.push(await submit(night, `odd-${n}.csv`, odd(n)));
+    const waiting = await whenMeasured(night);
+    expect(waiting.problems.map(({ code }) => code)).toEqual(Array(3).fill('needs-assignment'));
+    const [{ id }] = received;
+    const page = await readAssignment(observer, id);
+    expect(page.waiting).toHaveLength(3);
+    expect(page.parts[0].columns.map(({ name }) => name)).toEqual(['aa', 'bb', 'cc']);
+
+    const names = ['aa', 'bb', 'cc'];
+    const wrong = { names, columns: { wavelength: 'aa', flux: 'bb', wavelengthUnit: 'parsec' } };
+    expect((await tryAssignment(observer, id, wrong)).problem?.what).toContain("'parsec'");
+    const assignment = { names, columns: { wavelength: 'aa', wavelengthUnit: 'um', flux: 'bb', error: 'cc' } };
+    const trial = await tryAssignment(observer, id, assignment);
+    expect(trial).toMatchObject({ problem: null, spectra: 1 });
+    expect(trial.wavelengthAngstrom[0]).toBeCloseTo(5588.541, 3);
+    expect(trial.warnings.join()).toContain('could not be made barycentric');
+    await expect(assignColumns(observer, id, { instrument: 'CH-1', assignment: wrong })).rejects.toMatchObject({
+      code: 'invalid',
+    });
+    await expect(assignColumns(scientist, id, { instrument: 'CH-1', assignment })).rejects.toMatchObject({
+      code: 'forbidden',
+    });
+
+    const kept = await assignColumns(observer, id, { instrument: 'CH-1', assignment });
+    expect(kept).toMatchObject({ files: 3, isNew: true });
+    const done = await whenMeasured(night);
+    expect(done.spectra).toMatchObject({ total: 3, measured: 3 });
+    expect(done.problems).toEqual([]);
+
+    // The instrument remembers: the next file of the kind needs nothing.
+    await submit(night, 'another.csv', odd(4));
+    const more = await whenMeasured(night);
+    expect(more.files).toMatchObject({ read: 4, failed: 0 });
+    await expect(assignColumns(observer, id, { instrument: 'CH-1', assignment })).rejects.toMatchObject({
+      code: 'conflict',
+    });
+  });
+});
