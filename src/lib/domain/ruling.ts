@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { confidenceSchema, type Confidence } from './confidence';
 import type { Flag } from './flag';
+import type { VerdictDetails } from './verdict';
 
 const reason = z.string().trim().min(1, 'Say in words why.').max(4000);
 /** Ids of the verdicts, and of the ruling, that the person had before them: what changed meanwhile is said, not overruled. */
@@ -54,6 +55,8 @@ export interface QuestionRuling {
 export interface Question {
   standing: 'agreed' | 'open' | 'ruled';
   verdicts: QuestionVerdict[];
+  /** Masks and second redshifts by verdict, where there are any. */
+  details: Record<string, VerdictDetails>;
   /** Largest velocity between two of them, km/s. */
   apartKms: number | null;
   ruling: QuestionRuling | null;

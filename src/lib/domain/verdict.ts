@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { confidenceSchema } from './confidence';
 import { flagSchema } from './flag';
+import { masksSchema, masksTextSchema, type Mask } from './mask';
 
 export const VERDICT_KINDS = ['candidate', 'by hand', 'no redshift'] as const;
 export const verdictKindSchema = z.enum(VERDICT_KINDS);
@@ -11,6 +12,13 @@ const flags = z.array(flagSchema).max(12).default([]);
 /** Time from the spectrum's appearance to the verdict, seconds; over a day it was left lying. */
 const lookSeconds = z.coerce.number().min(0).max(86_400).optional();
 const redshift = z.coerce.number().min(-0.01).max(20);
+/** Stretches left out of the fit that the verdict rests on. */
+const masks = z.union([masksTextSchema, masksSchema]).optional();
+/** A second object in the same light: its redshift, and 1 sigma where it is known. */
+const second = {
+  secondRedshift: redshift.nullable().optional(),
+  secondRedshiftError: z.coerce.number().positive().max(1).nullable().optional(),
+};
 
 /** What a scientist decides on a spectrum. `candidate` is the place in the measurement's list, from 0. */
 export const verdictInputSchema = z.discriminatedUnion('kind', [
@@ -18,6 +26,8 @@ export const verdictInputSchema = z.discriminatedUnion('kind', [
     kind: z.literal('candidate'),
     candidate: z.coerce.number().int().min(0).max(31),
     confidence: confidenceSchema.exclude(['none']),
+    ...second,
+    masks,
     flags,
     comment,
     lookSeconds,
@@ -28,10 +38,19 @@ export const verdictInputSchema = z.discriminatedUnion('kind', [
     /** Known once the redshift was snapped to a fit. */
     redshiftError: z.coerce.number().positive().max(1).nullable().default(null),
     confidence: confidenceSchema.exclude(['none']),
+    ...second,
+    masks,
     flags,
     comment,
     lookSeconds,
   }),
-  z.object({ kind: z.literal('no redshift'), flags, comment, lookSeconds }),
+  z.object({ kind: z.literal('no redshift'), masks, flags, comment, lookSeconds }),
 ]);
 export type VerdictInput = z.infer<typeof verdictInputSchema>;
+
+/** What a verdict rests on besides its redshift. */
+export interface VerdictDetails {
+  masks: Mask[];
+  secondRedshift: number | null;
+  secondRedshiftError: number | null;
+}

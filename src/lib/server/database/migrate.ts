@@ -9,9 +9,10 @@ import * as uploads from './migrations/0004-uploads';
 import * as instruments from './migrations/0005-instruments';
 import * as targets from './migrations/0006-targets';
 import * as reviewTrust from './migrations/0007-review-trust';
+import * as reviewMasks from './migrations/0008-review-masks';
 
 /** Imported statically, so that bundles carry them; a new one is appended here. */
-const MIGRATIONS = [firstLight, reviewTogether, nightReport, uploads, instruments, targets, reviewTrust];
+const MIGRATIONS = [firstLight, reviewTogether, nightReport, uploads, instruments, targets, reviewTrust, reviewMasks];
 
 function migrator(sequelize: Sequelize): Umzug<Sequelize> {
   return new Umzug({

@@ -7,6 +7,7 @@ import { may, permit, type Actor } from '../auth/permissions';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
 import { namedVerdicts, type NamedVerdictRow } from '../database/queries/looks';
 import { standingRuling } from '../database/queries/rulings';
+import { detailsOf } from '../database/queries/verdict-details';
 import { noteSights } from '../database/queries/sights';
 import { sightOf, type Sight } from './sees-verdicts';
 
@@ -72,6 +73,7 @@ export async function readQuestion(actor: Actor | null, spectrumId: string): Pro
       // Which candidate someone took tells what the engine said.
       return hidden ? { ...side, origin: verdict.redshift === null ? 'no redshift' : 'a redshift' } : side;
     }),
+    details: Object.fromEntries(await detailsOf(rows.map(({ id }) => id))),
     apartKms: widestVelocityKms(rows),
     ruling,
     whyNot: whyNot(sight, may(reader, 'spectrum.rule', programmeId), ruling),

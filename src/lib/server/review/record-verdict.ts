@@ -6,6 +6,7 @@ import { inTransaction } from '../database/in-transaction';
 import { findReviewed, type ReviewedSpectrum } from '../database/queries/reviewed-spectrum';
 import { hasJudged } from '../database/queries/ever-judged';
 import { hasSeen } from '../database/queries/sights';
+import { keepDetails } from '../database/queries/verdict-details';
 import { appendVerdict, lockSpectrum, standingVerdict, type NewVerdict } from '../database/queries/verdicts';
 
 /** The redshift a verdict stands for, from the candidate it names or as set by hand. */
@@ -82,6 +83,9 @@ export async function recordVerdict(
       supersedes: before?.id ?? null,
       restores: null,
     };
-    return { verdictId: await appendVerdict(verdict, transaction) };
+    const verdictId = await appendVerdict(verdict, transaction);
+    const { secondRedshift = null, secondRedshiftError = null } = input.kind === 'no redshift' ? {} : input;
+    await keepDetails(verdictId, { masks: input.masks ?? [], secondRedshift, secondRedshiftError }, transaction);
+    return { verdictId };
   });
 }

@@ -3,6 +3,7 @@ import { permit, type Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
 import { hasSeen } from '../database/queries/sights';
+import { detailsOf, keepDetails, NO_DETAILS } from '../database/queries/verdict-details';
 import {
   appendVerdict,
   findVerdict,
@@ -48,7 +49,9 @@ export async function undoVerdict(actor: Actor | null, verdictId: string): Promi
     if (before) {
       const { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment } = before;
       const said = { measurementId, kind, redshift, redshiftError, candidatePlace, confidence, flags, comment };
-      await appendVerdict({ ...common, ...said, restores: before.restores ?? before.id }, transaction);
+      const restored = await appendVerdict({ ...common, ...said, restores: before.restores ?? before.id }, transaction);
+      const details = (await detailsOf([before.id], transaction)).get(before.id) ?? NO_DETAILS;
+      await keepDetails(restored, details, transaction);
     } else {
       const nothing = {
         redshift: null,

@@ -10,6 +10,7 @@ import { queueFilterSchema } from '$lib/server/review/queue-filter';
 import { passOn } from '$lib/server/review/pass-on';
 import { readExchange } from '$lib/server/review/read-exchange';
 import { readLastVerdict } from '$lib/server/review/read-last-verdict';
+import { readOwnVerdict } from '$lib/server/review/read-own-verdict';
 import { readSpectrum } from '$lib/server/review/read-spectrum';
 import { recordVerdict } from '$lib/server/review/record-verdict';
 import { undoVerdict } from '$lib/server/review/undo-verdict';
@@ -18,15 +19,16 @@ import type { PageServerLoadEvent, RequestEvent } from './$types';
 
 export const load = guardedLoad('signed-in', async ({ params, locals, url }: PageServerLoadEvent) => {
   const filter = parseQuery(url, queueFilterSchema);
-  const [{ spectrum, canJudge }, exchange, everything, lastVerdict] = await Promise.all([
+  const [{ spectrum, canJudge }, exchange, everything, lastVerdict, ownVerdict] = await Promise.all([
     readSpectrum(locals.actor, params.spectrum),
     readExchange(locals.actor, params.spectrum),
     listQueue(locals.actor, { ...filter, show: 'all' }),
     readLastVerdict(locals.actor),
+    readOwnVerdict(locals.actor, params.spectrum),
   ]);
   const queue = placeInQueue(everything, params.spectrum, filter.show, url.search);
   const why = everything.find(({ id }) => id === params.spectrum)?.why ?? spectrum.why;
-  return { spectrum: { ...spectrum, why }, exchange, canJudge, queue, lastVerdict };
+  return { spectrum: { ...spectrum, why }, exchange, canJudge, queue, lastVerdict, ownVerdict };
 });
 
 export const actions = {
