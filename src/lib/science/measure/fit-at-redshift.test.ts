@@ -17,6 +17,18 @@ describe('fitAtRedshift', () => {
     expect(chiSquare / spectrum.flux.length).toBeLessThan(1.15);
   });
 
+  it('counts a broad line once where the given continuum has followed it', () => {
+    const broad = testSpectrum({ redshift: 0.2, lines: { 'H-alpha 6565': 900 }, sigmaKms: 1700, seed: 5 });
+    const given = estimateContinuum(broad);
+    const centre = broad.wavelength.findIndex((place) => place > 6564.6 * 1.2);
+    expect(given[centre]).toBeGreaterThan(6);
+    const { model, continuum } = fitAtRedshift({ ...broad, continuum: given }, 0.2, { fwhmKms: 4000 });
+    expect(continuum[centre]).toBeLessThan(given[centre] - 0.5);
+    let chiSquare = 0;
+    for (let i = centre - 60; i < centre + 60; i++) chiSquare += (broad.flux[i] - model[i]) ** 2;
+    expect(chiSquare / 120).toBeLessThan(1.4);
+  });
+
   it('gains more at the true redshift than 500 km/s off', () => {
     expect(fitAtRedshift(input, 0.2).gain).toBeGreaterThan(fitAtRedshift(input, 0.202, { fwhmKms: 190 }).gain + 100);
   });
