@@ -20,6 +20,9 @@ export interface SeededSpectrum {
   fluxUnit?: string | null;
   /** Fluxes of the first candidate's lines. */
   lines?: Record<string, number>;
+  /** Start of the exposure, ISO 8601 UTC, and how long it is, s; 900 unless told. */
+  start?: string;
+  exposureSeconds?: number;
   /** A second candidate's redshift; its lines have ten times the flux. */
   rival?: number;
 }
@@ -91,6 +94,11 @@ function raOfName(name: string): number {
   return 63 + 4 * (digest.readUInt32BE(0) / 2 ** 32);
 }
 
+function spanOf(start: string, seconds: number) {
+  const after = (share: number) => new Date(Date.parse(start) + share * seconds * 1000).toISOString();
+  return { exposureStart: after(0), midExposure: after(0.5), exposureEnd: after(1) };
+}
+
 let files = 0;
 
 /** Puts spectra and their measurements into a night of a programme as a file would; returns the ids of the spectra. */
@@ -114,20 +122,23 @@ export async function seedNight(
     const night = { programmeId, instrumentId: null };
     const id = await insertNight({ ...night, civilDate: '2026-11-14', notes: '', createdBy }, transaction);
     const [added] = await addFilesToNight({ id, ...night }, [{ name, sha256, sizeBytes: 1 }], transaction);
-    const content = spectra.map(({ name: target, ra = raOfName(target), dec = -31 }, i) => ({
-      extension: 1,
-      row: i + 1,
-      name: target,
-      raDegrees: ra,
-      decDegrees: dec,
-      exposureSeconds: 900,
-      pixelCount: 4000,
-      wavelengthMin: 3800,
-      wavelengthMax: 9200,
-      medianSignalToNoise: 5,
-      header: {},
-      warnings: [],
-    }));
+    const content = spectra.map(
+      ({ name: target, ra = raOfName(target), dec = -31, start, exposureSeconds = 900 }, i) => ({
+        extension: 1,
+        row: i + 1,
+        name: target,
+        raDegrees: ra,
+        decDegrees: dec,
+        exposureSeconds,
+        ...(start && spanOf(start, exposureSeconds)),
+        pixelCount: 4000,
+        wavelengthMin: 3800,
+        wavelengthMax: 9200,
+        medianSignalToNoise: 5,
+        header: {},
+        warnings: [],
+      }),
+    );
     const file = { id: added.id, programmeId, sha256, originalName: name, instrumentId: null, instrument: null };
     const [ids] = await storeFileContents([{ file, content: { spectra: content, problems: [] } }], transaction);
     const results = new Map(ids.map((spectrum, i) => [spectrum, { measurement: seededMeasurement(spectra[i]) }]));

@@ -1,6 +1,7 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
+import { CURRENT_REDUCTION } from './observed';
 
 /** A spectrum of a programme with its newest measurement. */
 export interface MeasuredSpectrumRow {
@@ -25,7 +26,7 @@ export function measuredSpectra(programmeId: string, transaction?: Transaction):
         m.id AS measurementId, m.redshift, m.redshift_error AS redshiftError, m.probability, m.confidence
       FROM files f JOIN spectra s ON s.file_id = f.id LEFT JOIN targets t ON t.id = s.target_id
       LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      WHERE f.programme_id = :programmeId ORDER BY s.id`,
+      WHERE f.programme_id = :programmeId AND ${CURRENT_REDUCTION} ORDER BY s.id`,
     { replacements: { programmeId }, type: QueryTypes.SELECT, transaction },
   );
 }

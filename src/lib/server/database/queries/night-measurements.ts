@@ -6,6 +6,7 @@ import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { LAST_WORD_RULING } from './rulings';
 import { CURRENT_VERDICT, judgedBy } from './verdicts';
+import { OBSERVED } from './observed';
 
 type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midExposure'> & {
   midExposure: Date | string | null;
@@ -55,7 +56,7 @@ export async function nightMeasurementRows(
       LEFT JOIN rulings d ON d.id = ${LAST_WORD_RULING}
         AND (:judges = 0 OR d.user_id = :userId OR ${judgedBy(':userId')})
       LEFT JOIN users u ON u.id = COALESCE(d.user_id, v.user_id)
-      WHERE nf.night_id = :nightId AND (:after IS NULL OR s.id > :after) ORDER BY s.id LIMIT :limit`,
+      WHERE nf.night_id = :nightId AND ${OBSERVED} AND (:after IS NULL OR s.id > :after) ORDER BY s.id LIMIT :limit`,
     {
       replacements: { nightId, after, limit, userId: reader.userId, judges: reader.judges ? 1 : 0 },
       type: QueryTypes.SELECT,

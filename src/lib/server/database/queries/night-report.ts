@@ -4,6 +4,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { Candidate } from '$lib/domain/measurement';
 import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
+import { OBSERVED } from './observed';
 
 const select = { type: QueryTypes.SELECT } as const;
 const parsed = <T>(value: T | string | null): T | null =>
@@ -27,7 +28,7 @@ export async function reportRows(nightId: string): Promise<ReportRow[]> {
         IF(m.confidence = 'secure', NULL, JSON_EXTRACT(m.detail, '$.candidates[0]')) AS first
       FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
       JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      WHERE nf.night_id = :nightId ORDER BY s.id`,
+      WHERE nf.night_id = :nightId AND ${OBSERVED} ORDER BY s.id`,
     { replacements: { nightId }, ...select },
   );
   return rows.map((row) => ({ ...row, first: parsed<Candidate>(row.first) }));

@@ -4,6 +4,7 @@ import type { NightSnapshot } from '$lib/domain/night';
 import type { Problem } from '$lib/domain/problem';
 import { database } from '../connection';
 import { Programme } from '../models/people';
+import { OBSERVED } from './observed';
 
 type Counts = Pick<NightSnapshot, 'files' | 'spectra' | 'confidence'>;
 
@@ -21,18 +22,18 @@ export async function countNight(nightId: string): Promise<Counts> {
   const [files, spectra, words] = await Promise.all([
     database().query<{ state: 'waiting' | 'read' | 'failed'; n: number | string }>(
       `SELECT IF(f.state = 'needs assignment', 'failed', f.state) AS state, COUNT(*) AS n FROM night_files nf JOIN files f ON f.id = nf.file_id
-        WHERE nf.night_id = :nightId GROUP BY 1`,
+        WHERE nf.night_id = :nightId AND NOT EXISTS (SELECT 1 FROM combinations c WHERE c.file_id = f.id) GROUP BY 1`,
       { replacements, ...select },
     ),
     database().query<{ state: 'waiting' | 'measured' | 'failed'; n: number | string }>(
       `SELECT s.state, COUNT(*) AS n FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
-        WHERE nf.night_id = :nightId GROUP BY s.state`,
+        WHERE nf.night_id = :nightId AND ${OBSERVED} GROUP BY s.state`,
       { replacements, ...select },
     ),
     database().query<{ confidence: Confidence; n: number | string }>(
       `SELECT m.confidence, COUNT(*) AS n FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
         JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-        WHERE nf.night_id = :nightId GROUP BY m.confidence`,
+        WHERE nf.night_id = :nightId AND ${OBSERVED} GROUP BY m.confidence`,
       { replacements, ...select },
     ),
   ]);
@@ -61,6 +62,10 @@ export async function nightProblems(nightId: string): Promise<NightSnapshot['pro
      UNION ALL
      SELECT f.id, nf.name, JSON_ARRAY(JSON_EXTRACT(s.problem, '$')) FROM night_files nf JOIN files f ON f.id = nf.file_id
       JOIN spectra s ON s.file_id = f.id WHERE nf.night_id = :nightId AND s.state = 'failed'
+     UNION ALL
+     SELECT f.id, nf.name, JSON_ARRAY(JSON_EXTRACT(s.position_doubt, '$')) FROM night_files nf
+      JOIN files f ON f.id = nf.file_id JOIN spectra s ON s.file_id = f.id
+      WHERE nf.night_id = :nightId AND s.position_doubt IS NOT NULL AND ${OBSERVED}
      UNION ALL
      SELECT u.id, u.name, u.problems FROM uploads u WHERE u.night_id = :nightId AND JSON_LENGTH(u.problems) > 0
      LIMIT 1000`,

@@ -2,6 +2,7 @@ import { QueryTypes } from 'sequelize';
 import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { judgedBy } from './verdicts';
+import { CURRENT_REDUCTION } from './observed';
 
 const JUDGED = judgedBy(':userId');
 
@@ -52,7 +53,7 @@ export async function queueRows(
       LEFT JOIN spectra donor ON donor.id = pl.donor_id
       LEFT JOIN targets t ON t.id = COALESCE(s.target_id, donor.target_id) LEFT JOIN night_files nf ON nf.file_id = f.id
       JOIN nights n ON n.id = COALESCE(nf.night_id, pl.night_id)
-      WHERE f.programme_id IN (:programmeIds) AND s.state = 'measured' AND (:night IS NULL OR n.id = :night)
+      WHERE f.programme_id IN (:programmeIds) AND s.state = 'measured' AND ${CURRENT_REDUCTION} AND (:night IS NULL OR n.id = :night)
         AND (:confidence IS NULL OR m.confidence = :confidence)
       GROUP BY s.id, m.id ORDER BY m.entropy_bits DESC, s.id LIMIT 5000`,
     { replacements: { programmeIds, userId, night, confidence }, type: QueryTypes.SELECT },
