@@ -10,6 +10,7 @@ import { JOBS, type JobName } from '$lib/server/queue/jobs';
 import { closeNudges } from '$lib/server/queue/nudge';
 import { closeRedis, redis, redisOptions, channel } from '$lib/server/queue/redis';
 import { queueName, startRelay } from '$lib/server/queue/relay';
+import { plantSpectra } from '$lib/server/review/plant-spectra';
 import { objects } from '$lib/server/storage/storage';
 import { handlers } from './jobs/handlers';
 import { pool } from './thread-pool';
@@ -17,8 +18,12 @@ import { pool } from './thread-pool';
 /** A stalled job is taken over three lost renewals after its lock: lock 15 s, looked for every 5 s. */
 const LOCK_MS = 15_000;
 const STALLED_EVERY_MS = 5_000;
-/** Reports of nights that ended are looked for this often. */
-const REPORTS_EVERY_MS = 60_000;
+/** What no event starts is looked for this often: reports of nights that ended, planted spectra that are wanted. */
+const ROUNDS_EVERY_MS = 60_000;
+const ROUNDS: [name: string, round: () => Promise<number>][] = [
+  ['reports', () => postReports(new Date())],
+  ['planted', plantSpectra],
+];
 /** What was begun and left is looked for this often. */
 const CLEAN_EVERY_MS = 3_600_000;
 /** Shutdown waits this long for fits in hand; what is not stored by then is offered again. */
@@ -67,10 +72,12 @@ async function main(): Promise<void> {
   };
   tellAlive();
   const beat = setInterval(tellAlive, 5_000);
-  const reports = setInterval(
-    () => void postReports(new Date()).catch((error: Error) => log.warn({ err: error.message }, 'reports not posted')),
-    REPORTS_EVERY_MS,
-  );
+  const goRound = async () => {
+    for (const [name, round] of ROUNDS) {
+      await round().catch((error: Error) => log.warn({ round: name, err: error.message }, 'a round failed'));
+    }
+  };
+  const rounds = setInterval(() => void goRound(), ROUNDS_EVERY_MS);
   const clean = () =>
     void cleanStaging(new Date()).catch((error: Error) => log.warn({ err: error.message }, 'staging not cleaned'));
   clean();
@@ -84,7 +91,7 @@ async function main(): Promise<void> {
     log.info({ signal }, 'worker is ending');
     const late = setTimeout(() => process.exit(1), SHUTDOWN_MS);
     clearInterval(beat);
-    clearInterval(reports);
+    clearInterval(rounds);
     clearInterval(cleaning);
     await relay.stop();
     await worker.close();

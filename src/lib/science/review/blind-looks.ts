@@ -26,14 +26,14 @@ export interface LookGiven extends RedshiftVerdict {
  * @param ruled `spectrumId userId` of those who ruled on a spectrum: they saw the verdicts and are left out there
  * @returns at most one a person and spectrum, in the order of time
  */
-export function blindLooks(rows: readonly LookGiven[], ruled: ReadonlySet<string> = new Set()): LookGiven[] {
-  const bySpectrum = new Map<string, LookGiven[]>();
+export function blindLooks<T extends LookGiven>(rows: readonly T[], ruled: ReadonlySet<string> = new Set()): T[] {
+  const bySpectrum = new Map<string, T[]>();
   for (const row of rows) {
     const group = bySpectrum.get(row.spectrumId);
     if (group) group.push(row);
     else bySpectrum.set(row.spectrumId, [row]);
   }
-  const looks: LookGiven[] = [];
+  const looks: T[] = [];
   for (const group of bySpectrum.values()) {
     for (const userId of new Set(group.map((row) => row.userId))) {
       if (ruled.has(`${group[0].spectrumId} ${userId}`)) continue;
@@ -48,7 +48,7 @@ export function blindLooks(rows: readonly LookGiven[], ruled: ReadonlySet<string
 }
 
 /** One person's blind look among their rows; `others` is the first row of anyone else. */
-function blindLook(own: readonly LookGiven[], others: string | null): LookGiven | null {
+function blindLook<T extends LookGiven>(own: readonly T[], others: string | null): T | null {
   const blind = own.filter(({ id, seenOthers }) => !(seenOthers ?? (others !== null && id >= others)));
   const last = blind.at(-1);
   if (last && !last.withdrawn) return last;

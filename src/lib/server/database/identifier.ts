@@ -23,3 +23,18 @@ export function newIdentifier(now: number = Date.now()): string {
   const hex = bytes.toString('hex');
   return [hex.slice(0, 8), hex.slice(8, 12), hex.slice(12, 16), hex.slice(16, 20), hex.slice(20)].join('-');
 }
+
+/**
+ * A UUID version 7 whose time lies between those of two others, so that its order tells nothing of when it was made. The
+ * counter and the rest are random.
+ */
+export function identifierWithin(low: string, high: string): string {
+  const time = (id: string) => parseInt(id.replaceAll('-', '').slice(0, 12), 16);
+  const ms = time(low) + Math.floor(Math.random() * (time(high) - time(low) + 1));
+  const bytes = randomBytes(16);
+  bytes.writeUIntBE(ms, 0, 6);
+  bytes[6] = (bytes[6] & 0x0f) | 0x70;
+  bytes[8] = (bytes[8] & 0x3f) | 0x80;
+  const hex = bytes.toString('hex');
+  return [hex.slice(0, 8), hex.slice(8, 12), hex.slice(12, 16), hex.slice(16, 20), hex.slice(20)].join('-');
+}

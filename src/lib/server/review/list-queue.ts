@@ -28,7 +28,7 @@ async function gatherQueue(
 ): Promise<GatheredQueue> {
   const [rows, looks, rulings, assigned] = await Promise.all([
     orderPlaces(asker, programmeIds, filter),
-    standingLooks(programmeIds),
+    standingLooks(programmeIds, true),
     standingRulings(programmeIds),
     standingAssignments(programmeIds),
   ]);

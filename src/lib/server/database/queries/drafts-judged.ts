@@ -2,6 +2,7 @@ import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { CURRENT_REDUCTION } from './observed';
+import { NOT_PLANTED } from './planted';
 
 /** A spectrum of a programme with its newest measurement. */
 export interface MeasuredSpectrumRow {
@@ -26,7 +27,7 @@ export function measuredSpectra(programmeId: string, transaction?: Transaction):
         m.id AS measurementId, m.redshift, m.redshift_error AS redshiftError, m.probability, m.confidence
       FROM files f JOIN spectra s ON s.file_id = f.id LEFT JOIN targets t ON t.id = s.target_id
       LEFT JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      WHERE f.programme_id = :programmeId AND ${CURRENT_REDUCTION} ORDER BY s.id`,
+      WHERE f.programme_id = :programmeId AND ${CURRENT_REDUCTION} AND ${NOT_PLANTED} ORDER BY s.id`,
     { replacements: { programmeId }, type: QueryTypes.SELECT, transaction },
   );
 }
@@ -50,7 +51,7 @@ export function standingVerdicts(programmeId: string, transaction?: Transaction)
     `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.measurement_id AS measurementId, w.kind, w.redshift,
         w.redshift_error AS redshiftError, w.candidate_place AS candidatePlace, w.confidence, w.restores
       FROM files f JOIN spectra s ON s.file_id = f.id JOIN verdicts w ON w.spectrum_id = s.id
-      WHERE f.programme_id = :programmeId AND w.kind <> 'withdrawn'
+      WHERE f.programme_id = :programmeId AND ${NOT_PLANTED} AND w.kind <> 'withdrawn'
         AND NOT EXISTS (SELECT 1 FROM verdicts later WHERE later.supersedes = w.id) ORDER BY w.id`,
     { replacements: { programmeId }, type: QueryTypes.SELECT, transaction },
   );

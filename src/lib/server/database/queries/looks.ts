@@ -17,14 +17,17 @@ export interface LookRow {
   redshiftError: number | null;
 }
 
-/** Verdicts in some programmes that stand, oldest first: just what agreement needs. Not for a reader's eyes as it is. */
-export async function standingLooks(programmeIds: readonly string[]): Promise<LookRow[]> {
+/**
+ * Verdicts in some programmes that stand, oldest first: just what agreement needs. Not for a reader's eyes as it is. With
+ * those on planted spectra only for the queue, where they stand among the rest.
+ */
+export async function standingLooks(programmeIds: readonly string[], withPlanted = false): Promise<LookRow[]> {
   if (programmeIds.length === 0) return [];
   return database().query<LookRow>(
     `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.restores, w.redshift,
         w.redshift_error AS redshiftError
       FROM verdicts w JOIN spectra s ON s.id = w.spectrum_id JOIN files f ON f.id = s.file_id
-      WHERE f.programme_id IN (:programmeIds) AND ${STANDS} ORDER BY w.id`,
+      WHERE f.programme_id IN (:programmeIds) AND ${STANDS} ${withPlanted ? '' : `AND ${NOT_PLANTED}`} ORDER BY w.id`,
     { replacements: { programmeIds }, type: QueryTypes.SELECT },
   );
 }
@@ -65,6 +68,9 @@ export interface EveryLookRow {
   confidence: Confidence | null;
   lookSeconds: number | null;
   seenOthers: number | null;
+  engineHidden: number | null;
+  /** What the engine said of the spectrum then. */
+  engineRedshift: number | null;
 }
 
 /** All that was ever said of a programme's spectra, verdicts taken back included, oldest first: for statistics. None of planted ones. */
@@ -72,8 +78,9 @@ export function everyLook(programmeId: string): Promise<EveryLookRow[]> {
   return database().query<EveryLookRow>(
     `SELECT w.id, w.spectrum_id AS spectrumId, w.user_id AS userId, w.kind, w.redshift,
         w.redshift_error AS redshiftError, w.confidence, w.look_seconds AS lookSeconds,
-        w.seen_others AS seenOthers
+        w.seen_others AS seenOthers, w.engine_hidden AS engineHidden, m.redshift AS engineRedshift
       FROM verdicts w JOIN spectra s ON s.id = w.spectrum_id JOIN files f ON f.id = s.file_id
+      LEFT JOIN measurements m ON m.id = w.measurement_id
       WHERE f.programme_id = :programmeId AND ${NOT_PLANTED} ORDER BY w.id`,
     { replacements: { programmeId }, type: QueryTypes.SELECT },
   );
