@@ -22,3 +22,38 @@ export function geodeticToItrs(
     (normal * (1 - eccentricitySquared) + heightMetres) * Math.sin(latitude),
   ];
 }
+
+/**
+ * Geodetic latitude and east longitude in degrees and height in metres (WGS 84) of a geocentric ITRS position in metres.
+ * Source: Bowring (1976), Survey Review 23, 323, iterated; good to a micrometre for heights of observatories.
+ *
+ * @returns null for a position nearer to the Earth's centre than its surface is anywhere
+ */
+export function itrsToGeodetic([x, y, z]: readonly [number, number, number]): {
+  latitudeDegrees: number;
+  longitudeEastDegrees: number;
+  heightMetres: number;
+} | null {
+  const equatorial = Math.hypot(x, y);
+  if (!(Math.hypot(equatorial, z) > 6_300_000)) return null;
+  const eccentricitySquared = FLATTENING * (2 - FLATTENING);
+  const polarRadius = EQUATORIAL_RADIUS_METRES * (1 - FLATTENING);
+  const secondEccentricitySquared = eccentricitySquared / (1 - eccentricitySquared);
+  let reduced = Math.atan2(z, (1 - FLATTENING) * equatorial);
+  let latitude = 0;
+  for (let i = 0; i < 4; i++) {
+    latitude = Math.atan2(
+      z + secondEccentricitySquared * polarRadius * Math.sin(reduced) ** 3,
+      equatorial - eccentricitySquared * EQUATORIAL_RADIUS_METRES * Math.cos(reduced) ** 3,
+    );
+    reduced = Math.atan2((1 - FLATTENING) * Math.sin(latitude), Math.cos(latitude));
+  }
+  const normal = EQUATORIAL_RADIUS_METRES / Math.sqrt(1 - eccentricitySquared * Math.sin(latitude) ** 2);
+  // Along the ellipsoid's normal; holds at the poles as at the equator.
+  const heightMetres =
+    equatorial * Math.cos(latitude) +
+    z * Math.sin(latitude) -
+    normal * (1 - eccentricitySquared * Math.sin(latitude) ** 2);
+  const degrees = 180 / Math.PI;
+  return { latitudeDegrees: latitude * degrees, longitudeEastDegrees: Math.atan2(y, x) * degrees, heightMetres };
+}
