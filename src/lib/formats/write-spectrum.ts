@@ -27,6 +27,8 @@ export interface WritableSpectrum {
   /** Geocentric ITRS position of the telescope, metres. */
   observatoryMetres: readonly [number, number, number] | null;
   resolvingPower?: number | null;
+  /** Sigma of the line-spread function, ångström; written by `writeSpectrumFits` alone. */
+  lsfSigmaAngstrom?: Float64Array | null;
   /** Further cards, such as TELESCOP and INSTRUME. */
   cards?: Record<string, CardValue>;
 }
@@ -57,7 +59,7 @@ function coordinateType(medium: Medium): string {
   return medium === 'air' ? 'AWAV' : 'WAVE';
 }
 
-/** Writes a FITS file with one binary table, a row a pixel: WAVE, FLUX, and ERR, SKY, MASK where given. */
+/** Writes a FITS file with one binary table, a row a pixel: WAVE, FLUX, and ERR, SKY, MASK, LSFSIGMA where given. */
 export function writeSpectrumFits(spectrum: WritableSpectrum): Uint8Array {
   const unit = spectrum.fluxUnit;
   const columns: OutputColumn[] = [
@@ -69,6 +71,9 @@ export function writeSpectrumFits(spectrum: WritableSpectrum): Uint8Array {
   }
   if (spectrum.sky) columns.push({ name: 'SKY', form: 'D', values: spectrum.sky, unit });
   if (spectrum.mask) columns.push({ name: 'MASK', form: 'J', values: spectrum.mask, description: '0 = good' });
+  if (spectrum.lsfSigmaAngstrom) {
+    columns.push({ name: 'LSFSIGMA', form: 'D', values: spectrum.lsfSigmaAngstrom, unit: 'Angstrom' });
+  }
   const cards = observationCards(spectrum);
   const table = tableExtension(columns, spectrum.wavelength.length, [
     { keyword: 'EXTNAME', value: 'SPECTRUM' },

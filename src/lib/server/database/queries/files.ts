@@ -5,6 +5,7 @@ import type { FileContent } from '$lib/domain/spectrum-summary';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
 import { SpectrumFile, SpectrumRecord } from '../models/observing';
+import { linkCombinations } from './combinations';
 import { exposureKey, linkExposures } from './exposures';
 import { placeSpectra } from './place-spectra';
 
@@ -88,6 +89,7 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
     for (const found of await SpectrumRecord.findAll({ where, attributes, raw: true, transaction })) {
       ids.set(key(found.fileId, found.extension, found.rowIndex), found.id);
     }
+    await linkCombinations(where.fileId, transaction);
     await linkExposures([...new Set(placed.map(({ targetId }) => targetId))], transaction);
     for (const { file, content } of group) {
       const unread = content.shape ? 'needs assignment' : 'failed';

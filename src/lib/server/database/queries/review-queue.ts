@@ -2,7 +2,7 @@ import { QueryTypes } from 'sequelize';
 import { database } from '../connection';
 import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { judgedBy } from './verdicts';
-import { CURRENT_REDUCTION } from './observed';
+import { CURRENT_REDUCTION, OBSERVED } from './observed';
 
 const JUDGED = judgedBy(':userId');
 
@@ -74,7 +74,7 @@ export async function answersOfRepeats(programmeIds: string[]): Promise<TargetAn
     `SELECT s.id, s.target_id AS targetId, m.redshift, m.redshift_error AS redshiftError
       FROM files f JOIN spectra s ON s.file_id = f.id
       JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      WHERE f.programme_id IN (:programmeIds) AND s.target_id IS NOT NULL AND s.superseded_by IS NULL
+      WHERE f.programme_id IN (:programmeIds) AND s.target_id IS NOT NULL AND ${OBSERVED}
         AND m.redshift IS NOT NULL
         AND EXISTS (SELECT 1 FROM spectra x WHERE x.target_id = s.target_id AND x.id <> s.id)
       ORDER BY s.id`,
