@@ -1,8 +1,7 @@
-import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
-import { familyEvidence } from '../evidence';
-import { choleskyInPlace, choleskySolve } from '../fit/solve';
+import { choleskySolve } from '../fit/solve';
 import type { CoarseSpectrum } from './coarse-spectrum';
-import { QUASAR_FEATURES } from './composite';
+import { evidenceOfLines, type Continuum } from './evidence-of-lines';
+import { factorArrow } from './arrow-matrix';
 
 /** Distance of the continuum's knots in ln(wavelength): 10,500 km/s, so that it cannot follow most broad lines. */
 const KNOT_STEP = 0.035;
@@ -14,12 +13,6 @@ const FOREST_SIGMA = 0.3;
 const FOREST_SCATTER = 0.35;
 const LYMAN_ALPHA = 1215.67;
 const LYMAN_LIMIT = 911.75;
-/** Equivalent widths of one quasar are larger or smaller than the composite's together, scatter in ln. */
-const STRENGTH_SIGMA = 0.4;
-const REACH = 3.5;
-/** Wings of a broad line: share of the flux, and width against the core's. */
-const WING_SHARE = 0.3;
-const WING_WIDTH = 2;
 
 /** How well a quasar at one redshift describes the whole spectrum. */
 export interface QuasarFit {
@@ -57,7 +50,7 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
   const prior = priorPrecision(size, knots);
 
   /** Normal equations of the continuum, with the forest's step as the last unknown; returns ln Z without lines. */
-  function setUp({ weight, step, matrix, target, used }: Continuum): number {
+  function setUp({ weight, step, matrix, target, solution, used }: Continuum): number {
     matrix.set(prior);
     target.fill(0);
     for (let k = 0; k < knots; k++) target[k] = 1 / VALUE_SIGMA ** 2;
@@ -81,11 +74,11 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
       for (let a = 0; a < 4; a++) matrix[knots * size + k + a] += ws * basis[4 * i + a];
       matrix[knots * size + knots] += ws * step[i];
     }
-    if (!choleskyInPlace(matrix, used, size)) return -Infinity;
+    if (!factorArrow(matrix, knots, used, size)) return -Infinity;
     for (let k = 0; k < used; k++) log -= Math.log(matrix[k * size + k]);
-    const right = target.slice(0, used);
-    choleskySolve(matrix, right, used, size);
-    for (let k = 0; k < used; k++) log += 0.5 * right[k] * target[k];
+    solution.set(target);
+    choleskySolve(matrix, solution, used, size);
+    for (let k = 0; k < used; k++) log += 0.5 * solution[k] * target[k];
     return log;
   }
 
@@ -96,6 +89,8 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
     firstKnot,
     matrix: new Float64Array(size * size),
     target: new Float64Array(size),
+    solution: new Float64Array(size),
+    knots,
     used: step ? size : knots,
     size,
   });
@@ -126,92 +121,6 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
   };
 }
 
-/** The continuum's normal equations, solved. */
-interface Continuum {
-  weight: Float64Array;
-  step: Float64Array | null;
-  basis: Float64Array;
-  firstKnot: Int32Array;
-  /** Cholesky factor, row-major with stride `size`; the forest's step is the last unknown. */
-  matrix: Float64Array;
-  target: Float64Array;
-  used: number;
-  size: number;
-}
-
-function evidenceOfLines(coarse: CoarseSpectrum, continuum: Continuum, logScale: number, sigmaKms: number): number {
-  const { count: n, logWavelength, flux, level } = coarse;
-  const { weight, step, basis, firstKnot, matrix, target, used, size } = continuum;
-  const columns: { from: number; values: Float64Array; solved: Float64Array }[] = [];
-  const logRatio: number[] = [];
-  const scatter: number[] = [];
-  const right: number[] = [];
-  const solution = target.slice(0, used);
-  choleskySolve(matrix, solution, used, size);
-  for (const feature of QUASAR_FEATURES) {
-    const sigma = (feature.sigmaKms ?? sigmaKms) / SPEED_OF_LIGHT_KMS;
-    const shift = logScale + (feature.shiftKms ?? 0) / SPEED_OF_LIGHT_KMS;
-    const centres = feature.members.map(([rest]) => Math.log(rest) + shift);
-    const low = Math.min(...centres);
-    const high = Math.max(...centres);
-    if (high + sigma < logWavelength[0] || low - sigma > logWavelength[n - 1]) continue;
-    const from = firstAt(logWavelength, low - REACH * sigma);
-    const to = firstAt(logWavelength, high + REACH * sigma);
-    if (to - from < 3) continue;
-    const values = new Float64Array(to - from);
-    feature.members.forEach(([rest, share], m) => {
-      const middle = level[Math.min(n - 1, firstAt(logWavelength, centres[m]))];
-      const height = (share * middle) / (rest * sigma * 2.5066);
-      for (let i = from; i < to; i++) {
-        const t = (logWavelength[i] - centres[m]) / sigma;
-        const wide = feature.sigmaKms ? 0 : (WING_SHARE / WING_WIDTH) * Math.exp((-0.5 * t * t) / WING_WIDTH ** 2);
-        values[i - from] += height * ((feature.sigmaKms ? 1 : 1 - WING_SHARE) * Math.exp(-0.5 * t * t) + wide);
-      }
-    });
-    const cross = new Float64Array(used);
-    let rightValue = 0;
-    for (let i = from; i < to; i++) {
-      const wv = weight[i] * values[i - from];
-      rightValue += wv * flux[i];
-      for (let a = 0; a < 4; a++) cross[firstKnot[i] + a] += wv * basis[4 * i + a];
-      if (step) cross[used - 1] += wv * step[i];
-    }
-    for (let k = 0; k < used; k++) rightValue -= cross[k] * solution[k];
-    // Half of the solution is enough: the inner products of L^-1 B are those of B^T (L L^T)^-1 B.
-    for (let i = 0; i < used; i++) {
-      let sum = cross[i];
-      for (let k = 0; k < i; k++) sum -= matrix[i * size + k] * cross[k];
-      cross[i] = sum / matrix[i * size + i];
-    }
-    columns.push({ from, values, solved: cross });
-    logRatio.push(Math.log(feature.equivalentWidth));
-    scatter.push(feature.scatter);
-    right.push(rightValue);
-  }
-  const m = columns.length;
-  if (m === 0) return -Infinity;
-  const gram = new Float64Array(m * m);
-  for (let a = 0; a < m; a++) {
-    for (let b = 0; b <= a; b++) {
-      const p = columns[a];
-      const q = columns[b];
-      let sum = 0;
-      const to = Math.min(p.from + p.values.length, q.from + q.values.length);
-      for (let i = Math.max(p.from, q.from); i < to; i++)
-        sum += weight[i] * p.values[i - p.from] * q.values[i - q.from];
-      for (let k = 0; k < used; k++) sum -= p.solved[k] * q.solved[k];
-      gram[a * m + b] = sum;
-      gram[b * m + a] = sum;
-    }
-    gram[a * m + a] = Math.max(gram[a * m + a], 0) * (1 + 1e-6) + 1e-9;
-  }
-  return familyEvidence(
-    { count: m, gram, right: Float64Array.from(right) },
-    { logRatio: Float64Array.from(logRatio), scatter: Float64Array.from(scatter) },
-    { mean: 0, sigma: STRENGTH_SIGMA },
-  ).logEvidence;
-}
-
 /** Values of the four cubic B-splines that reach over a knot interval, times `scale`. */
 function cubicBasis(t: number, scale: number, into: Float64Array, at: number): void {
   const s = scale / 6;
@@ -233,15 +142,4 @@ function priorPrecision(size: number, knots: number): Float64Array {
   }
   matrix[knots * size + knots] = 1 / FOREST_SIGMA ** 2;
   return matrix;
-}
-
-function firstAt(values: Float64Array, x: number): number {
-  let low = 0;
-  let high = values.length;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    if (values[middle] < x) low = middle + 1;
-    else high = middle;
-  }
-  return low;
 }
