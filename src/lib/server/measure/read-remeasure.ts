@@ -32,3 +32,6 @@ export async function readRemeasure(
 export async function listRemeasures(actor: Actor | null): Promise<RemeasureSummary[]> {
   return remeasureSummaries({ programmeIds: programmesWhere(actor, 'measurement.compare') });
 }
+
+/** Ids of the programmes in which the actor may have spectra measured again. */
+export const mayRepeatIn = (actor: Actor | null): string[] => programmesWhere(actor, 'measurement.repeat');
