@@ -1,6 +1,6 @@
 import { equivalentWidthPrior } from './equivalent-width-prior';
 import { evidenceOfFamily } from './family-weight';
-import { significanceOnFeatures } from './feature-share';
+import { sharesOfFeatures, type FeatureShares } from './feature-share';
 import { artefactLogOdds } from './features';
 import { BROAD_COMPONENTS, CORE_COMPONENTS, type LineComponent } from './fit/components';
 import { fitErrors, type FitErrors } from './fit/fit-errors';
@@ -22,8 +22,8 @@ export interface FittedCandidate {
   ownEvidence: number;
   /** Of a quasar's, the part that its broad lines bring. */
   broadEvidence: number;
-  /** Significance of its lines on every feature. */
-  onFeatures: Float64Array;
+  /** What its lines bring on every feature. */
+  onFeatures: FeatureShares;
   /** Indices of the features its lines explain. */
   explained: number[];
   /** What the errors of the fit are multiplied by. */
@@ -117,8 +117,8 @@ export function weighFit(
       bestFamily = family;
     }
   }
-  const onFeatures = significanceOnFeatures(context, fit);
-  const explained = features.map((_, index) => index).filter((index) => onFeatures[index] > 2.5);
+  const onFeatures = sharesOfFeatures(context, fit);
+  const explained = features.map((_, index) => index).filter((index) => onFeatures.significance[index] > 2.5);
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
   const ownEvidence = best + peakWidth + broken + equivalentWidthPrior(context, fit);
@@ -154,15 +154,21 @@ export function allowForArtefacts(context: WeighContext, candidates: readonly Fi
   }
 }
 
-/** Log odds that artefacts made every feature a candidate explains. */
-function artefactsOf({ features }: WeighContext, candidate: FittedCandidate): number {
+/**
+ * Log odds that artefacts made every feature a candidate explains. Where they describe a feature better than the
+ * candidate does, all that it gained there is theirs.
+ */
+function artefactsOf(
+  { features }: WeighContext,
+  { explained, onFeatures, noiseFactor, kind }: FittedCandidate,
+): number {
   let artefacts = 0;
-  for (const j of candidate.explained) {
-    const own = candidate.onFeatures[j];
+  for (const j of explained) {
     // A forest of absorption makes a quasar's spectrum rough without making its emission doubtful.
-    const rough = features[j].rough && candidate.kind !== 'broad';
-    const whole = artefactLogOdds(features[j], (rough ? own : features[j].bounded) / candidate.noiseFactor);
-    artefacts += rough ? whole : Math.min(whole, 0.5 * (own / candidate.noiseFactor) ** 2);
+    const rough = features[j].rough && kind !== 'broad';
+    const seen = rough ? onFeatures.significance[j] : features[j].bounded;
+    const odds = artefactLogOdds(features[j], seen / noiseFactor);
+    artefacts += rough ? odds : Math.min(odds, onFeatures.gain[j] / noiseFactor ** 2);
   }
   return artefacts;
 }

@@ -14,11 +14,16 @@ interface Share {
   flux: number;
 }
 
-/**
- * Significance, before scaling, that the fitted lines have on every feature, faults of the continuum counted as noise.
- * Every line belongs to the nearest feature within 2.5 widths, so that none is counted twice; 0 where no line lies.
- */
-export function significanceOnFeatures(context: WeighContext, fit: JointFit): Float64Array {
+/** What fitted lines bring on every feature, before errors are scaled; 0 where no line lies. */
+export interface FeatureShares {
+  /** Significance, faults of the continuum counted as noise. */
+  significance: Float64Array;
+  /** Log likelihood, without such faults. */
+  gain: Float64Array;
+}
+
+/** What the fitted lines bring on every feature. Each belongs to the nearest within 2.5 widths, so that none counts twice. */
+export function sharesOfFeatures(context: WeighContext, fit: JointFit): FeatureShares {
   const { features } = context;
   const stretch = Math.exp(fit.logScale);
   const shares: Share[][] = features.map(() => []);
@@ -28,11 +33,13 @@ export function significanceOnFeatures(context: WeighContext, fit: JointFit): Fl
     let squares = 0;
     const inside = new Map<number, number>();
     for (const member of component.members) {
+      const j = nearestFeature(context, Math.log(member.rest * stretch), fit.sigmaKms[component.width]);
+      if (j < 0) continue;
       const alone = component.members.length === 1;
       const part = alone ? 1 : informationOf(context, member, stretch, fit.sigmaKms[component.width]);
+      // A tied line that makes no feature brought nothing: what its component gained lies on the others.
       squares += part;
-      const j = nearestFeature(context, Math.log(member.rest * stretch), fit.sigmaKms[component.width]);
-      if (j >= 0) inside.set(j, (inside.get(j) ?? 0) + part);
+      inside.set(j, (inside.get(j) ?? 0) + part);
     }
     if (!(squares > 0)) return;
     for (const [j, square] of inside) {
@@ -42,7 +49,15 @@ export function significanceOnFeatures(context: WeighContext, fit: JointFit): Fl
       faults[j] = Math.max(faults[j], continuumFault(context.data, continuum, fit, rest, component.width));
     }
   });
-  return Float64Array.from(shares, (share, j) => combined(fit, share, faults[j]));
+  const gain = new Float64Array(features.length);
+  const significance = new Float64Array(features.length);
+  shares.forEach((share, j) => {
+    const { flux, total } = combined(fit, share);
+    if (!(total > 0)) return;
+    gain[j] = 0.5 * total;
+    significance[j] = flux / Math.sqrt(flux ** 2 / total + faults[j]);
+  });
+  return { significance, gain };
 }
 
 /** Pixels a profile is written on. */
@@ -79,7 +94,7 @@ function nearestFeature(context: WeighContext, logWavelength: number, sigmaKms: 
   return nearest;
 }
 
-function combined(fit: JointFit, share: readonly Share[], fault: number): number {
+function combined(fit: JointFit, share: readonly Share[]): { flux: number; total: number } {
   const n = fit.components.length;
   let total = 0;
   let flux = 0;
@@ -87,5 +102,5 @@ function combined(fit: JointFit, share: readonly Share[], fault: number): number
     flux += a.flux;
     for (const b of share) total += a.flux * fit.gram[a.component * n + b.component] * b.flux;
   }
-  return total > 0 ? flux / Math.sqrt(flux ** 2 / total + fault) : 0;
+  return { flux, total };
 }
