@@ -9,8 +9,12 @@ export type VerdictKind = z.infer<typeof verdictKindSchema>;
 
 const comment = z.string().trim().max(4000).default('');
 const flags = z.array(flagSchema).max(12).default([]);
-/** Time from the spectrum's appearance to the verdict, seconds; over a day it was left lying. */
-const lookSeconds = z.coerce.number().min(0).max(86_400).optional();
+/** Time of the look while the page was in sight and in use, seconds. Whatever a page counts, a look has 15 minutes at most. */
+const lookSeconds = z.coerce
+  .number()
+  .min(0)
+  .transform((seconds) => Math.min(seconds, 900))
+  .optional();
 const redshift = z.coerce.number().min(-0.01).max(20);
 /** Stretches left out of the fit that the verdict rests on. */
 const masks = z.union([masksTextSchema, masksSchema]).optional();

@@ -25,6 +25,7 @@ const TABLE = {
   'target.combine': { roles: ['observer', 'scientist', 'curator'], scope: 'submit' },
   'review.read-statistics': { roles: ['scientist', 'curator'], scope: 'read' },
   'review.read-people': { roles: ['curator'], scope: 'read' },
+  'review.set': { roles: ['curator'], scope: 'publish' },
   'catalogue.read-draft': { roles: ['curator'], scope: 'read' },
   'catalogue.draft': { roles: ['curator'], scope: 'publish' },
   'catalogue.freeze': { roles: ['curator'], scope: 'publish' },

@@ -2,6 +2,7 @@ import { goto, invalidateAll } from '$app/navigation';
 import { navigating } from '$app/state';
 import type { SubmitFunction } from '@sveltejs/kit';
 import { announcer } from '../../../announcer.svelte';
+import type { LookClock } from './look-clock';
 import type { ReviewState } from './review-state.svelte';
 import { deserialize } from '$app/forms';
 
@@ -35,6 +36,8 @@ export class VerdictDesk {
   undoing = $state(false);
   /** Verdicts sent and not yet answered. */
   pending = $state(0);
+  /** How long the spectrum on the desk has been looked at. */
+  clock: LookClock | null = null;
   #context: () => Context;
 
   constructor(context: () => Context) {
@@ -51,9 +54,8 @@ export class VerdictDesk {
       return cancel();
     }
     review.given = true;
-    if (review.shownAt !== null) {
-      formData.set('lookSeconds', ((performance.now() - review.shownAt) / 1000).toFixed(1));
-    }
+    const seconds = this.clock?.seconds(performance.now()) ?? null;
+    if (seconds !== null) formData.set('lookSeconds', seconds.toFixed(1));
     this.pending++;
     const said = kind === 'no redshift' ? 'no redshift' : `${review.redshift.toFixed(5)}, ${review.confidence}`;
     const sent = { spectrumId: review.id, name, action: action.toString(), form: formData };

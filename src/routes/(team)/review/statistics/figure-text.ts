@@ -15,3 +15,16 @@ export function lookTimeText(seconds: number | null): string {
   const whole = Math.round(seconds);
   return `${Math.floor(whole / 60)} min ${String(whole % 60).padStart(2, '0')} s`;
 }
+
+/** `37 of 40`. */
+export const ofText = (part: number, whole: number): string => `${part} of ${whole}`;
+
+/** `(80 to 97 %)`; empty without a share. */
+export const rangeText = (share: { low: number; high: number } | null): string =>
+  share === null ? '' : `(${Math.round(share.low * 100)} to ${Math.round(share.high * 100)} %)`;
+
+/** `12 % (−3 to 27 %)`, a difference of shares with its interval. */
+export function differenceText({ difference, low, high }: { difference: number; low: number; high: number }): string {
+  const percent = (value: number) => trueMinus(String(Math.round(value * 100) || 0));
+  return `${percent(difference)} % (${percent(low)} to ${percent(high)} %)`;
+}
