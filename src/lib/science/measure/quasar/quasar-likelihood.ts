@@ -113,11 +113,21 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
     lastForest = logScale;
   }
 
+  // Candidates are compared again after some of them were refined: what was weighed is not weighed twice.
+  const known = new Map<number, QuasarFit[]>();
+
   return function weigh(logScale: number, sigmaKms: number): QuasarFit {
-    const forest = Math.log(LYMAN_ALPHA) + logScale > start + 0.005;
-    if (forest && lastForest !== logScale) growForest(logScale);
-    const lines = evidenceOfLines(coarse, forest ? own : plain, logScale, sigmaKms);
-    return { logScale, sigmaKms, logEvidence: (forest ? forestLog - nothing : 0) + lines };
+    let fits = known.get(logScale);
+    if (!fits) known.set(logScale, (fits = []));
+    let fit = fits.find((other) => other.sigmaKms === sigmaKms);
+    if (!fit) {
+      const forest = Math.log(LYMAN_ALPHA) + logScale > start + 0.005;
+      if (forest && lastForest !== logScale) growForest(logScale);
+      const lines = evidenceOfLines(coarse, forest ? own : plain, logScale, sigmaKms);
+      fit = { logScale, sigmaKms, logEvidence: (forest ? forestLog - nothing : 0) + lines };
+      fits.push(fit);
+    }
+    return fit;
   };
 }
 
