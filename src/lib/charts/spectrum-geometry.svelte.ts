@@ -1,6 +1,6 @@
 import { axisExponent, axisTicks } from './layout/axis-ticks';
 import { binColumns, binCurve } from './layout/bin-columns';
-import { fluxScale } from './layout/flux-scale';
+import { fluxScale, type FluxScale } from './layout/flux-scale';
 import { pixelEdges, pixelRange } from './layout/pixel-edges';
 import { smoothInverseVariance } from './layout/smooth';
 import { spectrumFrame } from './layout/spectrum-frame';
@@ -18,12 +18,16 @@ export interface PlottedSpectrum {
 interface Input {
   spectrum: PlottedSpectrum;
   view: { from: number; to: number };
-  smooth: boolean;
+  /** Gaussian sigma of the smoothing, pixels; 0 for none. */
+  smoothPixels: number;
   bands: ObserverBands;
+  /** Ends of the flux axis set by hand; null where they follow the data. */
+  fluxRange: FluxScale | null;
+  /** Factor on the height of an axis that follows the data. */
+  fluxZoom: number;
+  residuals: boolean;
 }
 
-/** Gaussian sigma of the smoothing key, pixels. */
-const SMOOTH_SIGMA_PIXELS = 1.5;
 /** Above this many pixels a column they are gathered, below it each is drawn as a step. */
 const GATHER_FROM = 1.3;
 
@@ -39,18 +43,21 @@ export class SpectrumGeometry {
 
   // One signal a field: a new view must not smooth the flux anew.
   #spectrum = $derived.by(() => this.#input().spectrum);
-  #smooth = $derived.by(() => this.#input().smooth);
+  #smoothPixels = $derived.by(() => this.#input().smoothPixels);
+  #fluxRange = $derived.by(() => this.#input().fluxRange);
+  #fluxZoom = $derived.by(() => this.#input().fluxZoom);
+  #residuals = $derived.by(() => this.#input().residuals);
   #from = $derived.by(() => this.#input().view.from);
   #to = $derived.by(() => this.#input().view.to);
   #bands = $derived.by(() => this.#input().bands);
 
-  frame = $derived.by(() => spectrumFrame(this.width, this.height, this.#spectrum.sky !== null));
+  frame = $derived.by(() => spectrumFrame(this.width, this.height, this.#spectrum.sky !== null, this.#residuals));
   edges = $derived.by(() => pixelEdges(this.#spectrum.wavelength));
-  flux = $derived.by(() => {
+  #smoothed = $derived.by(() => {
     const { flux, error } = this.#spectrum;
-    return this.#smooth ? smoothInverseVariance(flux, error, SMOOTH_SIGMA_PIXELS) : flux;
+    return this.#smoothPixels > 0 ? smoothInverseVariance(flux, error, this.#smoothPixels) : { flux, error };
   });
-  pixels = $derived.by(() => ({ ...this.#spectrum, flux: this.flux, edges: this.edges }));
+  pixels = $derived.by(() => ({ ...this.#spectrum, ...this.#smoothed, edges: this.edges }));
   range = $derived.by(() => pixelRange(this.#spectrum.wavelength, this.#from, this.#to));
   perColumn = $derived.by(() => (this.range[1] - this.range[0]) / this.frame.plotWidth);
 
@@ -58,9 +65,13 @@ export class SpectrumGeometry {
     if (this.perColumn <= GATHER_FROM) return null;
     return binColumns(this.pixels, this.#from, this.#to, Math.round(this.frame.plotWidth));
   });
-  continuumColumns = $derived.by(() => this.binned(this.#spectrum.continuum));
 
   scale = $derived.by(() => {
+    if (this.#fluxRange) return this.#fluxRange;
+    const { bottom, top } = this.#dataScale;
+    return { bottom, top: bottom + (top - bottom) * this.#fluxZoom };
+  });
+  #dataScale = $derived.by(() => {
     const { frame, columns, range } = this;
     const { wavelength, error } = this.#spectrum;
     const columnAngstrom = (this.#to - this.#from) / frame.plotWidth;
@@ -68,7 +79,7 @@ export class SpectrumGeometry {
     const margin = Math.max(0.5, columnAngstrom / 2);
     const drawn = columns
       ? columns.mean
-      : this.flux.slice(...range).map((value, k) => (error[range[0] + k] > 0 ? value : NaN));
+      : this.pixels.flux.slice(...range).map((value, k) => (error[range[0] + k] > 0 ? value : NaN));
     const placeOf = (k: number) => (columns ? this.#from + (k + 0.5) * columnAngstrom : wavelength[range[0] + k]);
     return fluxScale(drawn, (k) => !isInBand(this.#bands.skyLines, placeOf(k), margin));
   });
@@ -76,7 +87,8 @@ export class SpectrumGeometry {
   exponent = $derived.by(() => axisExponent(Math.max(this.scale.top, -this.scale.bottom)));
   fluxTicks = $derived.by(() => {
     const unit = 10 ** this.exponent;
-    const { values, decimals } = axisTicks(this.scale.bottom / unit, this.scale.top / unit, 5);
+    const count = this.frame.fluxBottom - this.frame.fluxTop < 150 ? 3 : 5;
+    const { values, decimals } = axisTicks(this.scale.bottom / unit, this.scale.top / unit, count);
     return values.map((value) => ({ value: value * unit, text: value.toFixed(decimals) }));
   });
 
@@ -95,6 +107,6 @@ export class SpectrumGeometry {
 
   /** A curve in the columns of the flux, or null where single pixels are drawn. */
   binned(curve: Float64Array): Float64Array | null {
-    return this.columns && binCurve(curve, this.#spectrum.error, this.columns);
+    return this.columns && binCurve(curve, this.pixels.error, this.columns);
   }
 }

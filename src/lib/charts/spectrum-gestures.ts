@@ -10,6 +10,10 @@ interface Options {
   onchoose: (line: string) => void;
   onhover: (x: number | null) => void;
   ondragging: (on: boolean) => void;
+  /** Whether a drag brushes a stretch of wavelength instead of moving the redshift. */
+  brush: () => boolean;
+  onbrushing: (stretch: { from: number; to: number } | null) => void;
+  onbrush: (from: number, to: number) => void;
 }
 
 /** Movement in CSS pixels below which a press is a click, not a drag. */
@@ -21,7 +25,8 @@ const WHEEL_STEP = 30 / 299_792.458;
 /**
  * What the pointer does in a spectrum plot: drag moves the redshift so that what was under the pointer stays under it;
  * Shift and drag pans; a click on a label chooses its line; Shift and wheel zooms about the pointer; the wheel alone moves
- * the redshift once the plot has the focus, so that a page that scrolls still scrolls. Each has a key and a field too.
+ * the redshift once the plot has the focus, so that a page that scrolls still scrolls. With the brush a drag marks a
+ * stretch instead, and Escape lets it go. Each has a key and a field too.
  */
 export function spectrumGestures(options: Options) {
   return (plot: HTMLElement) => {
@@ -40,6 +45,7 @@ export function spectrumGestures(options: Options) {
         redshift: options.redshift(),
         view: { ...options.view() },
         pan: event.shiftKey,
+        brush: options.brush() && !event.shiftKey && !line,
         moved: false,
       };
       plot.setPointerCapture(event.pointerId);
@@ -50,8 +56,9 @@ export function spectrumGestures(options: Options) {
       if (!start) return options.onhover(event.pointerType === 'touch' ? null : x);
       const distance = x - start.x;
       if (!start.moved && Math.abs(distance) < CLICK_PIXELS) return;
-      if (!start.moved) options.ondragging(!start.pan);
+      if (!start.moved) options.ondragging(!start.pan && !start.brush);
       start.moved = true;
+      if (start.brush) return options.onbrushing(stretchTo(start, x));
       const angstrom = (distance / options.geometry.frame.plotWidth) * (start.view.to - start.view.from);
       if (start.pan) options.onview(start.view.from - angstrom, start.view.to - angstrom);
       else options.onredshift((1 + start.redshift) * (1 + angstrom / start.anchor) - 1);
@@ -59,8 +66,26 @@ export function spectrumGestures(options: Options) {
 
     function up(event: PointerEvent) {
       if (start && !start.moved && start.line && event.type === 'pointerup') options.onchoose(start.line);
+      if (start?.brush && start.moved && event.type === 'pointerup') {
+        const { from, to } = stretchTo(start, xOf(event));
+        options.onbrush(from, to);
+      }
+      options.onbrushing(null);
       start = null;
       options.ondragging(false);
+    }
+
+    /** The stretch from where the press began, inside the frame. */
+    function stretchTo({ x: from }: Start, to: number): { from: number; to: number } {
+      const { left, plotWidth } = options.geometry.frame;
+      const inside = (at: number) => options.geometry.toWavelength(Math.min(left + plotWidth, Math.max(left, at)));
+      return { from: inside(Math.min(from, to)), to: inside(Math.max(from, to)) };
+    }
+
+    function escape(event: KeyboardEvent) {
+      if (event.key !== 'Escape' || !start?.brush) return;
+      start = null;
+      options.onbrushing(null);
     }
 
     function wheel(event: WheelEvent) {
@@ -85,9 +110,11 @@ export function spectrumGestures(options: Options) {
     ] as const;
     for (const [type, listener] of listeners) plot.addEventListener(type, listener as EventListener);
     plot.addEventListener('wheel', wheel, { passive: false });
+    document.addEventListener('keydown', escape);
     return () => {
       for (const [type, listener] of listeners) plot.removeEventListener(type, listener as EventListener);
       plot.removeEventListener('wheel', wheel);
+      document.removeEventListener('keydown', escape);
     };
   };
 }
@@ -100,5 +127,6 @@ interface Start {
   redshift: number;
   view: { from: number; to: number };
   pan: boolean;
+  brush: boolean;
   moved: boolean;
 }

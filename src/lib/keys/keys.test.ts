@@ -14,7 +14,16 @@ describe('COMMANDS', () => {
   });
   it('lets no key that decides repeat while it is held down', () => {
     const repeating = COMMAND_IDS.filter((id) => COMMANDS[id].mayRepeat);
-    expect(repeating).toEqual(['left', 'right', 'farLeft', 'farRight', 'zoomIn', 'zoomOut']);
+    expect(repeating).toEqual([
+      'left',
+      'right',
+      'farLeft',
+      'farRight',
+      'zoomIn',
+      'zoomOut',
+      'fluxTaller',
+      'fluxFlatter',
+    ]);
   });
   it('has a confidence key for each of the four words', () => {
     expect((['secure', 'probable', 'ambiguous', 'none'] as const).map((word) => COMMANDS[word].keys[0])).toEqual([

@@ -21,11 +21,22 @@ export function keysOf(id: CommandId, choices: KeyChoices): readonly string[] {
 /** The command that a key gives in a scope, or null. */
 export function commandOfKey(key: string, scope: Scope, choices: KeyChoices): CommandId | null {
   const here = COMMAND_IDS.filter((id) => COMMANDS[id].scope === scope || COMMANDS[id].scope === 'everywhere');
-  return here.find((id) => keysOf(id, choices).includes(key)) ?? null;
+  return foremost(
+    here.filter((id) => keysOf(id, choices).includes(key)),
+    choices,
+  );
+}
+
+/** A person's own choice outlives a command that comes later with the same key of its own. */
+function foremost(having: readonly CommandId[], choices: KeyChoices): CommandId | null {
+  return having.find((id) => choices.remapped[id] !== undefined) ?? having[0] ?? null;
 }
 
 /** The command that already has a key, if any other has: two commands may not share one. */
 export function conflictOf(id: CommandId, key: string, choices: KeyChoices): CommandId | null {
   const own = { ...choices, charactersOff: false };
-  return COMMAND_IDS.find((other) => other !== id && keysOf(other, own).includes(key)) ?? null;
+  return foremost(
+    COMMAND_IDS.filter((other) => other !== id && keysOf(other, own).includes(key)),
+    own,
+  );
 }

@@ -2,7 +2,7 @@ import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import type { ExpectedLine } from '../expected-line';
 import { pixelRange } from '../layout/pixel-edges';
 import { rungScale } from '../layout/rung-scale';
-import type { ObserverBands } from '../observer-bands';
+import type { Band, ObserverBands } from '../observer-bands';
 import { drawSkyLines, drawTelluric, hatch } from './draw-bands';
 import { strokeCurve, strokePixels } from './draw-steps';
 import type { DrawnPixels } from './draw-spectrum';
@@ -33,6 +33,7 @@ export function drawLadder(
   model: Float64Array,
   lines: readonly ExpectedLine[],
   bands: ObserverBands,
+  masks: readonly Band[],
 ): void {
   const { left, plotWidth, top, rungHeight, halfRangeKms } = frame;
   const bottom = top + rungHeight * lines.length;
@@ -61,6 +62,10 @@ export function drawLadder(
     const [start, end] = [toX(first), toX(last)];
     if (start > left) hatch(context, style.colour.telluric, left, area.top, start - left, rungHeight);
     if (end < area.right) hatch(context, style.colour.telluric, end, area.top, area.right - end, rungHeight);
+    for (const { from, to } of masks) {
+      const [a, b] = [Math.max(left, toX(from)), Math.min(area.right, toX(to))];
+      if (b > a) hatch(context, style.colour['rule-strong'], a, area.top, b - a, rungHeight);
+    }
     context.strokeStyle = style.colour.flux;
     context.lineWidth = 1;
     const usable = (i: number) => pixels.error[i] > 0 && pixels.error[i] < Infinity;

@@ -25,7 +25,6 @@ export interface SpectrumScene {
   range: [number, number];
   /** Null where pixels are wider than columns and are drawn one by one. */
   columns: Columns | null;
-  continuumColumns: Float64Array | null;
   scale: FluxScale;
   fluxTicks: readonly number[];
   toX: (wavelength: number) => number;
@@ -34,9 +33,9 @@ export interface SpectrumScene {
 
 const USABLE = (error: number) => error > 0 && error < Infinity;
 
-/** Everything that stands still while the redshift moves: ground, bands, envelope, error, continuum, flux, cuts. */
+/** Everything that stands still while the redshift moves: ground, bands, envelope, error, flux, cuts. */
 export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumScene): void {
-  const { frame, style, pixels, columns, continuumColumns, range, toX, toY } = scene;
+  const { frame, style, pixels, columns, range, toX, toY } = scene;
   const area = { left: frame.left, right: frame.left + frame.plotWidth, top: frame.fluxTop, bottom: frame.fluxBottom };
   context.fillStyle = style.colour.well;
   context.fillRect(area.left, area.top, frame.plotWidth, area.bottom - area.top);
@@ -55,7 +54,7 @@ export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumS
       if (top === top) context.fillRect(area.left + column, top, 1, Math.max(1, bottom - top));
     }
   }
-  const stroke = (name: 'error' | 'continuum' | 'flux', colour: 'error-line' | 'continuum' | 'flux') => {
+  const stroke = (name: 'error' | 'flux', colour: 'error-line' | 'flux') => {
     context.strokeStyle = style.colour[colour];
     context.lineWidth = style.width[name];
     context.setLineDash(style.dash[name]);
@@ -65,15 +64,6 @@ export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumS
   stroke('error', 'error-line');
   if (columns) strokeColumns(context, area.left, columns.error, toY, false);
   else strokePixels(context, range, pixels.edges, (i) => (USABLE(pixels.error[i]) ? pixels.error[i] : NaN), toX, toY);
-  stroke('continuum', 'continuum');
-  if (continuumColumns) strokeColumns(context, area.left, continuumColumns, toY, false);
-  else
-    strokeCurve(
-      context,
-      range,
-      (i) => toX(pixels.wavelength[i]),
-      (i) => toY(pixels.continuum[i]),
-    );
   stroke('flux', 'flux');
   if (columns) strokeColumns(context, area.left, columns.mean, toY, true);
   else strokePixels(context, range, pixels.edges, fluxAt, toX, toY);
@@ -83,30 +73,31 @@ export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumS
   if (pixels.sky) drawSky(context, scene, pixels.sky);
 }
 
-/** The model, on a canvas of its own above the rest, since it alone changes while the redshift is dragged. */
-export function drawModel(
+/** Continuum or model, on a canvas of its own above the rest, since they alone change while the redshift is dragged. */
+export function drawCurve(
   context: CanvasRenderingContext2D,
   scene: SpectrumScene,
-  model: Float64Array,
-  modelColumns: Float64Array | null,
+  name: 'continuum' | 'model',
+  curve: Float64Array,
+  columns: Float64Array | null,
 ): void {
   const { frame, style, pixels, toX, toY } = scene;
   context.save();
   context.beginPath();
   context.rect(frame.left, frame.fluxTop, frame.plotWidth, frame.fluxBottom - frame.fluxTop);
   context.clip();
-  context.strokeStyle = style.colour.model;
-  context.lineWidth = style.width.model;
-  context.setLineDash(style.dash.model);
+  context.strokeStyle = style.colour[name];
+  context.lineWidth = style.width[name];
+  context.setLineDash(style.dash[name]);
   context.lineJoin = 'round';
-  const range = [Math.max(0, scene.range[0] - 1), Math.min(model.length, scene.range[1] + 1)] as const;
-  if (modelColumns) strokeColumns(context, frame.left, modelColumns, toY, false);
+  const range = [Math.max(0, scene.range[0] - 1), Math.min(curve.length, scene.range[1] + 1)] as const;
+  if (columns) strokeColumns(context, frame.left, columns, toY, false);
   else
     strokeCurve(
       context,
       range,
       (i) => toX(pixels.wavelength[i]),
-      (i) => toY(model[i]),
+      (i) => toY(curve[i]),
     );
   context.restore();
 }

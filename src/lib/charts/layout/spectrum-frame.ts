@@ -8,14 +8,20 @@ export interface SpectrumFrame {
   plotWidth: number;
   fluxTop: number;
   fluxBottom: number;
+  /** Panel of residuals between flux and sky; both ends equal where it is not shown. */
+  residualTop: number;
+  residualBottom: number;
   /** Equal where there is no sky panel. */
   skyTop: number;
   skyBottom: number;
 }
 
+/** The axis of the residuals ends at this many errors. */
+export const RESIDUAL_SIGMAS = 5;
 const LABEL_ROW = 92;
 const AXIS_ROW = 36;
 const SKY_PANEL = 34;
+const RESIDUAL_PANEL = 48;
 const RIGHT = 8;
 
 /** Left edge and width shared by everything that stands on the wavelength axis. */
@@ -25,11 +31,14 @@ export function wavelengthFrame(width: number): { small: boolean; left: number; 
   return { small, left, plotWidth: Math.max(1, width - left - RIGHT) };
 }
 
-export function spectrumFrame(width: number, height: number, hasSky: boolean): SpectrumFrame {
+export function spectrumFrame(width: number, height: number, hasSky: boolean, residuals = false): SpectrumFrame {
   const skyBottom = height - AXIS_ROW;
   const skyTop = hasSky ? skyBottom - SKY_PANEL : skyBottom;
-  const fluxBottom = Math.max(LABEL_ROW + 1, hasSky ? skyTop - 4 : skyBottom);
-  return { width, height, ...wavelengthFrame(width), fluxTop: LABEL_ROW, fluxBottom, skyTop, skyBottom };
+  const residualBottom = hasSky ? skyTop - 4 : skyBottom;
+  const residualTop = residuals ? residualBottom - RESIDUAL_PANEL : residualBottom;
+  const fluxBottom = Math.max(LABEL_ROW + 1, residuals ? residualTop - 4 : residualTop);
+  const panels = { fluxTop: LABEL_ROW, fluxBottom, residualTop, residualBottom, skyTop, skyBottom };
+  return { width, height, ...wavelengthFrame(width), ...panels };
 }
 
 /** Keeps a stretch of wavelength inside [low, high] and at least `least` wide. */

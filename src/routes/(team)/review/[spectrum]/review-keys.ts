@@ -1,4 +1,5 @@
 import type { KeyHandlers } from '$lib/keys/bind-keys';
+import { plotChoices } from './plot-choices.svelte';
 import type { ReviewState } from './review-state.svelte';
 
 interface Desk {
@@ -11,6 +12,8 @@ interface Desk {
   help: { open: () => void };
   lines: { open: () => void };
   names: { open: () => void };
+  masks: { open: () => void };
+  plot: { open: () => void };
   passing: { open: () => void } | null;
   /** Goes to the question on this spectrum, where there is one. */
   question: () => void;
@@ -36,6 +39,13 @@ export function reviewKeys(desk: () => Desk): KeyHandlers {
     zoomOut: state((review) => review.zoom(2)),
     whole: state((review) => review.showAll()),
     smooth: state((review) => (review.smooth = !review.smooth)),
+    fluxTaller: state((review) => review.zoomFlux(1 / 1.5)),
+    fluxFlatter: state((review) => review.zoomFlux(1.5)),
+    residuals: () => plotChoices.change({ residuals: !plotChoices.residuals }),
+    plot: () => desk().plot.open(),
+    brush: state(({ masks }) => (masks.brush = !masks.brush)),
+    masks: () => desk().masks.open(),
+    undoMask: state(({ masks }) => masks.undo()),
     lines: () => desk().lines.open(),
     secure: judged(({ review }) => (review.confidence = 'secure')),
     probable: judged(({ review }) => (review.confidence = 'probable')),
@@ -44,6 +54,7 @@ export function reviewKeys(desk: () => Desk): KeyHandlers {
     accept: judged(({ bar }) => bar.give('candidate')),
     setByHand: judged(({ bar }) => bar.give('by hand')),
     noRedshift: judged(({ bar }) => bar.give('no redshift')),
+    second: judged(({ review }) => review.keepSecond()),
     undo: judged(() => document.querySelector<HTMLFormElement>('#undo-verdict')?.requestSubmit()),
     flags: judged(({ bar }) => void bar.focusFlags()),
     comment: judged(({ bar }) => void bar.focusComment()),

@@ -5,10 +5,12 @@ import { pixelEdges } from '$lib/charts/layout/pixel-edges';
 import { NO_BANDS, observerBands } from '$lib/charts/observer-bands';
 import type { Confidence } from '$lib/domain/confidence';
 import type { Flag } from '$lib/domain/flag';
+import type { Mask } from '$lib/domain/mask';
 import type { Measurement } from '$lib/domain/measurement';
 import type { ReviewSpectrum } from '$lib/domain/review-spectrum';
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
 import { lineFitter, type LineFitter } from './line-fit';
+import { MaskList } from './mask-list.svelte';
 
 export const REDSHIFT_MIN = -0.003;
 export const REDSHIFT_MAX = 7.5;
@@ -16,6 +18,20 @@ export const REDSHIFT_MAX = 7.5;
 const CLOSE_UP = 420;
 /** Intrinsic FWHM of lines where no candidate has one, km/s: a usual galaxy. */
 const USUAL_FWHM_KMS = 200;
+
+/** Nearer than this, km/s, a second redshift is the first one again. */
+const SAME_KMS = 100;
+
+interface SecondRedshift {
+  redshift: number;
+  /** 1 sigma; null where it was moved by hand and not snapped. */
+  redshiftError: number | null;
+}
+
+/** What a person said of the spectrum before, as a second look takes it up. */
+interface Before {
+  masks: readonly Mask[];
+}
 
 interface View {
   from: number;
@@ -38,12 +54,18 @@ export class ReviewState {
   candidate = $state<number | null>(null);
   /** 1 sigma of a redshift moved by hand: known only once it was snapped to a fit. */
   snappedError = $state<number | null>(null);
+  /** A second object in the same light, kept while the redshift moves on. */
+  second = $state.raw<SecondRedshift | null>(null);
   /** Whether a person has moved the redshift since the spectrum or a candidate was taken. */
   moved = $state(false);
 
   view = $state.raw<View>({ from: 0, to: 1 });
   chosenLine = $state<string | null>(null);
   smooth = $state(false);
+  /** Factor on the height of the flux axis; the axis itself follows the data. */
+  fluxZoom = $state(1);
+  /** Ends of the flux axis set by hand, unit of flux; null where it follows the data. */
+  fluxRange = $state.raw<{ bottom: number; top: number } | null>(null);
   /** Wavelength under the pointer, ångström. */
   pointer = $state<number | null>(null);
 
@@ -54,8 +76,18 @@ export class ReviewState {
   /** A verdict is on its way: the same key once more is not a second one. */
   given = $state(false);
 
-  /** @param pixels where they are here already: the plots then stay as they are and only draw anew */
-  constructor(spectrum: { id: string; measurement: Measurement }, pixels: ReviewSpectrum | null = null) {
+  readonly masks: MaskList;
+
+  /**
+   * @param pixels where they are here already: the plots then stay as they are and only draw anew
+   * @param before the person's own verdict that stands
+   */
+  constructor(
+    spectrum: { id: string; measurement: Measurement },
+    pixels: ReviewSpectrum | null = null,
+    before: Before | null = null,
+  ) {
+    this.masks = new MaskList(before?.masks, () => (this.snappedError = null));
     this.id = spectrum.id;
     this.measurement = spectrum.measurement;
     if (spectrum.measurement.candidates.length > 0) this.choose(0);
@@ -69,11 +101,16 @@ export class ReviewState {
     return { from: left[0], to: right[right.length - 1] };
   });
   bands = $derived.by(() => (this.pixels ? observerBands(this.pixels) : NO_BANDS));
-  #fitter: LineFitter | null = $derived.by(() => this.pixels && lineFitter(this.pixels));
+  #fitter: LineFitter | null = $derived.by(() => this.pixels && lineFitter(this.pixels, this.masks.masks));
   /** The width of the candidate last chosen: held while the redshift moves, so that a drag stays quick. */
   #fwhmKms = $state(USUAL_FWHM_KMS);
-  fit: { lines: FittedLine[]; model: Float64Array } = $derived.by(
-    () => this.#fitter?.at(this.redshift, this.#fwhmKms) ?? { lines: [], model: new Float64Array() },
+  fit: { lines: FittedLine[]; model: Float64Array; continuum: Float64Array } = $derived.by(
+    () =>
+      this.#fitter?.at(this.redshift, this.#fwhmKms) ?? {
+        lines: [],
+        model: new Float64Array(),
+        continuum: new Float64Array(),
+      },
   );
   lines = $derived.by(() => expectedLines(this.fit.lines));
   outside = $derived.by(() => (this.pixels ? linesOutside(this.redshift, this.whole.from, this.whole.to) : []));
@@ -125,12 +162,29 @@ export class ReviewState {
   snap(): void {
     if (!this.#fitter) return;
     const best = this.#fitter.snap(this.redshift, this.#fwhmKms);
+    // A fit that leaves pixels out is another fit than the engine's, however near.
+    const own = this.masks.masks.length > 0;
     const near = this.measurement.candidates.findIndex(
       ({ redshift }) => Math.abs(redshift - best.redshift) / (1 + redshift) < 25 / SPEED_OF_LIGHT_KMS,
     );
-    if (near >= 0) return this.choose(near);
+    if (near >= 0 && !own) return this.choose(near);
     this.move(best.redshift);
     this.snappedError = best.redshiftError;
+  }
+
+  /** Keeps the redshift as the second one while another is looked for; the same again lets it go. */
+  keepSecond(): void {
+    const { redshift, candidate, snappedError } = this;
+    const apartKms = (SPEED_OF_LIGHT_KMS * Math.abs(redshift - (this.second?.redshift ?? Infinity))) / (1 + redshift);
+    if (apartKms < SAME_KMS) return this.dropSecond();
+    const redshiftError = candidate === null ? snappedError : this.measurement.candidates[candidate].redshiftError;
+    this.second = { redshift, redshiftError };
+    if (!this.flags.includes('two redshifts')) this.flag('two redshifts', true);
+  }
+
+  dropSecond(): void {
+    this.second = null;
+    this.flag('two redshifts', false);
   }
 
   /** Centres all views on a line; choosing it again shows the whole spectrum. */
@@ -149,6 +203,12 @@ export class ReviewState {
     }
   }
 
+  /** Stretches or squeezes the flux axis about its foot. */
+  zoomFlux(factor: number): void {
+    this.fluxRange = null;
+    this.fluxZoom = Math.min(100, Math.max(0.01, this.fluxZoom * factor));
+  }
+
   /** Zooms about the chosen line, or about the middle of the view. */
   zoom(factor: number): void {
     const line = this.lines.find((one) => one.line === this.chosenLine);
@@ -159,6 +219,8 @@ export class ReviewState {
 
   showAll(): void {
     this.chosenLine = null;
+    this.fluxZoom = 1;
+    this.fluxRange = null;
     this.show(this.whole.from, this.whole.to);
   }
 
@@ -175,6 +237,8 @@ export class ReviewState {
         ? 'The redshift was moved by hand: set it, or choose a candidate'
         : 'There is no candidate to accept';
     if (kind === 'by hand' && !this.moved) return 'Move the redshift first';
+    const apart = this.second && Math.abs(this.redshift - this.second.redshift) / (1 + this.redshift);
+    if (apart !== null && apart * SPEED_OF_LIGHT_KMS < SAME_KMS) return 'The second redshift is the first one';
     if (this.confidence === null) return 'Give a confidence';
     if (this.confidence === 'none') return 'The word none goes with no redshift';
     return null;
