@@ -7,6 +7,7 @@ describe('matchAnswer', () => {
       { name: 'a.fits', already: false },
       { name: 'b.fits', already: true },
     ],
+    archives: [{ name: 'night.zip' }],
     refused: [{ name: 'c.fits', what: 'c.fits is empty.', mend: 'Check that it was written whole.' }],
   };
   it('gives each file its own fate in the order sent', () => {
@@ -15,6 +16,9 @@ describe('matchAnswer', () => {
       { state: 'taken' },
       { state: 'already' },
     ]);
+  });
+  it('tells an archive, whose members are still to be taken, from a file', () => {
+    expect(matchAnswer(['night.zip'], answer)).toEqual([{ state: 'archive' }]);
   });
   it('never calls a file taken that the answer does not name', () => {
     expect(matchAnswer(['d.fits'], answer)).toEqual([{ state: 'unknown' }]);
@@ -26,6 +30,6 @@ describe('matchAnswer', () => {
       { name: 'tab.fits', already: false },
       { name: long.slice(-255), already: false },
     ];
-    expect(matchAnswer(names, { files, refused: [] })).toEqual([{ state: 'taken' }, { state: 'taken' }]);
+    expect(matchAnswer(names, { files, refused: [], archives: [] })).toEqual([{ state: 'taken' }, { state: 'taken' }]);
   });
 });

@@ -1,10 +1,15 @@
 import { SvelteMap } from 'svelte/reactivity';
-import { Rate } from '../rate';
+import { withdraw } from './announce';
+import type { Checker, Verdict } from './checker';
 import type { Collected } from './collect-dropped';
+import { isReadable } from './is-readable';
 import { matchAnswer } from './match-answer';
 import { nextBatch } from './next-batch';
 import { sendBatch, type BatchResult } from './send-batch';
-import { UploadEntry, type EntryState } from './upload-entry.svelte';
+import { sendChunks } from './send-chunks';
+import { tallyEntries } from './tally-entries';
+import { UploadEntry } from './upload-entry.svelte';
+import { UploadSpeed } from './upload-speed.svelte';
 
 /** Requests at once: browsers keep six connections a server, and the page itself needs some of them. */
 const REQUESTS = 3;
@@ -12,6 +17,8 @@ const REQUESTS = 3;
 const AGAIN_AFTER_MS = [1_000, 3_000, 8_000];
 /** A pause ends by itself after this long, for those who sleep; a person may end it at once. */
 const PAUSE_MS = 15_000;
+/** Answers that leave a file out before it is given up. */
+const UNNAMED = 3;
 
 /** The files a person gives to one night: sent a few at a time, each with its own fate. */
 export class Upload {
@@ -22,30 +29,11 @@ export class Upload {
   paused = $state<string | null>(null);
   /** Left out before sending: hidden files, and paths the browser could not read. */
   leftOut = $state<{ hidden: number; unreadable: string[] }>({ hidden: 0, unreadable: [] });
-  bytesPerSecond = $state<number | null>(null);
-  filesPerSecond = $state<number | null>(null);
-  secondsLeft = $state<number | null>(null);
+  readonly speed = new UploadSpeed();
 
-  tally = $derived.by(() => {
-    const counts: Record<EntryState, number> = {
-      waiting: 0,
-      sending: 0,
-      taken: 0,
-      already: 0,
-      refused: 0,
-      cancelled: 0,
-    };
-    let bytesSettled = 0;
-    let bytesTotal = 0;
-    for (const { state, sizeBytes } of this.entries) {
-      counts[state]++;
-      if (state !== 'cancelled') bytesTotal += sizeBytes;
-      if (state === 'taken' || state === 'already' || state === 'refused') bytesSettled += sizeBytes;
-    }
-    return { ...counts, total: this.entries.length, bytesSettled, bytesTotal };
-  });
+  tally = $derived(tallyEntries(this.entries));
   bytesSent = $derived(this.tally.bytesSettled + [...this.inFlight.values()].reduce((sum, bytes) => sum + bytes, 0));
-  active = $derived(this.tally.waiting + this.tally.sending > 0);
+  active = $derived(this.tally.checking + this.tally.waiting + this.tally.sending > 0);
   /** Grows with each request that ended; the page looks at the night again when it does. */
   answers = $state(0);
 
@@ -55,10 +43,21 @@ export class Upload {
   private broken = 0;
   private requests = 0;
   private pause: ReturnType<typeof setTimeout> | undefined;
-  private byteRate = new Rate();
-  private fileRate = new Rate();
 
-  constructor(private readonly nightId: string) {}
+  /** @param checker finds out what is there already before anything is sent; without it all is sent */
+  constructor(
+    private readonly nightId: string,
+    private readonly checker: Checker | null = null,
+  ) {}
+
+  /** One whose derived values outlive the page that asked first. */
+  static lasting(nightId: string, checker: Checker): Upload {
+    let upload: Upload | undefined;
+    $effect.root(() => {
+      upload = new Upload(nightId, checker);
+    });
+    return upload!;
+  }
 
   add({ found, hidden, unreadable }: Collected): void {
     const added = found.map(({ file, path }) => new UploadEntry(file, path));
@@ -67,27 +66,33 @@ export class Upload {
       unreadable: [...this.leftOut.unreadable, ...unreadable],
     };
     this.entries = [...this.entries, ...added];
-    this.waiting.push(...added);
-    this.run();
+    this.prepare(added);
   }
 
   /** Stops sending. What is on its way may still arrive; sending it again does no harm. */
   cancel(): void {
     this.waiting = [];
-    for (const entry of this.entries) {
-      if (entry.state === 'waiting' || entry.state === 'sending') entry.state = 'cancelled';
-    }
+    const taken = this.entries.filter(({ state }) => ['checking', 'waiting', 'sending'].includes(state));
+    for (const entry of taken) entry.state = 'cancelled';
+    this.takeBack(taken);
     clearTimeout(this.pause);
     this.paused = null;
     this.abort.abort();
     this.abort = new AbortController();
   }
 
+  /** Takes one file back while that still keeps it from being sent. What went up of a large one waits for a week. */
+  cancelOne(entry: UploadEntry): void {
+    if (!entry.canCancel) return;
+    entry.state = 'cancelled';
+    entry.abort?.abort();
+    this.waiting = this.waiting.filter((other) => other !== entry);
+    this.takeBack([entry]);
+  }
+
   /** Sends what was cancelled after all. */
   sendCancelled(): void {
-    const again = this.entries.filter((entry) => entry.state === 'cancelled');
-    for (const entry of again) entry.state = 'waiting';
-    this.waiting.push(...again);
+    this.prepare(this.entries.filter((entry) => entry.state === 'cancelled'));
     this.goOn();
   }
 
@@ -106,6 +111,37 @@ export class Upload {
     this.leftOut = { hidden: 0, unreadable: [] };
   }
 
+  private prepare(entries: UploadEntry[]): void {
+    if (!this.checker) {
+      for (const entry of entries) entry.state = 'waiting';
+      this.waiting.push(...entries);
+      this.run();
+      return;
+    }
+    for (const entry of entries) entry.state = 'checking';
+    void this.checker.check(entries, (entry, verdict) => this.settleChecked(entry, verdict));
+  }
+
+  private settleChecked(entry: UploadEntry, verdict: Verdict): void {
+    if (entry.state !== 'checking') return;
+    entry.doneBytes = 0;
+    if (verdict.state === 'refused') entry.refuse(verdict.what, verdict.mend);
+    else if (verdict.state === 'already') entry.state = 'already';
+    else {
+      entry.state = 'waiting';
+      this.waiting.push(entry);
+      this.run();
+    }
+    if (verdict.state !== 'send') this.answers++;
+  }
+
+  /** Files that are not wanted any more are not missing either. The night's page offers it again where this fails. */
+  private takeBack(entries: UploadEntry[]): void {
+    if (!this.checker || entries.length === 0) return;
+    const paths = entries.map(({ announcedPath }) => announcedPath);
+    withdraw(this.nightId, paths).catch(() => {});
+  }
+
   private run(): void {
     while (this.running < REQUESTS && this.waiting.length > 0 && this.paused === null) {
       const batch = this.waiting.splice(0, nextBatch(this.waiting));
@@ -121,10 +157,18 @@ export class Upload {
     const request = ++this.requests;
     for (const entry of batch) entry.state = 'sending';
     const { signal } = this.abort;
-    const result = await sendBatch(this.nightId, batch, signal, (bytes) => {
+    const onSent = (bytes: number) => {
+      if (batch[0].isLarge) batch[0].doneBytes = bytes;
       this.inFlight.set(request, bytes);
       this.time();
-    });
+    };
+    let result: BatchResult;
+    if (batch[0].isLarge) {
+      batch[0].abort = new AbortController();
+      const either = AbortSignal.any([signal, batch[0].abort.signal]);
+      result = await sendChunks(this.nightId, batch[0], either, onSent);
+      batch[0].abort = null;
+    } else result = await sendBatch(this.nightId, batch, signal, onSent);
     this.inFlight.delete(request);
     if (signal.aborted) return;
     this.answers++;
@@ -141,7 +185,8 @@ export class Upload {
       );
       outcomes.forEach((outcome, i) => {
         if (outcome.state === 'refused') batch[i].refuse(outcome.what, outcome.mend);
-        else if (outcome.state === 'unknown') this.putBack([batch[i]]);
+        else if (outcome.state === 'unknown') this.askAgain(batch[i]);
+        else if (outcome.state === 'archive') [batch[i].state, batch[i].isArchive] = ['taken', true];
         else batch[i].state = outcome.state;
       });
     } else if (result.kind === 'refused') {
@@ -149,6 +194,16 @@ export class Upload {
     } else if (result.kind === 'broken') {
       await this.settleBroken(batch, result.what);
     }
+  }
+
+  /** An answer that says nothing of a file is not to be trusted; one that never does ends in a refusal, not in a loop. */
+  private askAgain(entry: UploadEntry): void {
+    if (entry.unnamed++ < UNNAMED) this.putBack([entry]);
+    else
+      entry.refuse(
+        'The server took it and did not say what became of it.',
+        'Look for it in the night, or drop it again.',
+      );
   }
 
   private settleRefused(batch: UploadEntry[], refusal: { status: number; what: string; mend: string }): void {
@@ -187,39 +242,10 @@ export class Upload {
   }
 
   private time(): void {
-    const now = performance.now();
-    const { bytesTotal, waiting, sending, taken, already, refused } = this.tally;
-    this.byteRate.mark(this.bytesSent, now);
-    this.fileRate.mark(taken + already + refused, now);
-    this.bytesPerSecond = this.byteRate.perSecond(now);
-    this.filesPerSecond = this.fileRate.perSecond(now);
-    // Large files wait for the line, many small ones for the server: the slower of the two says when it is over.
-    const ends = [
-      this.byteRate.secondsLeft(bytesTotal - this.bytesSent, now),
-      this.fileRate.secondsLeft(waiting + sending, now),
-    ].filter((seconds) => seconds !== null);
-    this.secondsLeft = ends.length > 0 ? Math.max(...ends) : null;
+    const { bytesAlready, bytesTotal, checking, waiting, sending, taken, refused } = this.tally;
+    this.speed.mark(
+      { bytes: this.bytesSent - bytesAlready, files: taken + refused },
+      { bytes: bytesTotal - this.bytesSent, files: checking + waiting + sending },
+    );
   }
-}
-
-async function isReadable(file: File): Promise<boolean> {
-  try {
-    await file.slice(0, 1).arrayBuffer();
-    return true;
-  } catch {
-    return false;
-  }
-}
-
-// eslint-disable-next-line svelte/prefer-svelte-reactivity -- nothing draws this map; a page asks it once
-const uploads = new Map<string, Upload>();
-
-/** The upload of a night in this browser tab: it goes on while other pages are looked at. */
-export function uploadOf(nightId: string): Upload {
-  if (typeof window === 'undefined') return new Upload(nightId);
-  if (!uploads.has(nightId)) {
-    // Its derived values must outlive the page that asked first.
-    $effect.root(() => void uploads.set(nightId, new Upload(nightId)));
-  }
-  return uploads.get(nightId)!;
 }

@@ -1,5 +1,7 @@
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
+import type { Checker, Verdict } from './checker';
 import { collectChosen } from './collect-dropped';
+import type { UploadEntry } from './upload-entry.svelte';
 import { Upload } from './upload.svelte';
 
 type Reply = { status: number; body: unknown } | 'broken' | 'never';
@@ -150,6 +152,37 @@ describe('Upload', () => {
     made.add(collected);
     await pass(3_000);
     expect(states(made)).toEqual(['taken', 'refused', 'taken']);
+  });
+
+  it('gives a file up that no answer ever names, instead of sending it for ever', async () => {
+    answer = () => taken([]);
+    const made = upload(2);
+    await pass(500);
+    expect(states(made)).toEqual(['refused', 'refused']);
+    expect(requests.length).toBeLessThan(10);
+  });
+
+  it('takes one file back, and sends the others', async () => {
+    const made = upload(50);
+    made.cancelOne(made.entries[49]);
+    await pass(500);
+    expect(made.tally).toMatchObject({ taken: 49, cancelled: 1 });
+    expect(requests.flat()).not.toContain('0049.fits');
+  });
+
+  it('sends nothing that the checker finds there already or refuses', async () => {
+    const checker = {
+      check: async (entries: UploadEntry[], settle: (entry: UploadEntry, verdict: Verdict) => void) => {
+        settle(entries[0], { state: 'already' });
+        settle(entries[1], { state: 'refused', what: 'It is empty.', mend: 'Write it again.' });
+        settle(entries[2], { state: 'send' });
+      },
+    } as unknown as Checker;
+    const made = new Upload('night', checker);
+    made.add(files(3));
+    await pass(100);
+    expect(states(made)).toEqual(['already', 'refused', 'taken']);
+    expect(requests).toEqual([['0002.fits']]);
   });
 
   it('takes back what has no answer yet when cancelled, and sends just that when asked', async () => {

@@ -4,6 +4,5 @@ import type { RequestEvent } from './$types';
 
 /** Files as multipart/form-data, any number of parts, streamed to storage: `curl -F file=@a.fits -F file=@b.fits`. */
 export const POST = endpoint('signed-in', async ({ params, locals, request }: RequestEvent) => {
-  const { files, refused } = await receiveUpload(locals.actor, params.night, request);
-  return Response.json({ files, refused }, { status: 202 });
+  return Response.json(await receiveUpload(locals.actor, params.night, request), { status: 202 });
 });

@@ -1,0 +1,15 @@
+import { Checker } from './checker';
+import { Upload } from './upload.svelte';
+
+const uploads = new Map<string, Upload>();
+
+/** The upload of a night in this browser tab: it goes on while other pages are looked at. */
+export function uploadOf(nightId: string): Upload {
+  if (typeof window === 'undefined') return new Upload(nightId);
+  let upload = uploads.get(nightId);
+  if (!upload) {
+    upload = Upload.lasting(nightId, new Checker(nightId));
+    uploads.set(nightId, upload);
+  }
+  return upload;
+}
