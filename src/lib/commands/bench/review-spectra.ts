@@ -2,7 +2,7 @@ import { writeSpectrumImage } from '$lib/formats/write-spectrum';
 import { drawRecipe } from '$lib/science/simulate/draw-recipe';
 import { simulateSpectrum } from '$lib/science/simulate/simulate-spectrum';
 import type { SpectrumClass } from '$lib/science/simulate/recipe';
-import { DEMO_SITE } from '$lib/science/simulate/demo-night';
+import { DEMO_SITE } from '$lib/science/simulate/demo-observe';
 import { spectrumSeed } from './plan-spectra';
 
 export const REVIEW_PIXELS = 10_000;

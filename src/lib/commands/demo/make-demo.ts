@@ -8,26 +8,39 @@ import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { listNights } from '$lib/server/ingest/list-nights';
 import { readNight } from '$lib/server/ingest/read-night';
 import { receiveFile } from '$lib/server/ingest/receive-file';
+import { takeTargetList } from '$lib/server/ingest/take-target-list';
 import { listCatalogues } from '$lib/server/query/list-catalogues';
 import { createCatalogue } from '$lib/server/release/create-catalogue';
 import { createDraft } from '$lib/server/release/create-draft';
 import { freezeDraft } from '$lib/server/release/freeze-draft';
 import { listDrafts } from '$lib/server/release/list-drafts';
 import { listQueue } from '$lib/server/review/list-queue';
+import { listTargets, listTargetsSchema } from '$lib/server/review/list-targets';
 import { readSpectrum } from '$lib/server/review/read-spectrum';
 import { recordVerdict } from '$lib/server/review/record-verdict';
 import { makeDemoPeople } from './accounts';
-import { demoFiles, demoInstrument } from './demo-files';
+import { demoFiles, demoInstrument, demoTargetList, earlierDemoFiles, type DemoFile } from './demo-files';
+import { differ } from './differ';
 
 const CIVIL_DATE = '2026-09-14';
 export const DEMO_CATALOGUE = 'halloran-lines';
 const LOOK_EVERY_MS = 500;
 
-async function ensureNight(observer: Actor): Promise<string> {
-  const found = (await listNights(observer)).find((night) => night.civilDate === CIVIL_DATE);
-  const notes = 'Clear, seeing 0.9 arcsec, thin cloud after 06:00 UTC. Five fields, three exposures of 900 s each.';
-  const { id } = found ?? (await createNight(observer, { civilDate: CIVIL_DATE, notes }));
-  const files = demoFiles();
+interface WantedNight {
+  civilDate: string;
+  notes: string;
+  files: DemoFile[];
+}
+
+const mainNight = (): WantedNight => ({
+  civilDate: CIVIL_DATE,
+  notes: 'Clear, seeing 0.9 arcsec, thin cloud after 06:00 UTC. Five fields, three exposures of 900 s each.',
+  files: demoFiles(),
+});
+
+async function ensureNight(observer: Actor, { civilDate, notes, files }: WantedNight): Promise<string> {
+  const found = (await listNights(observer)).find((night) => night.civilDate === civilDate);
+  const { id } = found ?? (await createNight(observer, { civilDate, notes }));
   if (!found || found.files < files.length) {
     for (const { name, bytes } of files) await receiveFile(observer, id, { name, stream: Readable.from([bytes]) });
   }
@@ -95,8 +108,12 @@ export async function makeDemo(accountsPath: string): Promise<{ observer: Actor;
   const { programme, actors } = await makeDemoPeople(accountsPath, demoInstrument);
   const actor = (firstName: string) => actors.get(firstName)!;
   const observer = actor('Rua');
-  const nightId = await ensureNight(observer);
-  await whenMeasured(observer, nightId);
+  const nightId = await ensureNight(observer, mainNight());
+  const earlier: string[] = [];
+  for (const night of earlierDemoFiles()) earlier.push(await ensureNight(observer, night));
+  for (const id of [nightId, ...earlier]) await whenMeasured(observer, id);
+  const { lists } = await listTargets(observer, listTargetsSchema.parse({ programme }));
+  if (lists.length === 0) await takeTargetList(observer, programme, demoTargetList());
   const catalogues = await listCatalogues(actor('Maren'));
   if (!catalogues.some(({ slug, releases }) => slug === DEMO_CATALOGUE && releases > 0)) {
     await judge([actor('Ines'), actor('Koji')], nightId);
@@ -104,6 +121,8 @@ export async function makeDemo(accountsPath: string): Promise<{ observer: Actor;
       if (!(error instanceof Refusal)) throw error;
       throw new Error(`The demo release could not be frozen: ${error.message}`);
     });
+    // After the release: an open question would stand against freezing it.
+    await differ([actor('Ines'), actor('Koji')], earlier[0]);
   }
   return { observer, nightId };
 }
