@@ -21,7 +21,9 @@ export const RESIDUAL_SIGMAS = 5;
 const LABEL_ROW = 92;
 const AXIS_ROW = 36;
 const SKY_PANEL = 34;
-const RESIDUAL_PANEL = 48;
+const RESIDUAL_PANEL = 46;
+/** Room above the residuals for what they are. */
+const RESIDUAL_TITLE = 17;
 const RIGHT = 8;
 
 /** Left edge and width shared by everything that stands on the wavelength axis. */
@@ -36,7 +38,7 @@ export function spectrumFrame(width: number, height: number, hasSky: boolean, re
   const skyTop = hasSky ? skyBottom - SKY_PANEL : skyBottom;
   const residualBottom = hasSky ? skyTop - 4 : skyBottom;
   const residualTop = residuals ? residualBottom - RESIDUAL_PANEL : residualBottom;
-  const fluxBottom = Math.max(LABEL_ROW + 1, residuals ? residualTop - 4 : residualTop);
+  const fluxBottom = Math.max(LABEL_ROW + 1, residuals ? residualTop - RESIDUAL_TITLE : residualTop);
   const panels = { fluxTop: LABEL_ROW, fluxBottom, residualTop, residualBottom, skyTop, skyBottom };
   return { width, height, ...wavelengthFrame(width), ...panels };
 }
