@@ -107,16 +107,14 @@ export class Upload {
   /** Forgets the list of an upload that has ended. */
   clear(): void {
     if (this.active) return;
-    this.entries = [];
-    this.leftOut = { hidden: 0, unreadable: [] };
+    [this.entries, this.leftOut] = [[], { hidden: 0, unreadable: [] }];
   }
 
   private prepare(entries: UploadEntry[]): void {
     if (!this.checker) {
       for (const entry of entries) entry.state = 'waiting';
       this.waiting.push(...entries);
-      this.run();
-      return;
+      return this.run();
     }
     for (const entry of entries) entry.state = 'checking';
     void this.checker.check(entries, (entry, verdict) => this.settleChecked(entry, verdict));
