@@ -18,6 +18,14 @@ export interface AbsorptionFamily {
 
 const at = (name: string) => lineByName(name).wavelengthVacuum;
 
+/** Paschen lines of stars as hot as A: rest wavelength and equivalent width; common practice, no single source. */
+const PASCHEN: readonly (readonly [number, number])[] = [
+  [at('Paschen-14 8601'), 2.5],
+  [at('Paschen-iota 8753'), 3],
+  [at('Paschen-theta 8865'), 3.5],
+  [at('Paschen-eta 9017'), 4],
+];
+
 /*
  * Strengths: equivalent widths of old and young stellar populations in ångström, common practice (Lick-type indices of
  * Worthey et al. 1994, rounded, from memory). TiO: heads of the gamma and gamma' systems (Gray & Corbally 2009, from
@@ -61,6 +69,28 @@ export const ABSORPTION_FAMILIES: readonly AbsorptionFamily[] = [
     ],
   },
   {
+    name: 'sun-like star',
+    wide: false,
+    starOnly: true,
+    features: [
+      [at('Ca II K 3935'), 6, 0.7],
+      [at('Ca II H 3970'), 6, 0.6],
+      [at('H-delta 4103'), 2.5, 0.8],
+      [at('G band 4306'), 4, 0.6],
+      [at('H-gamma 4342'), 2.5, 0.8],
+      [at('H-beta 4863'), 3, 0.7],
+      [5175.4, 3, 0.7],
+      [at('Fe I 5272'), 2, 0.7],
+      [at('Fe I 5337'), 1.8, 0.7],
+      [5893.5, 2.5, 0.8],
+      [at('H-alpha 6565'), 2.5, 0.7],
+      [at('Ca II 8500'), 1.4, 0.5],
+      [at('Ca II 8544'), 3.2, 0.5],
+      [at('Ca II 8665'), 3, 0.5],
+      ...PASCHEN.map(([rest, strength]) => [rest, 0.4 * strength, 0.8] as const),
+    ],
+  },
+  {
     name: 'hot star',
     wide: true,
     starOnly: true,
@@ -71,6 +101,7 @@ export const ABSORPTION_FAMILIES: readonly AbsorptionFamily[] = [
       [at('H-gamma 4342'), 10, 0.4],
       [at('H-beta 4863'), 10, 0.4],
       [at('H-alpha 6565'), 8, 0.5],
+      ...PASCHEN.map(([rest, strength]) => [rest, strength, 0.6] as const),
     ],
   },
   {

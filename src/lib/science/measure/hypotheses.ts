@@ -155,6 +155,8 @@ function withoutEmission(working: WorkingSpectrum, features: readonly Feature[])
   const weight = Float64Array.from(working.weight);
   for (let i = 0; i < working.count; i++) if (working.mask[i] & MASK.telluric) weight[i] = 0;
   for (const feature of features) {
+    // Where dips are as common as bumps, a bump is what deep absorption leaves of the continuum beside it.
+    if (feature.rough) continue;
     const pixel = Math.min(working.count - 1, lowerBound(working.wavelength, feature.wavelength));
     const sigma = Math.hypot(working.lsfSigma[pixel], (feature.wavelength * feature.sigmaKms) / SPEED_OF_LIGHT_KMS);
     const end = lowerBound(working.wavelength, feature.wavelength + 3 * sigma);

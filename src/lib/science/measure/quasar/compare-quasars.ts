@@ -16,7 +16,7 @@ const INFORMATION = 300;
  * against "no lines"; the others stand behind it by what the whole spectrum says, narrow lines and priors added.
  *
  * @returns the log evidence that another description of the same broad shapes deserves, given its own against none of
- * them: a quasar's lines and a star's bands are taken on the same footing
+ * them: where a quasar describes them better, both are taken on the same footing
  */
 export function compareQuasars(
   candidates: readonly FittedCandidate[],
@@ -38,5 +38,6 @@ export function compareQuasars(
     candidate.broadEvidence = anchor - (most - whole[i]) / temper;
     candidate.logEvidence = candidate.ownEvidence;
   });
-  return (logEvidence) => Math.min(logEvidence, anchor + (logEvidence - most) / temper);
+  return (logEvidence) =>
+    logEvidence < most ? Math.min(logEvidence, anchor + (logEvidence - most) / temper) : logEvidence;
 }
