@@ -10,6 +10,7 @@ import { JOBS, type JobName } from '$lib/server/queue/jobs';
 import { closeNudges } from '$lib/server/queue/nudge';
 import { closeRedis, redis, redisOptions, channel } from '$lib/server/queue/redis';
 import { queueName, startRelay } from '$lib/server/queue/relay';
+import { postDigests } from '$lib/server/review/post-digests';
 import { plantSpectra } from '$lib/server/review/plant-spectra';
 import { objects } from '$lib/server/storage/storage';
 import { handlers } from './jobs/handlers';
@@ -18,11 +19,12 @@ import { pool } from './thread-pool';
 /** A stalled job is taken over three lost renewals after its lock: lock 15 s, looked for every 5 s. */
 const LOCK_MS = 15_000;
 const STALLED_EVERY_MS = 5_000;
-/** What no event starts is looked for this often: reports of nights that ended, planted spectra that are wanted. */
+/** What no event starts is looked for this often: reports of nights that ended, planted spectra that are wanted, mentions. */
 const ROUNDS_EVERY_MS = 60_000;
 const ROUNDS: [name: string, round: () => Promise<number>][] = [
   ['reports', () => postReports(new Date())],
   ['planted', plantSpectra],
+  ['digests', () => postDigests(new Date())],
 ];
 /** What was begun and left is looked for this often. */
 const CLEAN_EVERY_MS = 3_600_000;

@@ -1,7 +1,7 @@
 import { hashSecret } from '../auth/secrets';
 import { SCOPES, type Actor } from '../auth/permissions';
 import { permitSelf } from '../auth/permit-self';
-import { sessionsOf, tokensOf } from '../database/queries/account';
+import { sessionsOf, tokensOf, wantsMentionLetters } from '../database/queries/account';
 
 export interface Account {
   name: string;
@@ -17,12 +17,18 @@ export interface Account {
     hasRunOut: boolean;
   }[];
   scopes: readonly string[];
+  /** They get a daily letter about mentions. */
+  mentionLetters: boolean;
 }
 
 /** The person's own account: profile, open sessions, bearer tokens (their hashes only are kept, so none is shown). */
 export async function readAccount(actor: Actor | null, sessionId: string | null): Promise<Account> {
   const { userId, name, email, isAdmin } = permitSelf(actor);
-  const [sessions, tokens] = await Promise.all([sessionsOf(userId), tokensOf(userId)]);
+  const [sessions, tokens, mentionLetters] = await Promise.all([
+    sessionsOf(userId),
+    tokensOf(userId),
+    wantsMentionLetters(userId),
+  ]);
   const here = sessionId && hashSecret(sessionId);
   const now = new Date();
   return {
@@ -44,5 +50,6 @@ export async function readAccount(actor: Actor | null, sessionId: string | null)
       hasRunOut: token.expiresAt !== null && token.expiresAt < now,
     })),
     scopes: SCOPES,
+    mentionLetters,
   };
 }

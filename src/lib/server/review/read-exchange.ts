@@ -1,8 +1,10 @@
 import type { ShownComment } from '$lib/domain/spectrum-comment';
 import { Refusal } from '$lib/domain/refusal';
+import { hiddenAnswers } from '../auth/hidden-answer';
 import { may, mayByRole, permit, type Actor } from '../auth/permissions';
 import { judgesOf, standingAssignment, type AssignmentRow } from '../database/queries/assignments';
 import { commentsOn } from '../database/queries/comments';
+import { readersOf } from '../database/queries/mentions';
 import { namedVerdicts } from '../database/queries/looks';
 import { findReviewed } from '../database/queries/reviewed-spectrum';
 import { standingRuling } from '../database/queries/rulings';
@@ -21,6 +23,8 @@ export interface Exchange {
   /** Comments that show once the reader has given a verdict. */
   hiddenComments: number;
   mayComment: boolean;
+  /** Members who can be mentioned in a comment. */
+  mentionable: { id: string; name: string }[];
   /** What became of verdicts that differ; null where the reader may not know, or none do. */
   question: { standing: 'open' | 'ruled'; mayRule: boolean } | null;
 }
@@ -41,30 +45,40 @@ export async function readExchange(actor: Actor | null, spectrumId: string): Pro
   if (!spectrum) throw new Refusal('not-found', 'There is no such spectrum, or it is not measured yet.');
   const { programmeId } = spectrum;
   const reader = permit(actor, 'spectrum.read', programmeId);
-  const [given, ruling, assignment, comments, judges] = await Promise.all([
+  const mayComment = may(actor, 'spectrum.comment', programmeId);
+  const [given, ruling, assignment, comments, judges, readers] = await Promise.all([
     namedVerdicts(spectrumId),
     standingRuling(spectrumId),
     standingAssignment(spectrumId),
     commentsOn(spectrumId),
     may(actor, 'spectrum.assign', programmeId) ? judgesOf(programmeId) : [],
+    mayComment ? readersOf(programmeId) : [],
   ]);
   // Of a planted spectrum nobody sees another's verdict: its results are private.
   const verdicts = spectrum.planted ? given.filter(({ userId }) => userId === reader.userId) : given;
   const { standing, sees, mayRule } = sightOf(reader, programmeId, verdicts, ruling);
   // A third person to an open question may still give a look of their own instead: comments wait for it.
   const open = !mayByRole(reader, 'spectrum.judge', programmeId) || (sees && !mayRule);
-  const shown = comments.filter(({ shownToAll, userId }) => open || shownToAll || userId === reader.userId);
+  // What others wrote may repeat the engine's answer.
+  const hidden = (await hiddenAnswers(reader, programmeId))(spectrumId);
+  const shown = comments.filter(
+    ({ shownToAll, userId }) => userId === reader.userId || (!hidden && (open || shownToAll)),
+  );
   const told = shown.some(({ shownToAll, userId }) => !shownToAll && userId !== reader.userId);
-  const noted = assignment?.told && open && assignment.assignedBy !== reader.userId && assignment.note;
+  const noted = assignment?.told && open && !hidden && assignment.assignedBy !== reader.userId && assignment.note;
   const asked = standing === 'open' || standing === 'ruled';
   if (told || noted || (sees && asked)) await noteSights(reader.userId, [spectrumId]);
   return {
-    passedOn: assignment && !assignment.done ? sayAssignment(assignment, reader, open) : null,
+    passedOn:
+      assignment && !assignment.done
+        ? sayAssignment({ ...assignment, told: hidden ? 1 : assignment.told }, reader, open && !hidden)
+        : null,
     people: judges,
     holder: assignment && !assignment.done ? assignment.userId : null,
     comments: shown.map(({ id, by, text, createdAt }) => ({ id, by, text, at: new Date(createdAt).toISOString() })),
     hiddenComments: comments.length - shown.length,
-    mayComment: may(actor, 'spectrum.comment', programmeId),
+    mayComment,
+    mentionable: readers.filter(({ id }) => id !== reader.userId),
     question: sees && asked ? { standing, mayRule } : null,
   };
 }

@@ -3,6 +3,7 @@ import { endSessions } from '$lib/server/accounts/end-sessions';
 import { makeOwnToken, newTokenSchema } from '$lib/server/accounts/make-own-token';
 import { readAccount } from '$lib/server/accounts/read-account';
 import { profileSchema, renameAccount } from '$lib/server/accounts/rename-account';
+import { setMentionLetters } from '$lib/server/accounts/set-mention-letters';
 import { revokeToken } from '$lib/server/accounts/revoke-token';
 import { parseForm } from '$lib/api/parse-form';
 import { guardedAction, guardedLoad } from '$lib/server/auth/guards';
@@ -18,6 +19,11 @@ export const actions = {
   rename: guardedAction('signed-in', async ({ locals, request }: RequestEvent) => {
     await renameAccount(locals.actor, parseForm(profileSchema, await request.formData()));
     return { done: 'Your name is changed.' };
+  }),
+  letters: guardedAction('signed-in', async ({ locals, request }: RequestEvent) => {
+    const wanted = (await request.formData()).get('mentions') === 'on';
+    await setMentionLetters(locals.actor, wanted);
+    return { done: wanted ? 'You get a daily letter about mentions.' : 'You get no more letters about mentions.' };
   }),
   password: guardedAction('signed-in', async ({ locals, request, getClientAddress }: RequestEvent) => {
     const input = parseForm(passwordSchema, await request.formData());

@@ -1,4 +1,4 @@
-import { Op, type Transaction } from 'sequelize';
+import { Op, QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../connection';
 import { ApiToken, Session } from '../models/people';
 
@@ -22,4 +22,19 @@ export function deleteSessions(
 ): Promise<number> {
   const id = 'id' in which ? which.id : { [Op.ne]: which.allBut };
   return Session.destroy({ where: { userId, id }, transaction });
+}
+
+/** Whether a person wants the daily letter about mentions. */
+export async function wantsMentionLetters(userId: string): Promise<boolean> {
+  const rows = await database().query<{ wanted: number }>(
+    'SELECT u.mention_letters AS wanted FROM users u WHERE u.id = :userId',
+    { replacements: { userId }, type: QueryTypes.SELECT },
+  );
+  return !!rows[0]?.wanted;
+}
+
+export async function storeMentionLetters(userId: string, wanted: boolean): Promise<void> {
+  await database().query('UPDATE users SET mention_letters = :wanted WHERE id = :userId', {
+    replacements: { userId, wanted },
+  });
 }

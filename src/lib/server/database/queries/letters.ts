@@ -2,7 +2,16 @@ import { QueryTypes, type Transaction } from 'sequelize';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
 
-export type LetterKind = 'invitation' | 'night report';
+export type LetterKind = 'invitation' | 'night report' | 'mention digest';
+
+/** What a letter is about; a person has one report of a night, and one digest a day (UTC). */
+export interface LetterAbout {
+  kind: LetterKind;
+  invitationId?: string;
+  nightId?: string;
+  userId?: string;
+  day?: string;
+}
 
 export interface LetterRow {
   id: string;
@@ -14,17 +23,14 @@ export interface LetterRow {
   tries: number;
 }
 
-/** Writes a letter to be sent; null where a person has a night's report already. */
-export async function insertLetter(
-  letter: { kind: LetterKind; invitationId?: string; nightId?: string; userId?: string },
-  transaction: Transaction,
-): Promise<string | null> {
-  const { kind, invitationId = null, nightId = null, userId = null } = letter;
+/** Writes a letter to be sent; null where the person has it already. */
+export async function insertLetter(letter: LetterAbout, transaction: Transaction): Promise<string | null> {
+  const { kind, invitationId = null, nightId = null, userId = null, day = null } = letter;
   const id = newIdentifier();
   await database().query(
-    `INSERT IGNORE INTO letters (id, kind, invitation_id, night_id, user_id)
-      VALUES (:id, :kind, :invitationId, :nightId, :userId)`,
-    { replacements: { id, kind, invitationId, nightId, userId }, transaction },
+    `INSERT IGNORE INTO letters (id, kind, invitation_id, night_id, user_id, day)
+      VALUES (:id, :kind, :invitationId, :nightId, :userId, :day)`,
+    { replacements: { id, kind, invitationId, nightId, userId, day }, transaction },
   );
   const rows = await database().query('SELECT id FROM letters WHERE id = :id', {
     replacements: { id },
