@@ -1,7 +1,7 @@
 import { axisExponent, axisTicks } from './layout/axis-ticks';
 import { binColumns, binCurve } from './layout/bin-columns';
 import { fluxScale, type FluxScale } from './layout/flux-scale';
-import { pixelEdges, pixelRange } from './layout/pixel-edges';
+import { pixelEdges, pixelGaps, pixelRange } from './layout/pixel-edges';
 import { smoothInverseVariance } from './layout/smooth';
 import { spectrumFrame } from './layout/spectrum-frame';
 import { isInBand, type ObserverBands } from './observer-bands';
@@ -53,11 +53,12 @@ export class SpectrumGeometry {
 
   frame = $derived.by(() => spectrumFrame(this.width, this.height, this.#spectrum.sky !== null, this.#residuals));
   edges = $derived.by(() => pixelEdges(this.#spectrum.wavelength));
+  gaps = $derived.by(() => pixelGaps(this.edges));
   #smoothed = $derived.by(() => {
     const { flux, error } = this.#spectrum;
     return this.#smoothPixels > 0 ? smoothInverseVariance(flux, error, this.#smoothPixels) : { flux, error };
   });
-  pixels = $derived.by(() => ({ ...this.#spectrum, ...this.#smoothed, edges: this.edges }));
+  pixels = $derived.by(() => ({ ...this.#spectrum, ...this.#smoothed, edges: this.edges, gaps: this.gaps }));
   range = $derived.by(() => pixelRange(this.#spectrum.wavelength, this.#from, this.#to));
   perColumn = $derived.by(() => (this.range[1] - this.range[0]) / this.frame.plotWidth);
 

@@ -43,6 +43,20 @@ export function drawTelluric(
   }
 }
 
+/** What no pixel covers as a hatch over the whole height. */
+export function drawGaps(
+  context: CanvasRenderingContext2D,
+  style: PlotStyle,
+  area: Area,
+  gaps: readonly { from: number; to: number }[],
+  toX: (wavelength: number) => number,
+): void {
+  for (const { from, to } of gaps) {
+    const [left, right] = [Math.max(area.left, toX(from)), Math.min(area.right, toX(to))];
+    if (right - left > 1) hatch(context, style.colour.telluric, left, area.top, right - left, area.bottom - area.top);
+  }
+}
+
 /** Fills a box with lines rising to the right, 5 px apart. */
 export function hatch(
   context: CanvasRenderingContext2D,

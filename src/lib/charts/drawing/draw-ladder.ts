@@ -3,7 +3,7 @@ import type { ExpectedLine } from '../expected-line';
 import { pixelRange } from '../layout/pixel-edges';
 import { rungScale } from '../layout/rung-scale';
 import type { Band, ObserverBands } from '../observer-bands';
-import { drawSkyLines, drawTelluric, hatch } from './draw-bands';
+import { drawGaps, drawSkyLines, drawTelluric, hatch } from './draw-bands';
 import { strokeCurve, strokePixels } from './draw-steps';
 import type { DrawnPixels } from './draw-spectrum';
 import type { PlotStyle } from './plot-style';
@@ -62,6 +62,7 @@ export function drawLadder(
     const [start, end] = [toX(first), toX(last)];
     if (start > left) hatch(context, style.colour.telluric, left, area.top, start - left, rungHeight);
     if (end < area.right) hatch(context, style.colour.telluric, end, area.top, area.right - end, rungHeight);
+    drawGaps(context, style, area, pixels.gaps, toX);
     for (const { from, to } of masks) {
       const [a, b] = [Math.max(left, toX(from)), Math.min(area.right, toX(to))];
       if (b > a) hatch(context, style.colour['rule-strong'], a, area.top, b - a, rungHeight);

@@ -2,7 +2,7 @@ import type { Columns } from '../layout/bin-columns';
 import type { FluxScale } from '../layout/flux-scale';
 import type { SpectrumFrame } from '../layout/spectrum-frame';
 import type { ObserverBands } from '../observer-bands';
-import { drawSkyLines, drawTelluric } from './draw-bands';
+import { drawGaps, drawSkyLines, drawTelluric } from './draw-bands';
 import { strokeColumns, strokeCurve, strokePixels } from './draw-steps';
 import type { PlotStyle } from './plot-style';
 
@@ -14,6 +14,8 @@ export interface DrawnPixels {
   sky: Float64Array | null;
   continuum: Float64Array;
   edges: { left: Float64Array; right: Float64Array };
+  /** What no pixel covers. */
+  gaps: { from: number; to: number }[];
 }
 
 export interface SpectrumScene {
@@ -45,6 +47,7 @@ export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumS
   context.clip();
   drawSkyLines(context, style, area, scene.bands, toX);
   drawTelluric(context, style, area, scene.bands, toX, 9, 5);
+  drawGaps(context, style, area, pixels.gaps, toX);
   context.fillStyle = style.colour.grid;
   for (const tick of scene.fluxTicks) context.fillRect(area.left, Math.round(toY(tick)), frame.plotWidth, 1);
   if (columns) {

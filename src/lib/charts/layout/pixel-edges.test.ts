@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { nearestPixel, pixelEdges, pixelRange } from './pixel-edges';
+import { nearestPixel, pixelEdges, pixelGaps, pixelRange } from './pixel-edges';
 
 const array = (...values: number[]) => Float64Array.from(values);
 
@@ -10,6 +10,12 @@ describe('pixelEdges', () => {
     expect(left[1]).toBeCloseTo(1.5, 10);
     expect(right[2]).toBeCloseTo(3.505, 10);
     expect(left[3]).toBeCloseTo(9.495, 10);
+  });
+  it('names what no pixel covers, and nothing on a smoothly growing step', () => {
+    const [gap, ...others] = pixelGaps(pixelEdges(array(1, 2, 3, 10, 11)));
+    expect([gap.from, gap.to, others]).toEqual([expect.closeTo(3.505, 9), expect.closeTo(9.495, 9), []]);
+    expect(pixelGaps(pixelEdges(Float64Array.from({ length: 500 }, (_, i) => 4000 * 1.002 ** i)))).toEqual([]);
+    expect(pixelGaps(pixelEdges(array()))).toEqual([]);
   });
   it('finds pixels by bisection', () => {
     const wavelength = array(1, 2, 3, 4);

@@ -18,6 +18,17 @@ export function pixelEdges(wavelength: Float64Array): { left: Float64Array; righ
   return { left, right };
 }
 
+/** Stretches between neighbouring pixels that no pixel covers: gaps between detectors, or pixels left out of a file. */
+export function pixelGaps(edges: { left: Float64Array; right: Float64Array }): { from: number; to: number }[] {
+  const gaps: { from: number; to: number }[] = [];
+  for (let i = 1; i < edges.left.length; i++) {
+    const [from, to] = [edges.right[i - 1], edges.left[i]];
+    // Half a pixel of play: edges of neighbours are computed twice, and steps grow along a spectrum.
+    if (to - from > 0.5 * (edges.right[i] - to)) gaps.push({ from, to });
+  }
+  return gaps;
+}
+
 /** First and one past the last pixel whose centres lie in [from, to], by bisection; empty where there are none. */
 export function pixelRange(wavelength: Float64Array, from: number, to: number): [number, number] {
   return [firstAtLeast(wavelength, from), firstAbove(wavelength, to)];
