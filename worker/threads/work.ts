@@ -15,8 +15,11 @@ interface File {
 
 /** Reads a file and measures its spectra, if they are few; bytes come from storage by their hash, plain objects go back. */
 export async function takeFile({ file, measureUpTo }: { file: File; measureUpTo: number }): Promise<TakenFile> {
+  const start = performance.now();
   const { content, spectra } = openFile(await objects().read(file.sha256), file.name, file.instrument);
-  if (spectra.length > measureUpTo) return { content, results: spectra.map(() => null) };
+  const opened = performance.now();
+  const reading = opened - start;
+  if (spectra.length > measureUpTo) return { content, results: spectra.map(() => null), reading, engine: 0 };
   const results = spectra.map((spectrum) => {
     try {
       return measureOne(spectrum, file.instrument);
@@ -26,7 +29,7 @@ export async function takeFile({ file, measureUpTo }: { file: File; measureUpTo:
       return null;
     }
   });
-  return { content, results };
+  return { content, results, reading, engine: performance.now() - opened };
 }
 
 /** Measures the named rows of a file. */

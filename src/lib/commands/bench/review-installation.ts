@@ -7,6 +7,9 @@ import { join } from 'node:path';
 /** An installation of its own: a production build with real services, the demo's people and a night of the bench's. */
 export interface BenchInstallation {
   origin: string;
+  /** Its data folder, and the process that started its servers. */
+  data: string;
+  pid: number;
   account: (firstName: string) => { email: string; password: string };
   stop: () => Promise<void>;
 }
@@ -25,12 +28,12 @@ function freePort(): Promise<number> {
   });
 }
 
-/** Starts one by the README's own command in a folder that goes when it stops. */
-export async function startInstallation(): Promise<BenchInstallation> {
+/** Starts one by the README's own command in a folder that goes when it stops, with more in its environment. */
+export async function startInstallation(environment: Record<string, string> = {}): Promise<BenchInstallation> {
   const data = mkdtempSync(join(tmpdir(), 'farglow-bench-'));
   const port = await freePort();
   const child = spawn('docker-free-scripts/start', ['--data', data], {
-    env: { ...process.env, PORT: String(port), DATABASE_URL: undefined },
+    env: { ...process.env, ...environment, PORT: String(port), DATABASE_URL: undefined },
     stdio: ['ignore', 'pipe', 'inherit'],
   });
   const gone = new Promise<void>((resolve) => child.once('exit', () => resolve()));
@@ -61,7 +64,7 @@ export async function startInstallation(): Promise<BenchInstallation> {
     password: string;
   }[];
   const account = (firstName: string) => accounts.find(({ name }) => name.startsWith(firstName))!;
-  return { origin: `http://127.0.0.1:${port}`, account, stop };
+  return { origin: `http://127.0.0.1:${port}`, data, pid: child.pid!, account, stop };
 }
 
 /**

@@ -26,6 +26,9 @@ export interface TakenFile {
   content: FileContent;
   /** One a spectrum, in order; null where measuring is left to a job of its own. */
   results: (MeasureResult | null)[];
+  /** Milliseconds that reading and measuring took on the thread. */
+  reading: number;
+  engine: number;
 }
 
 /** Reads stored bytes on another thread, and measures up to `measureUpTo` spectra while they are in hand. */
@@ -63,6 +66,7 @@ export async function ingestFiles(fileIds: string[], jobId: string, take: TakeFi
   const again = failed.length > 0 && tries < TRIES;
   if (again && files.length === 1) throw new Error(`reading failed; it is tried again (${jobId})`);
 
+  const start = performance.now();
   const nights = await inTransaction(async (transaction) => {
     await store(read, transaction);
     if (again) await wishForSingles(failed, transaction);
@@ -77,6 +81,9 @@ export async function ingestFiles(fileIds: string[], jobId: string, take: TakeFi
       transaction,
     );
   });
+  const sum = (of: 'reading' | 'engine') => read.reduce((total, { taken }) => total + taken[of], 0);
+  const stages = { reading: sum('reading'), engine: sum('engine'), inserting: performance.now() - start };
+  log.debug({ job: jobId, files: files.length, stages }, 'files taken');
   for (const nightId of nights) nudge('nights', nightId);
   nudge('outbox');
 }
