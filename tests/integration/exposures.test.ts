@@ -6,6 +6,7 @@ import { database } from '$lib/server/database/connection';
 import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { readNight } from '$lib/server/ingest/read-night';
 import { listQueue } from '$lib/server/review/list-queue';
+import { readRepeats, repeatsCsv } from '$lib/server/review/read-repeats';
 import { readTarget } from '$lib/server/review/read-target';
 import { recordVerdict } from '$lib/server/review/record-verdict';
 import { makeInstallation, type Installation } from './installation';
@@ -132,5 +133,47 @@ describe('the page of a target', () => {
     const elsewhere = await installation.makeProgramme('elsewhere');
     const stranger = await installation.makePerson('Stray Stranger', elsewhere, ['scientist', 'curator']);
     await expect(readTarget(stranger, await targetOf(one))).rejects.toMatchObject({ code: 'not-found' });
+  });
+});
+
+describe('repeats', () => {
+  it('pair what shares no photons: neither a stack with its singles, nor a reduction with the newer one', async () => {
+    const own = await installation.makeProgramme('repeats');
+    const reader = await installation.makePerson('Rita Reader', own, ['scientist', 'curator']);
+    const put = (spectra: SeededSpectrum[]) => seedNight(own, reader.userId, spectra);
+    const z = (redshift: number, redshiftError = 2e-5) => ({ redshift, redshiftError });
+    await put([{ name: 'P-1', start: at(0), ...z(0.3) }]);
+    await put([{ name: 'P-1', start: at(16), ...z(0.30001) }]);
+    await put([{ name: 'P-1', start: at(0), exposureSeconds: 1860, ...z(0.30002) }]);
+    const pairsNow = async () => (await readRepeats(reader, { programme: 'repeats' })).pairs;
+    expect(await pairsNow()).toEqual([]);
+    // Another night: one pair, with the stack alone.
+    await put([{ name: 'P-1', start: at(1440), ...z(0.30006) }]);
+    const [pair, ...others] = await pairsNow();
+    expect(others).toEqual([]);
+    expect([pair.first.redshift, pair.second.redshift]).toEqual([0.30002, 0.30006]);
+    expect(pair.pull).toBeCloseTo(4e-5 / Math.hypot(2e-5, 2e-5), 6);
+    // That night reduced again: still one pair, with the newer reduction.
+    await put([{ name: 'P-1', start: at(1440), ...z(0.30003), confidence: 'probable' }]);
+    const again = await readRepeats(reader, { programme: 'repeats' });
+    expect(again.pairs.map(({ second, confidence }) => [second.redshift, confidence])).toEqual([[0.30003, 'probable']]);
+    expect(again.all).toMatchObject({ pairs: 1, others: 0, robustWidth: null });
+    const { csv, name } = await repeatsCsv(reader, { programme: 'repeats' });
+    expect(name).toBe('farglow-repeats-repeats.csv');
+    expect(csv.split('\r\n')[1]).toMatch(/^P-1,probable,.*,0\.30002,0\.00002,.*,0\.30003,0\.00002,/);
+    await expect(readRepeats(observer, { programme: 'repeats' })).rejects.toMatchObject({ code: 'not-found' });
+  });
+
+  it('keep a target back whose spectrum is to be looked at without the answer', async () => {
+    const own = await installation.makeProgramme('kept-back');
+    const scientist = await installation.makePerson('Kit Kept', own, ['scientist']);
+    await seedNight(own, scientist.userId, [{ name: 'Q-1', start: at(0), redshift: 0.4321 }]);
+    await seedNight(own, scientist.userId, [{ name: 'Q-1', start: at(99), redshift: 0.4322 }]);
+    await database().query(
+      `INSERT INTO review_settings (programme_id, hidden_share, seed) VALUES (:own, 1, REPEAT('a', 64))`,
+      { replacements: { own } },
+    );
+    const repeats = await readRepeats(scientist, { programme: 'kept-back' });
+    expect(repeats).toMatchObject({ pairs: [], keptBack: 1 });
   });
 });

@@ -1,4 +1,5 @@
 import { Refusal } from '$lib/domain/refusal';
+import { foldName } from '$lib/domain/target-name';
 import type { TargetSpectrum, TargetView } from '$lib/domain/target-view';
 import { hiddenAnswers } from '../auth/hidden-answer';
 import { may, mayByRole, permit, type Actor } from '../auth/permissions';
@@ -45,7 +46,7 @@ export async function readTarget(actor: Actor | null, targetId: string): Promise
     ...rest,
     isListed: !!isListed,
     programme: { id: programmeId, slug: programmeSlug, name: programmeName },
-    otherNames: names.filter((name) => name !== target.name),
+    otherNames: names.filter((name) => foldName(name) !== foldName(target.name)),
     entries,
     spectra: shown,
     answersHidden,
