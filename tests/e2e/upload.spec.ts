@@ -1,4 +1,5 @@
 import { execFileSync } from 'node:child_process';
+import { createHash } from 'node:crypto';
 import { copyFileSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -137,6 +138,55 @@ test('a page that is closed in the middle: the night says what is missing, and t
   await expect(notice).toBeHidden();
   rmSync(big, { recursive: true });
   rmSync(members, { recursive: true });
+});
+
+test('the README’s script sends an archive with a token, goes on after a break, and is told what is wrong', async ({
+  page,
+}) => {
+  const night = await openNight(page);
+  const place = mkdtempSync(join(tmpdir(), 'farglow-script-'));
+  execFileSync('tar', ['-czf', join(place, 'night.tar.gz'), '-C', SAMPLE, ...spectra.slice(0, 12)]);
+  const bytes = readFileSync(join(place, 'night.tar.gz'));
+  const headers = { authorization: `Bearer ${token}` };
+  const upload = `/nights/${night}/uploads`;
+
+  // An earlier try that broke: its first bytes are here.
+  const digest = createHash('sha256').update(bytes).digest('base64');
+  const opened = await page.request.post(api(upload), {
+    headers: {
+      ...headers,
+      'Upload-Complete': '?0',
+      'Upload-Length': String(bytes.length),
+      'Content-Disposition': 'attachment; filename="night.tar.gz"',
+      'Repr-Digest': `sha-256=:${digest}:`,
+    },
+  });
+  expect(opened.status()).toBe(201);
+  const address = `${readState().origin}${opened.headers().location}`;
+  const patch = (from: number, to: number, more = {}) => {
+    const type = { 'Content-Type': 'application/partial-upload', 'Upload-Offset': String(from) };
+    return page.request.patch(address, { headers: { ...headers, ...type, ...more }, data: bytes.subarray(from, to) });
+  };
+  const first = await patch(0, 100_000);
+  expect([first.status(), first.headers()['upload-offset']]).toEqual([200, '100000']);
+  const wrong = await patch(0, 100_000);
+  expect([wrong.status(), wrong.headers()['upload-offset']]).toEqual([409, '100000']);
+  expect(await wrong.json()).toMatchObject({ detail: expect.stringContaining('holds 100000 bytes') });
+  expect((await patch(100_000, 100_001, { 'Content-Type': 'text/plain' })).status()).toBe(415);
+  expect((await page.request.patch(address, { data: bytes, headers: {} })).status()).toBe(401);
+  const stands = await page.request.head(address, { headers });
+  expect([stands.status(), stands.headers()['upload-complete']]).toEqual([204, '?0']);
+
+  const [, script] = /```sh\n(API=[^]*?)```/.exec(readFileSync('README.md', 'utf8'))!;
+  const env = { ...process.env, TOKEN: token, NIGHT: night };
+  const here = script.replace(/^API=\S+/, `API=${readState().origin}`);
+  execFileSync('bash', ['-ec', here], { cwd: place, env, timeout: 60_000 });
+  const done = await (await page.request.get(address, { headers })).json();
+  expect(done).toMatchObject({ receivedBytes: bytes.length, sizeBytes: bytes.length });
+  await whenDone(page, night);
+  expect((await snapshot(page, night)).archives).toMatchObject([{ state: 'done', unpacked: { refused: 0 } }]);
+  expect((await snapshot(page, night)).files).toMatchObject({ total: 12, read: 12 });
+  rmSync(place, { recursive: true });
 });
 
 test('one file is taken back, then all: nothing is missing, and the rest goes when asked', async ({ page }) => {
