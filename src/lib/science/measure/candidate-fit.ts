@@ -158,20 +158,22 @@ export function allowForArtefacts(context: WeighContext, candidates: readonly Fi
  * Log odds that artefacts made every feature a candidate explains. Where they describe a feature better than the
  * candidate does, all that it gained there is theirs.
  */
-function artefactsOf(
-  { features }: WeighContext,
-  { explained, onFeatures, noiseFactor, kind }: FittedCandidate,
-): number {
+function artefactsOf({ features }: WeighContext, candidate: FittedCandidate): number {
+  const { explained, onFeatures, noiseFactor, kind, fit } = candidate;
   let artefacts = 0;
   for (const j of explained) {
     // A forest of absorption makes a quasar's spectrum rough without making its emission doubtful.
-    const rough = features[j].rough && kind !== 'broad';
+    const inForest = kind === 'broad' && features[j].logWavelength < LOG_FOREST_END + fit.logScale;
+    const rough = features[j].rough && !inForest;
     const seen = rough ? onFeatures.significance[j] : features[j].bounded;
     const odds = artefactLogOdds(features[j], seen / noiseFactor);
     artefacts += rough ? odds : Math.min(odds, onFeatures.gain[j] / noiseFactor ** 2);
   }
   return artefacts;
 }
+
+/** Rest ln(wavelength) up to which the forest and Lyman-alpha itself reach. */
+const LOG_FOREST_END = Math.log(1260);
 
 /**
  * Scale of the errors: the measured noise factor, or the fit's own root reduced chi-square where that is larger by more
