@@ -1,4 +1,5 @@
 import { readFileSync } from 'node:fs';
+import AxeBuilder from '@axe-core/playwright';
 import { expect, test, type APIRequestContext, type Page } from '@playwright/test';
 import { readState } from './installation';
 import { makeToken, signIn } from './people';
@@ -8,6 +9,25 @@ const open = async (page: Page, path: string) => {
   await page.goto(`${readState().origin}${path}`);
   await ready(page);
 };
+
+/** No axe violation and nothing wider than the screen, in every theme at both widths; the page is left as it was. */
+async function expectAccessible(page: Page): Promise<void> {
+  for (const theme of ['light', 'dark', 'dome']) {
+    await page.context().addCookies([{ name: 'farglow-theme', value: theme, url: readState().origin }]);
+    for (const width of [390, 1440]) {
+      await page.setViewportSize({ width, height: 900 });
+      await page.reload();
+      await ready(page);
+      const { violations } = await new AxeBuilder({ page }).analyze();
+      expect(
+        violations.map(({ id, nodes }) => `${id}: ${nodes[0].html}`),
+        `${theme} at ${width}`,
+      ).toEqual([]);
+      const overflow = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
+      expect(overflow, `${theme} at ${width}`).toBeLessThanOrEqual(0);
+    }
+  }
+}
 
 /** The first columns of hz_0018.csv (wavelength in um, flux, error) under names that tell nothing. */
 const odd = (copies: number) => {
@@ -42,6 +62,7 @@ test('an observer says once what the columns of files are, and all of their kind
   await expect(page.getByRole('heading', { level: 1 })).toContainText('What are the columns of odd-');
   await expect(page.getByText('one more file of the same columns waits with it')).toBeVisible();
   const keep = page.getByRole('button', { name: 'Keep it and read 2 files' });
+  await test.step('the page is for everyone', () => expectAccessible(page));
 
   await test.step('what is missing, and a unit that cannot be read, are said in words', async () => {
     await expect(page.getByText('Say which column is the flux.')).toBeVisible();
@@ -125,5 +146,19 @@ test('a changed instrument is measured again, compared, accepted in bulk and tak
     await page.getByRole('button', { name: /^Undo the acceptance/ }).click();
     await expect(page.getByText(`${said} spectra have their older measurement back.`)).toBeVisible();
     await expect(page.getByText(`Would accept ${said} spectra`)).toBeVisible();
+  });
+
+  await test.step('the comparison is for everyone', async () => {
+    await open(page, `${address}?change=moved`);
+    await expectAccessible(page);
+  });
+
+  await test.step('the description is put back, for what comes after', async () => {
+    await open(page, '/instruments');
+    await page.locator('tbody a').first().click();
+    await ready(page);
+    await page.getByLabel('Bad regions').fill('');
+    await page.getByRole('button', { name: /^Save as version/ }).click();
+    await expect(page.getByText('The older ones stay readable below.')).toBeVisible();
   });
 });
