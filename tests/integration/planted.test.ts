@@ -193,4 +193,25 @@ describe('planted spectra', () => {
     expect(await listQueue(third, { show: 'all' })).toHaveLength(REAL);
     expect(await listQueue(ines, { show: 'all' })).toHaveLength(REAL + 3);
   });
+
+  it('follow their donors to another version of the engine, whose name would else give them away', async () => {
+    const [one] = planted;
+    const run = (sql: string) => database().query(sql, { replacements: [one.id] });
+    const state = async () =>
+      (
+        await query<{ state: string; current: string | null }>(
+          'SELECT state, current_measurement_id AS current FROM spectra WHERE id = ?',
+          [one.id],
+        )
+      )[0];
+    const before = await state();
+    await run("UPDATE measurements SET engine_version = '0.0.1' WHERE spectrum_id = ?");
+    await plantSpectra();
+    expect(await state()).toEqual(before);
+    await run('UPDATE measurements SET created_at = created_at - INTERVAL 2 DAY WHERE spectrum_id = ?');
+    await plantSpectra();
+    expect(await state()).toEqual({ state: 'waiting', current: null });
+    const wishes = await query<{ id: string }>("SELECT job_id AS id FROM outbox WHERE job_name = 'measure'");
+    expect(wishes.map(({ id }) => id)).toContain(`measure-${one.id}-1`);
+  });
 });

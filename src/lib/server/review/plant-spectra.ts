@@ -8,7 +8,7 @@ import {
   namesTaken,
   nightsToPlant,
   readDonor,
-  resetOutdated,
+  followDonors,
   storePlanted,
   type NightToPlant,
 } from '../database/queries/planted';
@@ -40,7 +40,7 @@ export async function plantSpectra(): Promise<number> {
     }
   }
   const outdated = await inTransaction(async (transaction) => {
-    const ids = await resetOutdated(ENGINE_VERSION, transaction);
+    const ids = await followDonors(ENGINE_VERSION, transaction);
     await wishFor('measure', ids.map(wishOf), transaction);
     return ids.length;
   });
@@ -81,7 +81,7 @@ async function plantOne({ nightId, programmeId }: NightToPlant, place: number): 
         {
           ...{ programmeId, nightId, place, donorId, seed, name, sha256, sizeBytes },
           ...{ redshift: planted.redshift, detail: { what: planted.what, signalToNoise: planted.signalToNoise } },
-          ...{ fileName: donor.originalName, instrumentId: donor.fileInstrumentId },
+          ...{ fileName: donor.originalName, instrumentId: donor.instrumentId },
           ...{ extension: read.extension, row: read.row, pixelCount: wavelength.length },
           ...{ wavelengthMin: wavelength[0], wavelengthMax: wavelength[wavelength.length - 1] },
         },

@@ -3,6 +3,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { InstrumentListRow, InstrumentVersionRow } from '$lib/domain/instrument-view';
 import { database } from '../connection';
 import { InstrumentVersion } from '../models/observing';
+import { NOT_PLANTED, NOT_PLANTED_FILE } from './planted';
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 const select = { type: QueryTypes.SELECT } as const;
@@ -70,7 +71,7 @@ export async function spectraNotBy(programmeId: string, name: string, instrument
   const [{ n }] = await database().query<{ n: number | string }>(
     `SELECT COUNT(*) AS n FROM files f LEFT JOIN instruments i ON i.id = f.instrument_id
       JOIN spectra s ON s.file_id = f.id LEFT JOIN measurements m ON m.id = s.current_measurement_id
-      WHERE ${OF_NAME} AND s.state <> 'waiting' AND NOT (m.instrument_id <=> :instrumentId)`,
+      WHERE ${OF_NAME} AND s.state <> 'waiting' AND ${NOT_PLANTED} AND NOT (m.instrument_id <=> :instrumentId)`,
     { replacements: { programmeId, name, instrumentId }, ...select },
   );
   return Number(n);
@@ -91,9 +92,9 @@ export async function nightsOfInstrument(
 export async function versionsOf(programmeId: string, name: string): Promise<InstrumentVersionRow[]> {
   const rows = await database().query<InstrumentVersionRow & { savedAt: Date | string }>(
     `SELECT i.id, i.version, i.note, u.name AS \`by\`, i.created_at AS savedAt,
-        (SELECT COUNT(*) FROM files f WHERE f.instrument_id = i.id) AS files,
+        (SELECT COUNT(*) FROM files f WHERE f.instrument_id = i.id AND ${NOT_PLANTED_FILE}) AS files,
         (SELECT COUNT(*) FROM measurements m JOIN spectra s ON s.current_measurement_id = m.id
-          WHERE m.instrument_id = i.id) AS measurements
+          WHERE m.instrument_id = i.id AND ${NOT_PLANTED}) AS measurements
       FROM instruments i LEFT JOIN users u ON u.id = i.created_by
       WHERE i.programme_id = :programmeId AND i.name = :name ORDER BY i.version DESC`,
     { replacements: { programmeId, name }, ...select },
@@ -116,7 +117,7 @@ export async function newestInstruments(programmeIds: string[]): Promise<Instrum
         (SELECT COUNT(*) FROM nights n JOIN instruments v ON v.id = n.instrument_id
           WHERE v.programme_id = i.programme_id AND v.name = i.name) AS nights,
         (SELECT COUNT(*) FROM files f JOIN instruments v ON v.id = f.instrument_id JOIN spectra s ON s.file_id = f.id
-          WHERE v.programme_id = i.programme_id AND v.name = i.name) AS spectra
+          WHERE v.programme_id = i.programme_id AND v.name = i.name AND ${NOT_PLANTED}) AS spectra
       FROM instruments i JOIN programmes p ON p.id = i.programme_id LEFT JOIN users u ON u.id = i.created_by
       WHERE i.programme_id IN (:programmeIds) AND i.version = (SELECT MAX(v.version) FROM instruments v
         WHERE v.programme_id = i.programme_id AND v.name = i.name) ORDER BY p.name, i.name`,

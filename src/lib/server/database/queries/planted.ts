@@ -12,6 +12,10 @@ const parsed = <T>(value: T | string): T => (typeof value === 'string' ? (JSON.p
 /** For use inside a query with spectra as `s`: it is none of those with a known answer, which count nowhere but in review. */
 export const NOT_PLANTED = `NOT EXISTS (SELECT 1 FROM planted_spectra pl WHERE pl.spectrum_id = s.id)`;
 
+/** As above, for files as `f`. */
+export const NOT_PLANTED_FILE = `NOT EXISTS (SELECT 1 FROM spectra ps JOIN planted_spectra pl ON pl.spectrum_id = ps.id
+  WHERE ps.file_id = f.id)`;
+
 /** A night at rest of a programme that plants, with how many of its spectra are measured and how many are planted. */
 export interface NightToPlant {
   nightId: string;
@@ -45,7 +49,8 @@ export interface DonorRow {
   sha256: string;
   extension: number;
   rowIndex: number;
-  fileInstrumentId: string | null;
+  /** The version that its current measurement was made by. */
+  instrumentId: string | null;
   instrument: Instrument | null;
   measurement: Measurement;
 }
@@ -64,9 +69,9 @@ export async function donorsOf(nightId: string, engineVersion: string): Promise<
 export async function readDonor(id: string): Promise<DonorRow> {
   const [row] = await database().query<DonorRow & { instrument: string | Instrument | null }>(
     `SELECT s.id, s.name, f.original_name AS originalName, f.sha256, s.extension,
-        s.row_index AS rowIndex, f.instrument_id AS fileInstrumentId, i.description AS instrument, m.detail AS measurement
+        s.row_index AS rowIndex, COALESCE(m.instrument_id, f.instrument_id) AS instrumentId, i.description AS instrument, m.detail AS measurement
       FROM spectra s JOIN files f ON f.id = s.file_id JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      LEFT JOIN instruments i ON i.id = f.instrument_id WHERE s.id = :id`,
+      LEFT JOIN instruments i ON i.id = COALESCE(m.instrument_id, f.instrument_id) WHERE s.id = :id`,
     { replacements: { id }, ...select },
   );
   return { ...row, instrument: parsed(row.instrument), measurement: parsed(row.measurement) };
@@ -131,26 +136,36 @@ export async function storePlanted(planted: NewPlanted, transaction: Transaction
   return ids.id;
 }
 
+const BEHIND = `planted_spectra pl JOIN spectra s ON s.id = pl.spectrum_id AND s.state = 'measured'
+  JOIN measurements m ON m.id = s.current_measurement_id
+  JOIN spectra d ON d.id = pl.donor_id JOIN measurements dm ON dm.id = d.current_measurement_id
+    AND (dm.engine_version <> m.engine_version OR dm.settings_hash <> m.settings_hash)
+  LEFT JOIN measurements same ON same.spectrum_id = s.id AND same.engine_version = dm.engine_version
+    AND same.settings_hash = dm.settings_hash`;
+
 /**
- * Lets planted spectra be measured anew whose donors' current answer is by this version of the engine and theirs is not:
- * an old version's name would give them away. Returns their ids, at most 50.
+ * Lets the current answers on planted spectra follow those on their donors, by engine and instrument: an old version's name
+ * would give them away. What lacks such an answer is to be measured anew where this engine can give it, once a day at most;
+ * returns the ids, at most 50.
  */
-export async function resetOutdated(engineVersion: string, transaction: Transaction): Promise<string[]> {
-  const rows = await database().query<{ id: string }>(
-    `SELECT s.id FROM planted_spectra pl JOIN spectra s ON s.id = pl.spectrum_id AND s.state = 'measured'
-      JOIN measurements m ON m.spectrum_id = s.id AND ${CURRENT_MEASUREMENT}
-      JOIN spectra d ON d.id = pl.donor_id JOIN measurements dm ON dm.id = d.current_measurement_id
-      WHERE m.engine_version <> :engineVersion AND dm.engine_version = :engineVersion ORDER BY s.id LIMIT 50`,
+export async function followDonors(engineVersion: string, transaction: Transaction): Promise<string[]> {
+  await database().query(`UPDATE ${BEHIND} SET s.current_measurement_id = same.id WHERE same.id IS NOT NULL`, {
+    transaction,
+  });
+  const rows = await database().query<{ id: string; instrumentId: string | null }>(
+    `SELECT s.id, dm.instrument_id AS instrumentId FROM ${BEHIND}
+      WHERE same.id IS NULL AND dm.engine_version = :engineVersion
+        AND m.created_at < UTC_TIMESTAMP(6) - INTERVAL 1 DAY ORDER BY s.id LIMIT 50`,
     { replacements: { engineVersion }, transaction, ...select },
   );
-  const ids = rows.map(({ id }) => id);
-  if (ids.length) {
+  for (const { id, instrumentId } of rows) {
     await database().query(
-      `UPDATE spectra SET state = 'waiting', current_measurement_id = NULL, tries = 0 WHERE id IN (:ids)`,
-      { replacements: { ids }, transaction },
+      `UPDATE spectra s JOIN files f ON f.id = s.file_id SET s.state = 'waiting', s.current_measurement_id = NULL,
+          s.tries = 0, f.instrument_id = :instrumentId WHERE s.id = :id`,
+      { replacements: { id, instrumentId }, transaction },
     );
   }
-  return ids;
+  return rows.map(({ id }) => id);
 }
 
 /** A verdict on a planted spectrum, with the known answer. */

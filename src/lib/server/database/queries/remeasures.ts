@@ -3,6 +3,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import { REMEASURE_STATES, type RemeasuredState, type RemeasureSummary } from '$lib/domain/remeasure';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
+import { NOT_PLANTED } from './planted';
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 const select = { type: QueryTypes.SELECT } as const;
@@ -95,7 +96,7 @@ export async function takeSpectra(
       FROM files f JOIN spectra s ON s.file_id = f.id
       LEFT JOIN measurements same ON same.spectrum_id = s.id AND same.engine_version = :engineVersion
         AND same.settings_hash = :settingsHash
-      WHERE f.instrument_id <=> :instrumentId AND s.state <> 'waiting' AND ${IN_SCOPE}`,
+      WHERE f.instrument_id <=> :instrumentId AND s.state <> 'waiting' AND ${NOT_PLANTED} AND ${IN_SCOPE}`,
     { replacements: { remeasureId, ...scope, ...by }, transaction },
   );
 }
