@@ -53,7 +53,7 @@ export class SpectrumGeometry {
 
   frame = $derived.by(() => spectrumFrame(this.width, this.height, this.#spectrum.sky !== null, this.#residuals));
   edges = $derived.by(() => pixelEdges(this.#spectrum.wavelength));
-  gaps = $derived.by(() => pixelGaps(this.edges));
+  gaps = $derived.by(() => pixelGaps(this.edges, this.#spectrum.error));
   #smoothed = $derived.by(() => {
     const { flux, error } = this.#spectrum;
     return this.#smoothPixels > 0 ? smoothInverseVariance(flux, error, this.#smoothPixels) : { flux, error };

@@ -11,11 +11,21 @@ describe('pixelEdges', () => {
     expect(right[2]).toBeCloseTo(3.505, 10);
     expect(left[3]).toBeCloseTo(9.495, 10);
   });
-  it('names what no pixel covers, and nothing on a smoothly growing step', () => {
-    const [gap, ...others] = pixelGaps(pixelEdges(array(1, 2, 3, 10, 11)));
+  it('names what no usable pixel covers, and nothing on a smoothly growing step or for a single bad pixel', () => {
+    const gapsOf = (wavelength: Float64Array, bad: number[] = []) =>
+      pixelGaps(
+        pixelEdges(wavelength),
+        wavelength.map((_, i) => (bad.includes(i) ? NaN : 1)),
+      );
+    const [gap, ...others] = gapsOf(array(1, 2, 3, 10, 11));
     expect([gap.from, gap.to, others]).toEqual([expect.closeTo(3.505, 9), expect.closeTo(9.495, 9), []]);
-    expect(pixelGaps(pixelEdges(Float64Array.from({ length: 500 }, (_, i) => 4000 * 1.002 ** i)))).toEqual([]);
-    expect(pixelGaps(pixelEdges(array()))).toEqual([]);
+    expect(gapsOf(Float64Array.from({ length: 500 }, (_, i) => 4000 * 1.002 ** i))).toEqual([]);
+    const even = Float64Array.from({ length: 20 }, (_, i) => i);
+    expect(gapsOf(even, [5, 16, 17])).toEqual([]);
+    const [first, second] = gapsOf(even, [0, 1, 2, 3, 10, 11, 12, 13, 14]);
+    expect([first.from, first.to]).toEqual([expect.closeTo(-0.505, 9), expect.closeTo(3.5, 9)]);
+    expect([second.from, second.to]).toEqual([expect.closeTo(9.5, 9), expect.closeTo(14.5, 9)]);
+    expect(gapsOf(array())).toEqual([]);
   });
   it('finds pixels by bisection', () => {
     const wavelength = array(1, 2, 3, 4);

@@ -18,14 +18,29 @@ export function pixelEdges(wavelength: Float64Array): { left: Float64Array; righ
   return { left, right };
 }
 
-/** Stretches between neighbouring pixels that no pixel covers: gaps between detectors, or pixels left out of a file. */
-export function pixelGaps(edges: { left: Float64Array; right: Float64Array }): { from: number; to: number }[] {
+/** Fewer unusable pixels in a row than this are single faults, not a gap. */
+const LEAST_GAP = 4;
+
+/**
+ * Stretches without a usable pixel: gaps between detectors, whether the file leaves their pixels out or marks them as
+ * unusable, and runs of at least four unusable pixels.
+ * @param error 1 sigma; NaN, zero, negative or infinite where a pixel is unusable
+ */
+export function pixelGaps(
+  edges: { left: Float64Array; right: Float64Array },
+  error: Float64Array,
+): { from: number; to: number }[] {
   const gaps: { from: number; to: number }[] = [];
-  for (let i = 1; i < edges.left.length; i++) {
-    const [from, to] = [edges.right[i - 1], edges.left[i]];
+  const { left, right } = edges;
+  let last = -1;
+  for (let i = 0; i < left.length; i++) {
+    if (!(error[i] > 0 && error[i] < Infinity)) continue;
     // Half a pixel of play: edges of neighbours are computed twice, and steps grow along a spectrum.
-    if (to - from > 0.5 * (edges.right[i] - to)) gaps.push({ from, to });
+    const hole = last >= 0 && i - last === 1 && left[i] - right[last] > 0.5 * (right[i] - left[i]);
+    if (hole || i - last > LEAST_GAP) gaps.push({ from: last < 0 ? left[0] : right[last], to: left[i] });
+    last = i;
   }
+  if (last >= 0 && left.length - 1 - last >= LEAST_GAP) gaps.push({ from: right[last], to: right[right.length - 1] });
   return gaps;
 }
 
