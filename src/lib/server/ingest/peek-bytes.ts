@@ -3,6 +3,8 @@ import type { Readable } from 'node:stream';
 export interface Peeked {
   /** The first bytes, up to the number asked for; fewer where there are no more. */
   head: Uint8Array;
+  /** True where the head is all there is: the stream is read to its end. */
+  isWhole: boolean;
   /** All bytes, the first included. */
   whole: AsyncIterable<Uint8Array>;
   /** Lets the stream go where it stands; the rest of it may then be drained by its owner. */
@@ -35,6 +37,7 @@ export async function peekBytes(source: Readable | AsyncIterable<Uint8Array>, co
   const head = first.length === 1 ? first[0] : Buffer.concat(first);
   return {
     head: head.subarray(0, count),
+    isWhole: ended && held <= count,
     whole: whole(),
     release: async () => {
       await iterator.return?.();

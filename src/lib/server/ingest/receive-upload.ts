@@ -6,25 +6,18 @@ import { Refusal } from '$lib/domain/refusal';
 import type { Actor } from '../auth/permissions';
 import { peekBytes } from './peek-bytes';
 import { FOREIGN_ARCHIVE } from './queue-archive';
-import { addToNight, admitToNight, storeBytes, type ReceivedFile, type StoredBytes } from './receive-file';
+import { admitToNight } from './receive-file';
+import { Shelf, type Upload } from './shelf';
 import { stageArchive } from './stage-archive';
 
 /** More parts than this in one request are refused; a night may have any number of requests. */
 const FILES_PER_REQUEST = 5_000;
 
-/** Rows written together while more parts arrive. */
-const FILES_PER_TRANSACTION = 32;
-
-export interface Upload {
-  files: ReceivedFile[];
-  /** Parts that were not taken, each with its reason; the others were. */
-  refused: { name: string; what: string; mend: string }[];
-  /** Archives whose bytes are here; their members follow as they are unpacked. */
-  archives: { id: string; name: string }[];
-}
+/** A part up to this size is held in memory, so that the next can be read while it is made safe on the disk. */
+const SMALL_BYTES = 1024 * 1024;
 
 /**
- * Streams the parts of a multipart body to storage, one after another. A part that is refused loses no other; where
+ * Takes the parts of a multipart body to storage as they come. A part that is refused loses no other; where
  * every part is, the first refusal is thrown, so that the whole answer is a 4xx.
  */
 export async function receiveUpload(actor: Actor | null, nightId: string, request: Request): Promise<Upload> {
@@ -35,28 +28,18 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
   }
   const body = Readable.fromWeb(request.body as unknown as NodeReadableStream);
   const upload: Upload = { files: [], refused: [], archives: [] };
-  let first: Refusal | undefined;
-  let stored: StoredBytes[] = [];
-  const settle = async () => {
-    upload.files.push(...(await addToNight(night, stored)));
-    stored = [];
-  };
+  const shelf = new Shelf(night, upload);
 
   const take = async (name: string, stream: Readable) => {
-    const { head, whole, release } = await peekBytes(stream, HEAD_BYTES);
+    const { head, isWhole, whole, release } = await peekBytes(stream, SMALL_BYTES);
     try {
-      const kind = archiveKind(head);
+      const kind = archiveKind(head.subarray(0, HEAD_BYTES));
       if (kind === 'foreign') throw new Refusal('unsupported', FOREIGN_ARCHIVE.what, FOREIGN_ARCHIVE.mend, name);
-      if (kind) {
-        upload.archives.push(await stageArchive(night, actor!.userId, { name, kind, stream: whole }));
-        return;
-      }
-      stored.push(await storeBytes({ name, stream: whole }));
-      if (stored.length >= FILES_PER_TRANSACTION) await settle();
+      if (kind) upload.archives.push(await stageArchive(night, actor!.userId, { name, kind, stream: whole }));
+      else if (isWhole) await shelf.putBeside(name, head);
+      else await shelf.put(name, whole);
     } catch (error) {
-      if (!(error instanceof Refusal)) throw error;
-      first ??= error;
-      upload.refused.push({ name, what: error.what, mend: error.mend });
+      shelf.refuse(name, error);
     } finally {
       await release();
       stream.resume();
@@ -67,10 +50,12 @@ export async function receiveUpload(actor: Actor | null, nightId: string, reques
     await parts(body, contentType, take);
   } finally {
     // What came whole before the connection broke stays: sending the rest again skips it.
-    await settle();
+    await shelf.end();
   }
   if (upload.files.length + upload.archives.length === 0) {
-    throw first ?? new Refusal('invalid', 'The body has no file.', 'Send at least one part with a filename.', 'file');
+    throw (
+      shelf.first ?? new Refusal('invalid', 'The body has no file.', 'Send at least one part with a filename.', 'file')
+    );
   }
   return upload;
 }

@@ -18,12 +18,10 @@ export class FolderStorage implements ObjectStore {
     stream: Readable | AsyncIterable<Uint8Array>,
     maxBytes: number,
   ): Promise<{ sha256: string; sizeBytes: number }> {
-    const incoming = join(this.folder, 'incoming');
-    await mkdir(incoming, { recursive: true });
-    const temporary = join(incoming, randomUUID());
+    const temporary = join(this.folder, 'incoming', randomUUID());
     const hash = createHash('sha256');
     let sizeBytes = 0;
-    const file = await open(temporary, 'wx', 0o640);
+    const file = await withFolder(dirname(temporary), () => open(temporary, 'wx', 0o640));
     try {
       try {
         // A stream stays open past a refusal: the rest of a multipart body still has to flow through it.
@@ -55,9 +53,8 @@ export class FolderStorage implements ObjectStore {
 
   async adopt(file: string, sha256: string): Promise<void> {
     const path = this.path(sha256);
-    await mkdir(dirname(path), { recursive: true });
     // Same name means same bytes: a second writer replaces the file by its equal, atomically.
-    await rename(file, path);
+    await withFolder(dirname(path), () => rename(file, path));
     await syncFolder(dirname(path));
   }
 
@@ -75,6 +72,17 @@ export class FolderStorage implements ObjectStore {
   async check(): Promise<void> {
     await mkdir(this.folder, { recursive: true });
     await access(this.folder, constants.W_OK);
+  }
+}
+
+/** Does what needs a folder, which is there nearly always: it is made only once that has failed. */
+async function withFolder<T>(folder: string, act: () => Promise<T>): Promise<T> {
+  try {
+    return await act();
+  } catch (error) {
+    if ((error as NodeJS.ErrnoException).code !== 'ENOENT') throw error;
+    await mkdir(folder, { recursive: true });
+    return act();
   }
 }
 
