@@ -23,6 +23,7 @@ const PAGES: { name: string; who: string | null; path: string; first?: string; t
   { name: 'review', who: 'Ines', path: '/review', first: 'a[href^="/review/"]' },
   { name: 'open questions', who: 'Felix', path: '/review?show=open' },
   { name: 'review statistics', who: 'Maren', path: '/review/statistics' },
+  { name: 'how a programme reviews', who: 'Maren', path: '/review/settings' },
   { name: 'programmes', who: 'Maren', path: '/programmes' },
   { name: 'account', who: 'Ines', path: '/account' },
   { name: 'drafts', who: 'Maren', path: '/drafts' },

@@ -1,6 +1,6 @@
 /** What the worth of a look is made from. */
 export interface Looked {
-  /** Shannon entropy of the calibrated answer, bits; null where the reader may not know the answer. */
+  /** Shannon entropy of the calibrated answer, bits; null where it must not be told and nothing stands in for it. */
   entropyBits: number | null;
   /** Another spectrum of the same target says something else. */
   conflict: boolean;
@@ -24,7 +24,7 @@ export const WORTH_WEIGHTS = {
   priorityBits: 1.5,
   bitsADay: 0.01,
   mostAgeDays: 30,
-  /** Stands in for an entropy that must not be told, the same for all: its place in the queue says nothing. */
+  /** For entropies that must not be told, where there are no others to draw one from. */
   unknownEntropyBits: 1,
 } as const;
 

@@ -12,8 +12,27 @@ type Draw = Pick<ReviewSettings, 'seed' | 'hiddenShare'>;
  */
 export function isDrawnHidden({ seed, hiddenShare }: Draw, spectrumId: string, userId: string): boolean {
   if (hiddenShare <= 0 || seed === '') return false;
-  const digest = createHmac('sha256', seed).update(`${spectrumId} ${userId}`).digest();
-  return digest.readUIntBE(0, 6) / 2 ** 48 < hiddenShare;
+  return draw(seed, `${spectrumId} ${userId}`) < hiddenShare;
+}
+
+/** A number from 0 to 1 that follows from a seed and a text. */
+function draw(seed: string, text: string): number {
+  return createHmac('sha256', seed).update(text).digest().readUIntBE(0, 6) / 2 ** 48;
+}
+
+/**
+ * An entropy that stands in for one that must not be told, drawn from those of other spectra: a hidden look then comes among
+ * the rest as any might, and its place says nothing of its own answer.
+ *
+ * @param known entropies in rising order; null where there are none
+ */
+export function standInEntropy(
+  { seed }: Draw,
+  spectrumId: string,
+  userId: string,
+  known: readonly number[],
+): number | null {
+  return known[Math.floor(draw(seed, `${spectrumId} ${userId} place`) * known.length)] ?? null;
 }
 
 /**
@@ -23,16 +42,16 @@ export function isDrawnHidden({ seed, hiddenShare }: Draw, spectrumId: string, u
  */
 export async function hiddenAnswers(reader: Actor, programmeId: string): Promise<(spectrumId: string) => boolean> {
   if (!mayByRole(reader, 'spectrum.judge', programmeId)) return () => false;
-  const draw = (await reviewSettings([programmeId])).get(programmeId);
-  if (!draw || draw.hiddenShare <= 0) return () => false;
+  const settings = (await reviewSettings([programmeId])).get(programmeId);
+  if (!settings || settings.hiddenShare <= 0) return () => false;
   const judged = await everJudgedBy(reader.userId, programmeId);
-  return (spectrumId) => !judged.has(spectrumId) && isDrawnHidden(draw, spectrumId, reader.userId);
+  return (spectrumId) => !judged.has(spectrumId) && isDrawnHidden(settings, spectrumId, reader.userId);
 }
 
 /** Whether a person who judges is to look at a spectrum without the engine's answer the first time, judged by now or not. */
 export async function isDrawnFor(judge: Actor, programmeId: string, spectrumId: string): Promise<boolean> {
-  const draw = (await reviewSettings([programmeId])).get(programmeId);
-  return !!draw && isDrawnHidden(draw, spectrumId, judge.userId);
+  const settings = (await reviewSettings([programmeId])).get(programmeId);
+  return !!settings && isDrawnHidden(settings, spectrumId, judge.userId);
 }
 
 /** A measurement with nothing of the engine's answer left: only what the file itself says. */

@@ -10,7 +10,8 @@ const days = (count: number) => (count === 1 ? '1 day' : `${count} days`);
 export function explainPlace({ entropyBits, conflict, priorityShare, ageDays }: Place): string {
   const parts: string[] = [];
   if (priorityShare === 1) parts.push('foremost in the programme’s priorities');
-  else if (priorityShare > 0) parts.push('the programme gives it priority');
+  else if (priorityShare >= 0.5) parts.push('high in the programme’s priorities');
+  else if (priorityShare > 0) parts.push('low in the programme’s priorities');
   if (conflict) {
     const kms = (Math.round(conflict.kms / 100) * 100).toLocaleString('en-GB');
     parts.push(`another spectrum of the target says ${conflict.redshift.toFixed(4)}, ${kms} km/s away`);

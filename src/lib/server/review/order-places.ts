@@ -1,6 +1,6 @@
 import { findConflicts } from '$lib/science/review/find-conflicts';
 import { orderQueue, priorityShares } from '$lib/science/review/worth-of-a-look';
-import { isDrawnHidden } from '../auth/hidden-answer';
+import { isDrawnHidden, standInEntropy } from '../auth/hidden-answer';
 import { mayByRole, type Actor } from '../auth/permissions';
 import { answersOfRepeats, prioritiesOf, queueRows, type QueueRow } from '../database/queries/review-queue';
 import { reviewSettings } from '../database/queries/review-settings';
@@ -57,11 +57,14 @@ export async function orderPlaces(
       return { ...row, hidden, place };
     })
     .filter(({ hidden }) => !hidden || !filter.confidence);
+  const known = placed.flatMap(({ place }) => place.entropyBits ?? []).sort((a, b) => a - b);
+  const bitsOf = ({ id, programmeId, place }: PlacedRow) =>
+    place.entropyBits ?? standInEntropy(settings.get(programmeId)!, id, asker.userId, known);
   // By id where no answer is hidden behind it: the database's own order is that of the entropy.
   placed.sort((a, b) => (a.id < b.id ? -1 : 1));
-  return orderQueue(placed.map((row) => ({ ...row.place, conflict: row.place.conflict !== null, row }))).map(
-    ({ row }) => row,
-  );
+  return orderQueue(
+    placed.map((row) => ({ ...row.place, entropyBits: bitsOf(row), conflict: row.place.conflict !== null, row })),
+  ).map(({ row }) => row);
 }
 
 /** A planted spectrum that someone judged stays in their queue when the rate is lowered, as any other would. */
