@@ -202,6 +202,14 @@ describe('accepting in bulk', () => {
     expect(acceptances).toMatchObject([{ id, by: 'Cato Keeps', spectra: 8, undoneBy: 'Cato Keeps' }]);
   });
 
+  it('lets no verdict land on a candidate that its giver did not see', async () => {
+    const { id } = await acceptMeasurements(curator, run, { filter: { change: 'moved' }, expected: 2 });
+    const seen = { kind: 'candidate' as const, candidate: 0, confidence: 'secure' as const, flags: [], comment: '' };
+    const far = ids.get('far')!;
+    await expect(recordVerdict(second, far, { ...seen, redshift: 0.33 })).rejects.toMatchObject({ code: 'conflict' });
+    await undoAcceptance(curator, id);
+  });
+
   it('takes part of them by a filter, and an undo leaves what was accepted again since', async () => {
     const moved = await acceptMeasurements(curator, run, { filter: { change: 'moved' }, expected: 2 });
     expect([await currentOf('near'), await currentOf('word')]).toEqual(['2.0.0', '1.0.0']);

@@ -29,6 +29,8 @@ export const verdictInputSchema = z.discriminatedUnion('kind', [
   z.object({
     kind: z.literal('candidate'),
     candidate: z.coerce.number().int().min(0).max(31),
+    /** The redshift that the person saw at that place: where another measurement is current by now, it is refused. */
+    redshift: redshift.optional(),
     confidence: confidenceSchema.exclude(['none']),
     ...second,
     masks,

@@ -1,5 +1,6 @@
 import { Refusal } from '$lib/domain/refusal';
 import type { VerdictInput } from '$lib/domain/verdict';
+import { verdictsAgree } from '$lib/science/review/verdicts-agree';
 import { isDrawnFor } from '../auth/hidden-answer';
 import { permit, type Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
@@ -36,6 +37,13 @@ function decided(input: VerdictInput, { measurement, measurementId }: ReviewedSp
     );
   }
   const { redshift, redshiftError } = candidate;
+  if (input.redshift !== undefined && !verdictsAgree(candidate, { redshift: input.redshift, redshiftError: null })) {
+    throw new Refusal(
+      'conflict',
+      `Another measurement is current by now: this candidate has redshift ${redshift.toFixed(5)}.`,
+      'Look at it again.',
+    );
+  }
   const { kind, confidence, candidate: candidatePlace } = input;
   return { ...common, kind, redshift, redshiftError, candidatePlace, confidence };
 }
