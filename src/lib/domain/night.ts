@@ -34,6 +34,13 @@ export interface NightMeasurement {
   name: string | null;
   ra: number | null;
   dec: number | null;
+  /** Id of the target, the place on the sky. */
+  target: string | null;
+  /** As the newest target list has it; null where it stands on none. */
+  magnitude: number | null;
+  magnitudeBand: string | null;
+  priority: number | null;
+  exposureSeconds: number | null;
   state: 'waiting' | 'measured' | 'failed';
   medianSignalToNoise: number | null;
   /** Mid-exposure, ISO 8601 UTC. */

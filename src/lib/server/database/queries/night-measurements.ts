@@ -20,6 +20,10 @@ type Row = Omit<NightMeasurement, 'flags' | 'strongestLine' | 'verdict' | 'midEx
   detail: string | Measurement | null;
 };
 
+/** For use inside a query: `e` is the entry of the newest list that has target `t`. */
+const NEWEST_ENTRY = `NOT EXISTS (SELECT 1 FROM target_entries o WHERE o.target_id = e.target_id
+  AND (o.list_id > e.list_id OR (o.list_id = e.list_id AND o.row_index < e.row_index)))`;
+
 /** Takes the place of every key that the engine fills, those of the full answer included, where a reader may not know it. */
 const NO_ANSWER = {
   ...{ redshift: null, redshiftError: null, redshiftErrorMeasured: null, redshiftSystemic: null, secondRedshift: null },
@@ -41,7 +45,8 @@ export async function nightMeasurementRows(
 ): Promise<(NightMeasurement & Partial<FullAnswer>)[]> {
   const rows = await database().query<Row>(
     `SELECT s.id AS spectrum, nf.name AS source, s.extension, s.row_index AS \`row\`, s.name, s.ra_degrees AS ra,
-        s.dec_degrees AS \`dec\`, s.state, s.median_signal_to_noise AS medianSignalToNoise,
+        s.dec_degrees AS \`dec\`, s.target_id AS target, e.magnitude, e.magnitude_band AS magnitudeBand, t.priority,
+        s.exposure_seconds AS exposureSeconds, s.state, s.median_signal_to_noise AS medianSignalToNoise,
         s.mid_exposure AS midExposure, s.sky_offset_kms AS skyOffsetKms, s.sky_scatter_kms AS skyScatterKms, m.redshift,
         m.redshift_error AS redshiftError, m.redshift_error_measured AS redshiftErrorMeasured,
         m.redshift_systemic AS redshiftSystemic, m.second_redshift AS secondRedshift, m.probability, m.confidence,
@@ -56,6 +61,7 @@ export async function nightMeasurementRows(
       LEFT JOIN rulings d ON d.id = ${LAST_WORD_RULING}
         AND (:judges = 0 OR d.user_id = :userId OR ${judgedBy(':userId')})
       LEFT JOIN users u ON u.id = COALESCE(d.user_id, v.user_id)
+      LEFT JOIN targets t ON t.id = s.target_id LEFT JOIN target_entries e ON e.target_id = t.id AND ${NEWEST_ENTRY}
       WHERE nf.night_id = :nightId AND ${OBSERVED} AND (:after IS NULL OR s.id > :after) ORDER BY s.id LIMIT :limit`,
     {
       replacements: { nightId, after, limit, userId: reader.userId, judges: reader.judges ? 1 : 0 },

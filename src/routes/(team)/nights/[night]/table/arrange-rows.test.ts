@@ -10,6 +10,11 @@ const row = (name: string, more: Partial<NightMeasurement> = {}): NightMeasureme
   name,
   ra: null,
   dec: null,
+  target: null,
+  magnitude: null,
+  magnitudeBand: null,
+  priority: null,
+  exposureSeconds: null,
   state: 'measured',
   medianSignalToNoise: null,
   midExposure: null,
@@ -31,6 +36,14 @@ const row = (name: string, more: Partial<NightMeasurement> = {}): NightMeasureme
   ...more,
 });
 const names = (rows: NightMeasurement[]) => rows.map(({ name }) => name);
+
+describe('sortRows by a chosen column', () => {
+  it('puts rows without the value last', () => {
+    const rows = [row('A', { magnitude: 22 }), row('B'), row('C', { magnitude: 19 })];
+    expect(names(sortRows(rows, sortOf('magnitude')))).toEqual(['C', 'A', 'B']);
+    expect(names(sortRows(rows, sortOf('-magnitude')))).toEqual(['A', 'C', 'B']);
+  });
+});
 
 describe('sortRows', () => {
   const rows = [

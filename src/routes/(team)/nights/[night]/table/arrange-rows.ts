@@ -1,8 +1,7 @@
 import { CONFIDENCE_WORDS, type Confidence } from '$lib/domain/confidence';
 import type { NightMeasurement } from '$lib/domain/night';
+import { COLUMNS, type Column } from './columns';
 
-export const COLUMNS = ['name', 'redshift', 'confidence', 'probability', 'line', 'signal', 'flags', 'verdict'] as const;
-export type Column = (typeof COLUMNS)[number];
 export interface Sort {
   column: Column;
   descending: boolean;
@@ -42,6 +41,17 @@ const KEYS: Record<Column, (row: NightMeasurement) => string | number | null> = 
   signal: (row) => row.strongestLine?.signalToNoise ?? null,
   flags: (row) => (row.flags.length ? row.flags.join(', ') : null),
   verdict: (row) => (row.verdict ? (row.verdict.redshift ?? -1) : null),
+  class: (row) => row.objectClass,
+  exposure: (row) => row.exposureSeconds,
+  magnitude: (row) => row.magnitude,
+  priority: (row) => row.priority,
+  level: (row) => row.medianSignalToNoise,
+  noise: (row) => row.noiseFactor,
+  middle: (row) => row.midExposure,
+  sky: (row) => row.skyOffsetKms,
+  ra: (row) => row.ra,
+  dec: (row) => row.dec,
+  file: (row) => row.source,
 };
 
 const collator = new Intl.Collator('en', { numeric: true });
