@@ -1,9 +1,9 @@
-import type { Page } from '@playwright/test';
+import type { CDPSession, Page } from '@playwright/test';
 
-/** What a press of a key that leads to the next spectrum took, ms from the key event. */
-export interface NextTimes {
-  /** Until the frame with the next spectrum was handed to the screen. */
-  drawn: number[];
+/** Times of one kind of press: by the clock, and of the page's own thread, which other work on the machine hardly moves; ms. */
+export interface PressTimes {
+  clock: number[];
+  processor: number[];
 }
 
 /** Pause between two verdicts, ms: quick, yet long enough that a person could have looked. */
@@ -80,26 +80,50 @@ interface BenchWindow {
 }
 declare const window: BenchWindow & Window;
 
+/** Processor time that the page's own thread has used so far (script, style, layout, paint), ms. */
+export type ProcessorTime = () => Promise<number>;
+
+export async function processorTimeOf(session: CDPSession): Promise<ProcessorTime> {
+  await session.send('Performance.enable', { timeDomain: 'threadTicks' });
+  return async () => {
+    const { metrics } = await session.send('Performance.getMetrics');
+    return 1000 * (metrics.find(({ name }) => name === 'TaskDuration')?.value ?? NaN);
+  };
+}
+
 /** Presses a key that leads to the next spectrum again and again; the first ones warm the page up and are not counted. */
-export async function timeNext(page: Page, key: string, count: number, warmUp: number): Promise<number[]> {
-  const times: number[] = [];
+export async function timeNext(
+  page: Page,
+  processor: ProcessorTime,
+  key: string,
+  count: number,
+  warmUp: number,
+): Promise<PressTimes> {
+  const times: PressTimes = { clock: [], processor: [] };
   for (let i = 0; i < warmUp + count; i++) {
     await page.waitForTimeout(LOOK_MS);
     // The listener is set before the key goes down.
     await page.evaluate(() => void (window.benchPressed = window.benchNext()));
+    const before = await processor();
     await page.keyboard.press(key);
     const time = await page.evaluate(() => window.benchPressed!);
-    if (i >= warmUp) times.push(time);
+    if (i < warmUp) continue;
+    times.clock.push(time);
+    times.processor.push((await processor()) - before);
   }
   return times;
 }
 
 /** Script and layout of one redraw as an arrow key moves the redshift, ms. */
-export async function timeRedraws(page: Page, count: number): Promise<number[]> {
-  const times: number[] = [];
+export async function timeRedraws(page: Page, processor: ProcessorTime, count: number): Promise<PressTimes> {
+  const times: PressTimes = { clock: [], processor: [] };
   for (let i = 0; i < count + 10; i++) {
+    const before = await processor();
     const time = await page.evaluate(() => window.benchRedraw());
-    if (i >= 10) times.push(time);
+    if (i >= 10) {
+      times.clock.push(time);
+      times.processor.push((await processor()) - before);
+    }
     await page.waitForTimeout(20);
   }
   return times;
