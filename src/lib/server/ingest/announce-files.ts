@@ -7,7 +7,7 @@ import { touchNights } from '../database/queries/nights';
 import { archivesHere } from '../database/queries/uploads';
 import { nudge } from '../queue/nudge';
 import { refuseSize } from './largest-upload';
-import { addToNight, admitToNight } from './receive-file';
+import { addToNight, admitToNight, cleanName } from './receive-file';
 
 /**
  * Is told which files are about to be sent, and says which need not be: bytes that the programme has are put into the
@@ -26,7 +26,7 @@ export async function announceFiles(
   ]);
   const answers = files.map(({ path, sizeBytes, sha256 }): Announced['files'][number] => {
     if (sha256 && (known.has(sha256) || archives.has(sha256))) return { path, state: 'here' };
-    const refusal = refuseSize(path, sizeBytes);
+    const refusal = refuseSize(cleanName(path), sizeBytes);
     return refusal ? { path, state: 'refused', what: refusal.what, mend: refusal.mend } : { path, state: 'expected' };
   });
   const stored = files.flatMap(({ path: name, sizeBytes, sha256 }) =>

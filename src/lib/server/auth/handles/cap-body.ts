@@ -10,9 +10,15 @@ const LISTS = /^\/targets$/;
 const STREAMED = /^\/api\/v1\/nights\/[^/]+\/(files|uploads(\/[^/]+)?)$/;
 
 /** Refuses bodies over 1 MiB (24 MiB for a target list), and bodies of undeclared length, everywhere but on the upload routes. */
-export const capBody: Handle = ({ event, resolve }) => {
+export const capBody: Handle = async ({ event, resolve }) => {
   const { request, url } = event;
-  if (STREAMED.test(url.pathname) || !request.body) return resolve(event);
+  if (!request.body) return resolve(event);
+  if (STREAMED.test(url.pathname)) {
+    const response = await resolve(event);
+    // What is refused may be unread: the rest of it would be taken for the next request on this connection.
+    if (response.status >= 400) response.headers.set('connection', 'close');
+    return response;
+  }
   const declared = request.headers.get('content-length');
   const most = LISTS.test(url.pathname) && event.request.method === 'POST' ? LIST_BODY_BYTES : ORDINARY_BODY_BYTES;
   if (declared !== null && Number(declared) <= most) return resolve(event);
