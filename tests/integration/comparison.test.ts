@@ -4,6 +4,7 @@ import type { Measurement } from '$lib/domain/measurement';
 import type { Actor } from '$lib/server/auth/permissions';
 import { inTransaction } from '$lib/server/database/in-transaction';
 import { storeRemeasured } from '$lib/server/database/queries/remeasured-spectra';
+import { storeReviewSettings } from '$lib/server/database/queries/review-settings';
 import { endIfDone, insertRemeasure, takeSpectra } from '$lib/server/database/queries/remeasures';
 import { acceptMeasurements, previewAcceptance } from '$lib/server/review/accept-measurements';
 import { compareMeasurements } from '$lib/server/review/compare-measurements';
@@ -156,6 +157,27 @@ describe('the comparison of a re-measure', () => {
     const stranger = await installation.makePerson('Una Elsewhere', elsewhere, ['curator', 'scientist']);
     await expect(compare(stranger)).rejects.toMatchObject({ code: 'not-found' });
     await expect(compare(null)).rejects.toMatchObject({ code: 'not-signed-in' });
+  });
+});
+
+describe('spectra whose engine’s answer is hidden from someone', () => {
+  const hide = (hiddenShare: number) =>
+    inTransaction((transaction) =>
+      storeReviewSettings({ programmeId, looks: 2, hiddenShare, plantedRate: 0 }, curator.userId, transaction),
+    );
+
+  it('are in no list and no number of theirs until they have looked, and in those of others', async () => {
+    await hide(1);
+    const told = await compare(second);
+    expect(told.hidden).toBe(PAIRS.length - 1);
+    expect(names(told.rows)).toEqual(['open']);
+    expect(told.counts.reduce((sum, { count }) => sum + count, 0)).toBe(1);
+    expect((await previewAcceptance(second, run, {})).preview).toMatchObject({
+      accept: 0,
+      leave: { open: 1, unseen: 0 },
+    });
+    expect((await compare(observer)).rows).toHaveLength(PAIRS.length);
+    await hide(0);
   });
 });
 

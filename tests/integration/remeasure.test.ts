@@ -7,6 +7,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Instrument } from '$lib/domain/instrument';
 import type { Actor } from '$lib/server/auth/permissions';
 import { database } from '$lib/server/database/connection';
+import { statements } from '$lib/server/database/migrations/0005-instruments';
 import { assignColumns } from '$lib/server/ingest/assign-columns';
 import { createNight } from '$lib/server/ingest/create-night';
 import { readAssignment } from '$lib/server/ingest/read-assignment';
@@ -156,6 +157,13 @@ describe('measuring again', () => {
     await expect(startRemeasure(stranger, { night, reason: '' })).rejects.toMatchObject({ code: 'not-found' });
     await expect(startRemeasure(scientist, { night, reason: '' })).rejects.toMatchObject({ code: 'forbidden' });
   });
+});
+
+it('has a migration that can be run again', async () => {
+  const before = await numbers('SELECT COUNT(*) AS n FROM spectra s WHERE s.current_measurement_id IS NOT NULL');
+  for (const statement of [...statements, ...statements]) await database().query(statement);
+  expect(await numbers('SELECT COUNT(*) AS n FROM spectra s WHERE s.current_measurement_id IS NOT NULL')).toBe(before);
+  expect(await numbers('SELECT COUNT(*) AS n FROM remeasures')).toBeGreaterThan(0);
 });
 
 describe('files whose columns cannot be told', () => {

@@ -3,6 +3,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { InstrumentListRow, InstrumentVersionRow } from '$lib/domain/instrument-view';
 import { database } from '../connection';
 import { InstrumentVersion } from '../models/observing';
+import { CURRENT_REDUCTION } from './observed';
 import { NOT_PLANTED, NOT_PLANTED_FILE } from './planted';
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
@@ -71,7 +72,8 @@ export async function spectraNotBy(programmeId: string, name: string, instrument
   const [{ n }] = await database().query<{ n: number | string }>(
     `SELECT COUNT(*) AS n FROM files f LEFT JOIN instruments i ON i.id = f.instrument_id
       JOIN spectra s ON s.file_id = f.id LEFT JOIN measurements m ON m.id = s.current_measurement_id
-      WHERE ${OF_NAME} AND s.state <> 'waiting' AND ${NOT_PLANTED} AND NOT (m.instrument_id <=> :instrumentId)`,
+      WHERE ${OF_NAME} AND s.state <> 'waiting' AND ${CURRENT_REDUCTION} AND ${NOT_PLANTED}
+        AND NOT (m.instrument_id <=> :instrumentId)`,
     { replacements: { programmeId, name, instrumentId }, ...select },
   );
   return Number(n);

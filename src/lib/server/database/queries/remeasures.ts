@@ -3,6 +3,7 @@ import type { Instrument } from '$lib/domain/instrument';
 import { REMEASURE_STATES, type RemeasuredState, type RemeasureSummary } from '$lib/domain/remeasure';
 import { database } from '../connection';
 import { newIdentifier } from '../identifier';
+import { CURRENT_REDUCTION } from './observed';
 import { NOT_PLANTED } from './planted';
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
@@ -45,12 +46,16 @@ export async function isRemeasureRunning(programmeId: string, transaction: Trans
   return rows.length > 0;
 }
 
-/** Moves the files in scope to the newest version of their instrument; one without any takes that of its night. */
+/**
+ * Moves the files in scope to the newest version of their instrument; one without any takes that of its night, but for
+ * combinations, whose files say all of themselves.
+ */
 export async function moveToNewestInstruments(scope: RemeasureScope, transaction: Transaction): Promise<void> {
   const replacements = { ...scope };
   await database().query(
     `UPDATE files f SET f.instrument_id = (SELECT MAX(n.instrument_id) FROM night_files nf JOIN nights n ON n.id = nf.night_id
-        WHERE nf.file_id = f.id) WHERE f.instrument_id IS NULL AND ${IN_SCOPE}`,
+        WHERE nf.file_id = f.id) WHERE f.instrument_id IS NULL
+      AND NOT EXISTS (SELECT 1 FROM combinations c WHERE c.file_id = f.id) AND ${IN_SCOPE}`,
     { replacements, transaction },
   );
   await database().query(
@@ -79,7 +84,8 @@ export async function instrumentsInScope(
 }
 
 /**
- * Takes the spectra in scope of files read by one version of an instrument into a re-measure. One whose current
+ * Takes the spectra in scope of files read by one version of an instrument into a re-measure; of an exposure its newest
+ * reduction. One whose current
  * measurement is by this engine and settings is skipped; one that has such a measurement beside the current one needs
  * no measuring.
  */
@@ -96,7 +102,8 @@ export async function takeSpectra(
       FROM files f JOIN spectra s ON s.file_id = f.id
       LEFT JOIN measurements same ON same.spectrum_id = s.id AND same.engine_version = :engineVersion
         AND same.settings_hash = :settingsHash
-      WHERE f.instrument_id <=> :instrumentId AND s.state <> 'waiting' AND ${NOT_PLANTED} AND ${IN_SCOPE}`,
+      WHERE f.instrument_id <=> :instrumentId AND s.state <> 'waiting' AND ${CURRENT_REDUCTION} AND ${NOT_PLANTED}
+        AND ${IN_SCOPE}`,
     { replacements: { remeasureId, ...scope, ...by }, transaction },
   );
 }
