@@ -16,6 +16,8 @@ const FIELDS = [
 const FIELD_RADIUS_DEGREES = 0.45;
 /** The wavelength scale wanders as the spectrograph cools, km/s from evening to morning. */
 const DRIFT_KMS = [-1.6, 1.8] as const;
+/** How well the wavelengths of one fibre are known, km/s. */
+const FIBRE_SCATTER_KMS = 0.7;
 
 function pad(value: number, digits: number): string {
   return String(value).padStart(digits, '0');
@@ -74,7 +76,8 @@ export function demoFieldStartMs(field: number, nights = 0): number {
 export function demoNight(seed = DEMO_SEED): DemoSpectrum[] {
   const [evening, morning] = DRIFT_KMS;
   return demoTargets(seed).map(({ field, firstSeed, ...target }) => {
-    const slipKms = evening + ((morning - evening) * field) / (FIELDS.length - 1);
+    const fibreKms = new Random(firstSeed).normal(0, FIBRE_SCATTER_KMS);
+    const slipKms = evening + ((morning - evening) * field) / (FIELDS.length - 1) + fibreKms;
     return observeDemoTarget(target, { startMs: demoFieldStartMs(field), slipKms, seed: firstSeed });
   });
 }

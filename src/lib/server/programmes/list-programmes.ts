@@ -10,6 +10,8 @@ export interface ProgrammeInList {
   looks: number;
   /** Whether the actor may open a night of it. */
   mayCreateNight: boolean;
+  /** Whether the actor may see its targets and their spectra. */
+  mayReadSpectra: boolean;
   members: { id: string; name: string; roles: Role[] }[];
 }
 
@@ -20,7 +22,9 @@ export async function listProgrammes(actor: Actor | null): Promise<ProgrammeInLi
     const { programmeId: id, slug, programmeName: name, looks } = row;
     if (!programmes.has(id)) {
       const mayCreateNight = may(actor, 'night.create', id);
-      programmes.set(id, { id, slug, name, isDemo: !!row.isDemo, looks: Number(looks), mayCreateNight, members: [] });
+      const mayReadSpectra = may(actor, 'spectrum.read', id);
+      const rights = { mayCreateNight, mayReadSpectra };
+      programmes.set(id, { id, slug, name, isDemo: !!row.isDemo, looks: Number(looks), ...rights, members: [] });
     }
     const { members } = programmes.get(id)!;
     if (members.at(-1)?.id !== row.userId) members.push({ id: row.userId, name: row.userName, roles: [] });
