@@ -3,9 +3,8 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { MeasureOutput, Measurement } from '$lib/domain/measurement';
 import type { RawSpectrum } from '$lib/domain/spectrum';
 import { readSpectra } from '$lib/formats/read-spectra';
-import { withDerived } from '$lib/science/derive/with-derived';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
-import { measureSpectrum } from '$lib/science/measure/measure-spectrum';
+import { measureOne } from '$lib/server/measure/measure-rows';
 import { explainMeasurement } from './explain-measurement';
 import { problemLine, type MeasuredLine } from './measured-line';
 
@@ -45,7 +44,7 @@ function outputOf(source: string, raw: RawSpectrum, measurement: Measurement): M
 function measureRaw(raw: RawSpectrum, task: MeasureTask): Omit<MeasuredLine, 'order'> {
   try {
     const spectrum = toSpectrum(raw, task.instrument);
-    const measurement = withDerived(measureSpectrum(spectrum), spectrum);
+    const { measurement } = measureOne(spectrum, task.instrument);
     const where = `${task.source}, HDU ${raw.extension}, row ${raw.row}`;
     const notes = spectrum.warnings.map((warning) => `${where}: ${warning}`);
     if (task.explain) notes.push(...explainMeasurement(where, raw.name, measurement));

@@ -1,6 +1,7 @@
 import type { Instrument } from '$lib/domain/instrument';
+import type { Measurement } from '$lib/domain/measurement';
 import type { MeasureResult } from '$lib/domain/measure-result';
-import { InputProblem, type Problem } from '$lib/domain/problem';
+import { InputProblem, type Problem } from '$lib/domain/input-problem';
 import type { RawSpectrum, Spectrum } from '$lib/domain/spectrum';
 import { readSpectra } from '$lib/formats/read-spectra';
 import { withDerived } from '$lib/science/derive/with-derived';
@@ -27,7 +28,7 @@ export function measureRows(
 }
 
 /** Measures a spectrum, with its derived quantities; the settings hash covers the instrument it was read by. */
-export function measureOne(spectrum: Spectrum, instrument?: Instrument): MeasureResult {
+export function measureOne(spectrum: Spectrum, instrument?: Instrument): { measurement: Measurement } {
   const measurement = withDerived(measureSpectrum(spectrum), spectrum);
   const { engine } = measurement;
   return { measurement: { ...measurement, engine: { ...engine, settings: completeSettingsHash(engine, instrument) } } };
