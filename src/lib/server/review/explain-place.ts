@@ -4,6 +4,7 @@ import type { Looked } from '$lib/science/review/worth-of-a-look';
 /** What a place in the queue is made from, as far as the reader may know it. */
 export type Place = Omit<Looked, 'conflict'> & { conflict: Conflict | null };
 
+const WHOLE = new Intl.NumberFormat('en-GB');
 const days = (count: number) => (count === 1 ? '1 day' : `${count} days`);
 
 /** Why a spectrum stands where it does in the queue, in a few words: the terms of its worth that count for anything. */
@@ -13,7 +14,7 @@ export function explainPlace({ entropyBits, conflict, priorityShare, ageDays }: 
   else if (priorityShare >= 0.5) parts.push('high in the programme’s priorities');
   else if (priorityShare > 0) parts.push('low in the programme’s priorities');
   if (conflict) {
-    const kms = (Math.round(conflict.kms / 100) * 100).toLocaleString('en-GB');
+    const kms = WHOLE.format(Math.round(conflict.kms / 100) * 100);
     parts.push(`another spectrum of the target says ${conflict.redshift.toFixed(4)}, ${kms} km/s away`);
   }
   if (entropyBits === null) parts.push('a look without the engine’s answer');
