@@ -8,7 +8,7 @@ describe('calibratedProbability', () => {
     for (const group of ['star-forming, three lines', 'quasar, unsettled', 'never heard of']) {
       let last = 0;
       for (let raw = 0; raw <= 1.0001; raw += 0.01) {
-        const probability = calibratedProbability(Math.min(1, raw), group);
+        const probability = calibratedProbability(Math.min(1, raw), group, 12);
         expect(probability).toBeGreaterThanOrEqual(last);
         last = probability;
       }
@@ -23,7 +23,7 @@ describe('fitCalibration', () => {
     const rows = Array.from({ length: 6000 }, () => {
       const x = 12 * uniform() - 6;
       const right = uniform() < 1 / (1 + Math.exp(-(0.4 + 0.7 * x)));
-      return { group: 'a', raw: 1 / (1 + Math.exp(-x)), right };
+      return { group: 'a', raw: 1 / (1 + Math.exp(-x)), signal: 10, right };
     });
     const line = fitCalibration(rows);
     expect(line.offset).toBeCloseTo(0.4, 0);
@@ -31,6 +31,6 @@ describe('fitCalibration', () => {
   });
 
   it('returns the prior without rows', () => {
-    expect(fitCalibration([])).toEqual({ offset: 0, slope: 0.3, count: 0 });
+    expect(fitCalibration([])).toEqual({ offset: 0, slope: 0.3, signalSlope: 0.5, count: 0 });
   });
 });

@@ -27,6 +27,8 @@ export interface Decision {
   /** Posterior of the first candidate before calibration, and the group it is calibrated in. */
   rawProbability: number;
   group: string;
+  /** Signal-to-noise ratio of what the first candidate rests on. */
+  signal: number;
   first: FirstRedshift | null;
   candidates: Candidate[];
   probability: number;
@@ -52,7 +54,7 @@ export function decide(
   prepared: PreparedSpectrum,
   hypotheses: Hypotheses,
   posterior: Posterior,
-  calibrate: (raw: number, group: string) => number,
+  calibrate: (raw: number, group: string, signal: number) => number,
   listed: number,
 ): Decision {
   const entries: Entry[] = [
@@ -72,7 +74,8 @@ export function decide(
   }
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
   const group = top && evidence ? groupOf(top, evidence, leavesFeatures(hypotheses, top)) : 'none';
-  const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability, group)) : 0;
+  const signal = top ? signalOf(top, refit0) : 0;
+  const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability, group, signal)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;
   const rivals = {
     nothing: posterior.nothing * rest,
@@ -99,6 +102,7 @@ export function decide(
   const base = {
     rawProbability: top?.probability ?? 0,
     group,
+    signal,
     candidates,
     probability,
     rivals,
@@ -179,6 +183,15 @@ function blended(refit: FinalFit): boolean {
       return apart < 1.2 * FWHM_PER_SIGMA * fit.sigmaKms[0];
     }),
   );
+}
+
+/** Signal-to-noise ratio of the strongest line, or what the evidence of absorption amounts to. */
+function signalOf(top: Entry, refit: FinalFit | null): number {
+  if (!top.emission || !refit) return Math.sqrt(2 * Math.max(0, top.absorption?.logEvidence ?? 0));
+  return refit.fit.components.reduce((most, { auxiliary }, i) => {
+    const signal = refit.fit.amplitude[i] / (refit.errors.amplitude[i] * refit.errorScale);
+    return !auxiliary && signal > most ? signal : most;
+  }, 0);
 }
 
 /** Signal-to-noise of every line that the fit reached, those it gave nothing too. */

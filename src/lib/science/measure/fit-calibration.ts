@@ -1,64 +1,58 @@
-import { logOdds } from './calibrate';
+import { logOdds, logSignal, type CalibrationLine } from './calibrate';
+import { choleskyInPlace, choleskySolve } from './fit/solve';
 
 /** One answer of known truth. */
 export interface CalibrationRow {
   group: string;
   raw: number;
+  /** Signal-to-noise ratio of what it rests on. */
+  signal: number;
   /** Whether the first candidate lies within 1,000 km/s of the truth. */
   right: boolean;
 }
 
-/** A line on log odds. */
-export interface CalibrationLine {
-  offset: number;
-  slope: number;
-  count: number;
-}
-
-/** Prior of the line: log odds times 0.3, which never makes a thin group secure, with the weight of a few dozen answers, so that thin groups stay sensible. */
-const PRIOR = { offset: 0, slope: 0.3, offsetSigma: 1.5, slopeSigma: 0.15 } as const;
-const LEAST_SLOPE = 0.02;
+/**
+ * Gaussian prior of offset and slopes: log odds times 0.3, which never makes a thin group secure, rising with the
+ * signal, with the weight of a few dozen answers, so that thin groups stay sensible.
+ */
+const PRIOR = { mean: [0, 0.3, 0.5], sigma: [1.5, 0.15, 0.5], least: [-Infinity, 0.02, 0] } as const;
 
 /**
- * Logistic regression of "right" on the log odds of the raw posterior, by Newton steps on the penalised likelihood; the
- * slope is kept positive, so that the map is monotone.
+ * Logistic regression of "right" on the log odds of the raw posterior and the logarithm of the signal, by Newton steps
+ * on the penalised likelihood; both slopes are kept from falling, so that the map is monotone.
  *
  * @returns the prior's line where there is no row
  * Source: Platt (1999), "Probabilistic outputs for support vector machines"; the penalty is a Gaussian prior.
  */
-export function fitCalibration(rows: readonly CalibrationRow[]): CalibrationLine {
-  let offset: number = PRIOR.offset;
-  let slope: number = PRIOR.slope;
-  for (let round = 0; round < 50; round++) {
-    let g0 = -(offset - PRIOR.offset) / PRIOR.offsetSigma ** 2;
-    let g1 = -(slope - PRIOR.slope) / PRIOR.slopeSigma ** 2;
-    let h00 = 1 / PRIOR.offsetSigma ** 2;
-    let h01 = 0;
-    let h11 = 1 / PRIOR.slopeSigma ** 2;
-    for (const row of rows) {
-      const x = logOdds(row.raw);
-      const p = 1 / (1 + Math.exp(-(offset + slope * x)));
-      const error = (row.right ? 1 : 0) - p;
+export function fitCalibration(rows: readonly CalibrationRow[]): CalibrationLine & { count: number } {
+  const line: number[] = [...PRIOR.mean];
+  const terms = rows.map((row) => [1, logOdds(row.raw), logSignal(row.signal)]);
+  for (let round = 0; round < 60; round++) {
+    const step = Float64Array.from(line, (value, k) => -(value - PRIOR.mean[k]) / PRIOR.sigma[k] ** 2);
+    const hessian = new Float64Array(9);
+    for (let k = 0; k < 3; k++) hessian[4 * k] = 1 / PRIOR.sigma[k] ** 2;
+    rows.forEach((row, r) => {
+      const term = terms[r];
+      const p = 1 / (1 + Math.exp(-(line[0] + line[1] * term[1] + line[2] * term[2])));
       const weight = Math.max(1e-9, p * (1 - p));
-      g0 += error;
-      g1 += error * x;
-      h00 += weight;
-      h01 += weight * x;
-      h11 += weight * x * x;
+      for (let a = 0; a < 3; a++) {
+        step[a] += ((row.right ? 1 : 0) - p) * term[a];
+        for (let b = 0; b < 3; b++) hessian[3 * a + b] += weight * term[a] * term[b];
+      }
+    });
+    if (!choleskyInPlace(hessian, 3)) break;
+    choleskySolve(hessian, step, 3);
+    const largest = Math.max(...step.map(Math.abs));
+    const scale = largest > 0.5 ? 0.5 / largest : 1;
+    let moved = 0;
+    for (let k = 0; k < 3; k++) {
+      const next = Math.max(PRIOR.least[k], line[k] + scale * step[k]);
+      moved = Math.max(moved, Math.abs(next - line[k]));
+      line[k] = next;
     }
-    const determinant = h00 * h11 - h01 * h01;
-    let step0 = (h11 * g0 - h01 * g1) / determinant;
-    let step1 = (h00 * g1 - h01 * g0) / determinant;
-    const largest = Math.max(Math.abs(step0), 4 * Math.abs(step1));
-    if (largest > 1) {
-      step0 /= largest;
-      step1 /= largest;
-    }
-    offset += step0;
-    slope = Math.max(LEAST_SLOPE, slope + step1);
-    if (largest < 1e-9) break;
+    if (moved < 1e-9) break;
   }
-  return { offset, slope, count: rows.length };
+  return { offset: line[0], slope: line[1], signalSlope: line[2], count: rows.length };
 }
 
 /** Lines of every group and of all rows together. */

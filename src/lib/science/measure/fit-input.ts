@@ -16,8 +16,17 @@ export interface FitAtRedshiftInput {
   lsfSigma: NumberArray;
 }
 
-/** Turns input arrays into fit data, copying only where it must. */
+/** A spectrum is fitted again and again while a redshift is dragged: its data are made once. */
+const made = new WeakMap<FitAtRedshiftInput, FitData>();
+
+/** Turns input arrays into fit data, copying only where it must; once for an input, which must not change afterwards. */
 export function fitDataOf(input: FitAtRedshiftInput): FitData {
+  const data = made.get(input) ?? makeFitData(input);
+  made.set(input, data);
+  return data;
+}
+
+function makeFitData(input: FitAtRedshiftInput): FitData {
   const count = input.wavelength.length;
   const wavelength = float64(input.wavelength);
   const edges = input.edges ? float64(input.edges) : new Float64Array(count + 1);

@@ -79,6 +79,12 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     step,
     settings.noiseCheck,
   );
+  const darkBands = filterBank(
+    { ...working, residual: stiffResidual, weight: withoutTelluric(working) },
+    BROAD_SIGMAS_KMS,
+    1e-3,
+    settings.noiseCheck,
+  );
   const context: WeighContext = {
     data: working,
     continuum,
@@ -107,7 +113,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const absorptionAt = (logScale: number, star: boolean): AbsorptionCandidate => ({
     logScale,
     ...absorptionEvidence(
-      { lines: dark, bands },
+      { lines: dark, bands: darkBands },
       logScale,
       relativeResolution,
       context.logNoiseFlux,
@@ -152,8 +158,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
  * in telluric bands, which absorb whatever the object.
  */
 function withoutEmission(working: WorkingSpectrum, features: readonly Feature[]): Float64Array {
-  const weight = Float64Array.from(working.weight);
-  for (let i = 0; i < working.count; i++) if (working.mask[i] & MASK.telluric) weight[i] = 0;
+  const weight = withoutTelluric(working);
   for (const feature of features) {
     // Where dips are as common as bumps, a bump is what deep absorption leaves of the continuum beside it.
     if (feature.rough) continue;
@@ -162,6 +167,12 @@ function withoutEmission(working: WorkingSpectrum, features: readonly Feature[])
     const end = lowerBound(working.wavelength, feature.wavelength + 3 * sigma);
     for (let i = lowerBound(working.wavelength, feature.wavelength - 3 * sigma); i < end; i++) weight[i] = 0;
   }
+  return weight;
+}
+
+function withoutTelluric(working: WorkingSpectrum): Float64Array {
+  const weight = Float64Array.from(working.weight);
+  for (let i = 0; i < working.count; i++) if (working.mask[i] & MASK.telluric) weight[i] = 0;
   return weight;
 }
 
