@@ -114,19 +114,24 @@ export async function timeNext(
   return times;
 }
 
-/** Script and layout of one redraw as an arrow key moves the redshift, ms. */
+/**
+ * Redraws as an arrow key moves the redshift, a frame each: script and layout of every one by the clock, and the
+ * processor time of the page's own thread a redraw, painting included.
+ */
 export async function timeRedraws(page: Page, processor: ProcessorTime, count: number): Promise<PressTimes> {
-  const times: PressTimes = { clock: [], processor: [] };
-  for (let i = 0; i < count + 10; i++) {
-    const before = await processor();
-    const time = await page.evaluate(() => window.benchRedraw());
-    if (i >= 10) {
-      times.clock.push(time);
-      times.processor.push((await processor()) - before);
-    }
-    await page.waitForTimeout(20);
-  }
-  return times;
+  const redraw = (times: number) =>
+    page.evaluate(async (left) => {
+      const clock: number[] = [];
+      for (; left > 0; left--) {
+        clock.push(await window.benchRedraw());
+        await new Promise((resolve) => requestAnimationFrame(resolve));
+      }
+      return clock;
+    }, times);
+  await redraw(10);
+  const before = await processor();
+  const clock = await redraw(count);
+  return { clock, processor: [((await processor()) - before) / count] };
 }
 
 /** Times between frames while the redshift is dragged through the spectrum, ms. */

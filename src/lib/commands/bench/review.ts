@@ -76,7 +76,7 @@ export async function runReview({ count, seed }: ReviewOptions): Promise<void> {
             row('leafing key to next spectrum drawn', leaves.clock, 100),
             row("  of it in the page's own thread", leaves.processor, null),
             row('one redraw, script and layout', redraws.clock, 8),
-            row("  processor time of the page's own thread", redraws.processor, 8),
+            row('  processor time of its thread, painting included', redraws.processor, null),
             row('between frames while z is dragged', frames, null),
           ],
         )}\n\n${short(rate, 0)} frames a second while z is dragged\n`,
