@@ -159,6 +159,26 @@ describe('measuring again', () => {
   });
 });
 
+it('gives a new night the instrument that is named, else the one saved last', async () => {
+  const other = await save({ name: 'CH-2', medium: 'air' }, 0);
+  const nightOf = async (instrument?: string) => {
+    const { id } = await createNight(observer, { civilDate: '2026-11-16', notes: '', instrument });
+    const [row] = await database().query<{ name: string }>(
+      `SELECT i.name FROM nights n JOIN instruments i ON i.id = n.instrument_id WHERE n.id = '${id}'`,
+      { type: QueryTypes.SELECT },
+    );
+    return row.name;
+  };
+  expect(await nightOf()).toBe('CH-2');
+  expect(await nightOf('CH-1')).toBe('CH-1');
+  await expect(nightOf('CH-3')).rejects.toMatchObject({ code: 'invalid', where: 'instrument' });
+  expect((await readInstrument(observer, other.id)).nights).toHaveLength(1);
+  // Nights of another instrument do not follow a change of this one.
+  await save({ name: 'CH-2', medium: 'vacuum' }, 1);
+  expect(await nightOf('CH-1')).toBe('CH-1');
+  await save({ ...described, resolvingPower: 1500 });
+});
+
 it('has a migration that can be run again', async () => {
   const before = await numbers('SELECT COUNT(*) AS n FROM spectra s WHERE s.current_measurement_id IS NOT NULL');
   for (const statement of [...statements, ...statements]) await database().query(statement);
