@@ -39,8 +39,11 @@ export function collectChosen(files: File[]): Collected {
   return inOrder(collected);
 }
 
+/** Made once: `localeCompare` makes one at every call, which takes seconds over 5,000 paths. */
+const byNumber = new Intl.Collator('en', { numeric: true });
+
 function inOrder(collected: Collected): Collected {
-  collected.found.sort((a, b) => a.path.localeCompare(b.path, 'en', { numeric: true }));
+  collected.found.sort((a, b) => byNumber.compare(a.path, b.path));
   return collected;
 }
 
