@@ -28,6 +28,7 @@ const TABLE = {
   fluxTaller: { label: 'flux axis: taller', scope: 'review', keys: [']'], mayRepeat: true },
   fluxFlatter: { label: 'flux axis: flatter', scope: 'review', keys: ['['], mayRepeat: true },
   residuals: { label: 'residuals', scope: 'review', keys: ['r'] },
+  beside: { label: 'other spectra of the target', scope: 'review', keys: ['o'] },
   plot: { label: 'what the plot shows', scope: 'review', keys: ['w'] },
   brush: { label: 'brush: drag to mask', scope: 'review', keys: ['b'] },
   masks: { label: 'masks by numbers', scope: 'review', keys: ['k'] },

@@ -13,6 +13,9 @@ const COLOURS = [
   'continuum',
   'telluric',
   'skyline',
+  'teal',
+  'violet',
+  'ochre',
 ] as const;
 const STROKES = ['flux', 'error', 'model', 'continuum'] as const;
 

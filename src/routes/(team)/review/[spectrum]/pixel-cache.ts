@@ -1,7 +1,7 @@
 import { decodeReviewSpectrum, type ReviewSpectrum } from '$lib/domain/review-spectrum';
 
-/** Spectra kept: the one on the desk, three ahead, and the last few for undo and a look back. */
-const KEPT = 10;
+/** Spectra kept: the one on the desk, those of its target, three ahead, and the last few for undo and a look back. */
+const KEPT = 20;
 
 /** Pixels of spectra by id, fetched once, so that the next spectrum is here before it is asked for. */
 class PixelCache {

@@ -42,6 +42,7 @@ export function reviewKeys(desk: () => Desk): KeyHandlers {
     fluxTaller: state((review) => review.zoomFlux(1 / 1.5)),
     fluxFlatter: state((review) => review.zoomFlux(1.5)),
     residuals: () => plotChoices.change({ residuals: !plotChoices.residuals }),
+    beside: state(({ beside }) => void beside.toggle()),
     plot: () => desk().plot.open(),
     brush: state(({ masks }) => (masks.brush = !masks.brush)),
     masks: () => desk().masks.open(),

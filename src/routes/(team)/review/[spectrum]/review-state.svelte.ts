@@ -9,6 +9,7 @@ import type { Mask } from '$lib/domain/mask';
 import type { Measurement } from '$lib/domain/measurement';
 import type { ReviewSpectrum } from '$lib/domain/review-spectrum';
 import { SPEED_OF_LIGHT_KMS } from '$lib/science/constants/physical';
+import { BesideSpectra } from './beside.svelte';
 import { lineFitter, type LineFitter } from './line-fit';
 import { MaskList } from './mask-list.svelte';
 
@@ -77,6 +78,7 @@ export class ReviewState {
   given = $state(false);
 
   readonly masks: MaskList;
+  readonly beside: BesideSpectra;
 
   /**
    * @param pixels where they are here already: the plots then stay as they are and only draw anew
@@ -87,6 +89,7 @@ export class ReviewState {
     pixels: ReviewSpectrum | null = null,
     before: Before | null = null,
   ) {
+    this.beside = new BesideSpectra(spectrum.id);
     this.masks = new MaskList(before?.masks, () => (this.snappedError = null));
     this.id = spectrum.id;
     this.measurement = spectrum.measurement;
