@@ -8,32 +8,24 @@ import type { Instrument } from '$lib/domain/instrument';
 import type { Actor } from '$lib/server/auth/permissions';
 import { database } from '$lib/server/database/connection';
 import { statements } from '$lib/server/database/migrations/0005-instruments';
-import { assignColumns } from '$lib/server/ingest/assign-columns';
+import { inTransaction } from '$lib/server/database/in-transaction';
+import { storeRemeasured } from '$lib/server/database/queries/remeasured-spectra';
 import { createNight } from '$lib/server/ingest/create-night';
-import { readAssignment } from '$lib/server/ingest/read-assignment';
-import { listInstruments, readInstrument } from '$lib/server/ingest/read-instrument';
 import { readNight } from '$lib/server/ingest/read-night';
 import { receiveFile } from '$lib/server/ingest/receive-file';
 import { saveInstrument } from '$lib/server/ingest/save-instrument';
-import { tryAssignment } from '$lib/server/ingest/try-assignment';
 import { cancelRemeasure } from '$lib/server/measure/cancel-remeasure';
-import { readRemeasure } from '$lib/server/measure/read-remeasure';
+import { listRemeasures, readRemeasure } from '$lib/server/measure/read-remeasure';
+import { remeasureJobId, remeasureSpectra } from '$lib/server/measure/remeasure-spectra';
 import { startRemeasure } from '$lib/server/measure/start-remeasure';
+import { redis } from '$lib/server/queue/redis';
 import { makeInstallation, type Installation } from './installation';
+import { seededMeasurement } from './seed-spectra';
 import { startWorker, until } from './worker-process';
 
 const SAMPLE = 'tests/fixtures/sample-night';
 const FILES = ['hz_0001.fits', 'hz_0005.dat', 'hz_0015.csv', 'hz_0018.csv'];
 const bytes = (name: string) => readFileSync(join(SAMPLE, name));
-/** The first columns of hz_0018.csv (wavelength in um, flux, error) under names that say nothing; `copies` tell it apart. */
-const odd = (copies: number) => {
-  const rows = bytes('hz_0018.csv')
-    .toString('utf8')
-    .split('\n')
-    .filter((line) => /^[\d.]/.test(line));
-  return Buffer.from(['aa,bb,cc', ...rows, ''.padEnd(copies, '\n')].join('\n'));
-};
-
 const described: Instrument = { name: 'CH-1', medium: 'vacuum', specsys: 'TOPOCENT', resolvingPower: 1800 };
 
 let installation: Installation;
@@ -67,33 +59,22 @@ const whenEnded = (id: string) =>
 const numbers = async (sql: string) =>
   Number((await database().query<{ n: number }>(sql, { type: QueryTypes.SELECT }))[0].n);
 
-describe('an instrument', () => {
-  it('has a new version for every change, none for none, and keeps the old ones readable', async () => {
-    const first = await save(described, 0);
-    expect(first).toMatchObject({ version: 1, isNew: true, wouldTouch: 0 });
-    expect(await save({ ...described })).toMatchObject({ id: first.id, isNew: false });
-    const second = await save({ ...described, badRegionsAngstrom: [[7590, 7620, 'hot column']] }, 1);
-    expect(second).toMatchObject({ version: 2, isNew: true });
-    const page = await readInstrument(scientist, first.id);
-    expect(page).toMatchObject({ version: 1, isNewest: false, by: 'Ola Server', description: described });
-    expect(page.versions.map(({ version }) => version)).toEqual([2, 1]);
-    expect(page.maySave).toBe(false);
-    const { instruments } = await listInstruments(observer);
-    expect(instruments.map(({ name, version }) => [name, version])).toEqual([['CH-1', 2]]);
-  });
-
-  it('refuses a change of a version that is not the newest, and a person who may not', async () => {
-    await expect(save({ ...described, medium: 'air' }, 1)).rejects.toMatchObject({ code: 'conflict' });
-    await expect(
-      saveInstrument(scientist, { programme: 'again', description: described, note: '' }),
-    ).rejects.toMatchObject({ code: 'forbidden' });
-  });
+const spectrumIds = async () =>
+  (
+    await database().query<{ id: string }>('SELECT id FROM spectra ORDER BY file_id, extension, row_index', {
+      type: QueryTypes.SELECT,
+    })
+  ).map(({ id }) => id);
+const summaryOf = (name: string) => ({
+  ...{ extension: 1, row: 1, name, raDegrees: 1, decDegrees: 1, exposureSeconds: 900, header: {}, warnings: [] },
+  ...{ pixelCount: 1, wavelengthMin: 1, wavelengthMax: 2, medianSignalToNoise: 5 },
 });
 
 describe('measuring again', () => {
   let night: string;
 
   it('skips what the same engine and settings measured, and counts it', async () => {
+    await save(described, 0);
     worker = startWorker(installation.env);
     night = (await createNight(observer, { civilDate: '2026-11-14', notes: '' })).id;
     for (const name of FILES) await submit(night, name, bytes(name));
@@ -148,7 +129,40 @@ describe('measuring again', () => {
     expect([state, counts.cancelled, counts.waiting]).toEqual(['cancelled', 4, 0]);
     expect(await numbers('SELECT COUNT(*) AS n FROM outbox')).toBe(0);
     await expect(cancelRemeasure(observer, id)).rejects.toMatchObject({ code: 'conflict' });
+    // A worker that had them in hand when it was cancelled brings its results now.
+    const before = await numbers('SELECT COUNT(*) AS n FROM measurements');
+    const late = (await spectrumIds()).map((spectrum) => ({
+      id: spectrum,
+      instrumentId: null,
+      outcome: { measurement: seededMeasurement({ name: 'late' }), summary: summaryOf(spectrum) },
+    }));
+    await inTransaction((transaction) => storeRemeasured(id, late, transaction));
+    expect(await numbers('SELECT COUNT(*) AS n FROM measurements')).toBe(before);
+  });
+
+  it('sets a spectrum that takes the engine down aside after three tries, and the older measurement stands', async () => {
+    const { id: remeasureId } = await startRemeasure(observer, { night, reason: '' });
+    const ids = await spectrumIds();
+    const fails = () => Promise.reject(new Error('the thread is gone'));
+    const once = (some: string[]) =>
+      remeasureSpectra({ remeasureId, spectrumIds: some }, remeasureJobId(remeasureId, some), fails);
+    await expect(once(ids)).rejects.toThrow('the thread is gone');
+    await once(ids);
+    expect(await numbers(`SELECT COUNT(*) AS n FROM outbox WHERE job_id LIKE 'remeasure-%-1'`)).toBe(4);
+    await once(ids.slice(0, 1));
+    const { remeasure, problems } = await readRemeasure(observer, remeasureId);
+    expect(remeasure.counts).toMatchObject({ failed: 1, waiting: 3 });
+    expect(problems).toMatchObject([{ spectrum: ids[0], problem: { code: 'engine-fault' } }]);
+    expect(await numbers(`SELECT COUNT(*) AS n FROM spectra WHERE state <> 'measured'`)).toBe(0);
+  });
+
+  it('goes on where it was when the worker and all of Redis come back empty', { timeout: 60_000 }, async () => {
+    await redis().flushall();
     worker = startWorker(installation.env);
+    const [{ id }] = await listRemeasures(observer);
+    const { counts, state } = await whenEnded(id);
+    expect([state, counts.measured, counts.failed, counts.waiting]).toEqual(['done', 3, 1, 0]);
+    expect(await numbers('SELECT COUNT(*) AS n FROM outbox')).toBe(0);
   });
 
   it('is refused to those outside the programme as if it were not there', async () => {
@@ -159,72 +173,9 @@ describe('measuring again', () => {
   });
 });
 
-it('gives a new night the instrument that is named, else the one saved last', async () => {
-  const other = await save({ name: 'CH-2', medium: 'air' }, 0);
-  const nightOf = async (instrument?: string) => {
-    const { id } = await createNight(observer, { civilDate: '2026-11-16', notes: '', instrument });
-    const [row] = await database().query<{ name: string }>(
-      `SELECT i.name FROM nights n JOIN instruments i ON i.id = n.instrument_id WHERE n.id = '${id}'`,
-      { type: QueryTypes.SELECT },
-    );
-    return row.name;
-  };
-  expect(await nightOf()).toBe('CH-2');
-  expect(await nightOf('CH-1')).toBe('CH-1');
-  await expect(nightOf('CH-3')).rejects.toMatchObject({ code: 'invalid', where: 'instrument' });
-  expect((await readInstrument(observer, other.id)).nights).toHaveLength(1);
-  // Nights of another instrument do not follow a change of this one.
-  await save({ name: 'CH-2', medium: 'vacuum' }, 1);
-  expect(await nightOf('CH-1')).toBe('CH-1');
-  await save({ ...described, resolvingPower: 1500 });
-});
-
 it('has a migration that can be run again', async () => {
   const before = await numbers('SELECT COUNT(*) AS n FROM spectra s WHERE s.current_measurement_id IS NOT NULL');
   for (const statement of [...statements, ...statements]) await database().query(statement);
   expect(await numbers('SELECT COUNT(*) AS n FROM spectra s WHERE s.current_measurement_id IS NOT NULL')).toBe(before);
   expect(await numbers('SELECT COUNT(*) AS n FROM remeasures')).toBeGreaterThan(0);
-});
-
-describe('files whose columns cannot be told', () => {
-  it('wait for an assignment, are shown, tried, and read together once it is kept', { timeout: 60_000 }, async () => {
-    const night = (await createNight(observer, { civilDate: '2026-11-15', notes: '' })).id;
-    const received = [];
-    for (const n of [1, 2, 3]) received.push(await submit(night, `odd-${n}.csv`, odd(n)));
-    const waiting = await whenMeasured(night);
-    expect(waiting.problems.map(({ code }) => code)).toEqual(Array(3).fill('needs-assignment'));
-    const [{ id }] = received;
-    const page = await readAssignment(observer, id);
-    expect(page.waiting).toHaveLength(3);
-    expect(page.parts[0].columns.map(({ name }) => name)).toEqual(['aa', 'bb', 'cc']);
-
-    const names = ['aa', 'bb', 'cc'];
-    const wrong = { names, columns: { wavelength: 'aa', flux: 'bb', wavelengthUnit: 'parsec' } };
-    expect((await tryAssignment(observer, id, wrong)).problem?.what).toContain("'parsec'");
-    const assignment = { names, columns: { wavelength: 'aa', wavelengthUnit: 'um', flux: 'bb', error: 'cc' } };
-    const trial = await tryAssignment(observer, id, assignment);
-    expect(trial).toMatchObject({ problem: null, spectra: 1 });
-    expect(trial.wavelengthAngstrom[0]).toBeCloseTo(5588.541, 3);
-    expect(trial.warnings.join()).toContain('could not be made barycentric');
-    await expect(assignColumns(observer, id, { instrument: 'CH-1', assignment: wrong })).rejects.toMatchObject({
-      code: 'invalid',
-    });
-    await expect(assignColumns(scientist, id, { instrument: 'CH-1', assignment })).rejects.toMatchObject({
-      code: 'forbidden',
-    });
-
-    const kept = await assignColumns(observer, id, { instrument: 'CH-1', assignment });
-    expect(kept).toMatchObject({ files: 3, isNew: true });
-    const done = await whenMeasured(night);
-    expect(done.spectra).toMatchObject({ total: 3, measured: 3 });
-    expect(done.problems).toEqual([]);
-
-    // The instrument remembers: the next file of the kind needs nothing.
-    await submit(night, 'another.csv', odd(4));
-    const more = await whenMeasured(night);
-    expect(more.files).toMatchObject({ read: 4, failed: 0 });
-    await expect(assignColumns(observer, id, { instrument: 'CH-1', assignment })).rejects.toMatchObject({
-      code: 'conflict',
-    });
-  });
 });
