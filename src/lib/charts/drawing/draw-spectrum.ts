@@ -35,8 +35,11 @@ export interface SpectrumScene {
 
 const USABLE = (error: number) => error > 0 && error < Infinity;
 
-/** Everything that stands still while the redshift moves: ground, bands, envelope, error, flux, cuts. */
-export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumScene): void {
+/**
+ * Everything that stands still while the redshift moves: ground, bands, envelope, error, flux, cuts.
+ * @param under draws what lies right under the flux
+ */
+export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumScene, under = () => {}): void {
   const { frame, style, pixels, columns, range, toX, toY } = scene;
   const area = { left: frame.left, right: frame.left + frame.plotWidth, top: frame.fluxTop, bottom: frame.fluxBottom };
   context.fillStyle = style.colour.well;
@@ -67,6 +70,7 @@ export function drawSpectrum(context: CanvasRenderingContext2D, scene: SpectrumS
   stroke('error', 'error-line');
   if (columns) strokeColumns(context, area.left, columns.error, toY, false);
   else strokePixels(context, range, pixels.edges, (i) => (USABLE(pixels.error[i]) ? pixels.error[i] : NaN), toX, toY);
+  under();
   stroke('flux', 'flux');
   if (columns) strokeColumns(context, area.left, columns.mean, toY, true);
   else strokePixels(context, range, pixels.edges, fluxAt, toX, toY);
