@@ -11,11 +11,13 @@ import { measureRows } from '$lib/server/measure/measure-rows';
 import { measureSpectra } from '$lib/server/measure/measure-spectra';
 import { readHealth } from '$lib/server/query/read-health';
 import { previewDraft } from '$lib/server/release/preview-draft';
+import { listTargets, listTargetsSchema } from '$lib/server/review/list-targets';
 import { readQueue, listQueue } from '$lib/server/review/list-queue';
 import { plantSpectra } from '$lib/server/review/plant-spectra';
 import { readExchange } from '$lib/server/review/read-exchange';
 import { readPixels } from '$lib/server/review/read-pixels';
 import { readQuestion } from '$lib/server/review/read-question';
+import { readRepeats } from '$lib/server/review/read-repeats';
 import { readSpectrum } from '$lib/server/review/read-spectrum';
 import { readStatistics } from '$lib/server/review/read-statistics';
 import { recordVerdict } from '$lib/server/review/record-verdict';
@@ -143,6 +145,8 @@ describe('planted spectra', () => {
         await listNights(actor),
         await readReport(actor, night, Date.now()),
         await listMeasurements(actor, night, { limit: 100 }),
+        await listTargets(actor, listTargetsSchema.parse({ programme: world.programme })),
+        await readRepeats(actor, { programme: world.programme }),
       ]);
       for (const { id, name } of planted) {
         expect(sent).not.toContain(id);

@@ -9,13 +9,18 @@ import { followNight } from '$lib/server/ingest/follow-night';
 import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { readNight } from '$lib/server/ingest/read-night';
 import { readReport } from '$lib/server/ingest/read-report';
+import { commentOn } from '$lib/server/review/comment-on';
 import { listQueue } from '$lib/server/review/list-queue';
+import { passOn } from '$lib/server/review/pass-on';
+import { listTargets, listTargetsSchema } from '$lib/server/review/list-targets';
 import { placeInQueue } from '$lib/server/review/place-in-queue';
 import { readExchange } from '$lib/server/review/read-exchange';
 import { readLastVerdict } from '$lib/server/review/read-last-verdict';
 import { readPixels } from '$lib/server/review/read-pixels';
 import { readQuestion } from '$lib/server/review/read-question';
+import { readRepeats } from '$lib/server/review/read-repeats';
 import { readSpectrum } from '$lib/server/review/read-spectrum';
+import { readTarget } from '$lib/server/review/read-target';
 import { recordVerdict } from '$lib/server/review/record-verdict';
 import { undoVerdict } from '$lib/server/review/undo-verdict';
 import { makeInstallation, type Installation } from './installation';
@@ -67,6 +72,10 @@ async function sentTo(actor: Actor): Promise<string> {
   const reader = (events as ReadableStream<Uint8Array>).getReader();
   const { value } = await reader.read();
   ending.abort();
+  const [{ target }] = (await database().query('SELECT target_id AS target FROM spectra WHERE id = ?', {
+    replacements: [ids[0]],
+    type: 'SELECT',
+  })) as { target: string }[];
   const sent = [
     await readSpectrum(actor, ids[0]),
     await readExchange(actor, ids[0]),
@@ -81,6 +90,9 @@ async function sentTo(actor: Actor): Promise<string> {
     await Promise.all(
       (['ambiguous', 'probable', 'secure'] as const).map((confidence) => listQueue(actor, { show: 'all', confidence })),
     ),
+    await listTargets(actor, listTargetsSchema.parse({ programme: world.programme })),
+    await readRepeats(actor, { programme: world.programme }),
+    await readTarget(actor, target),
     await readQuestion(actor, ids[0]).catch(({ message }: Error) => message),
   ];
   return JSON.stringify(sent);
@@ -110,6 +122,9 @@ describe('a look without the engine’s answer', () => {
   });
 
   it('sends nothing of it to that person until their verdict, on pages, by the API or in live progress', async () => {
+    // What people wrote of it before anyone looked is held back too.
+    await commentOn(observer, ids[0], 'the engine says 0.31471');
+    await passOn(world.drafter, ids[0], { person: ines.userId, note: 'or is it 0.72853?' });
     const before = await sentTo(ines);
     for (const told of ['0.31471', '0.72853', '0.6143']) expect(before).toContain(told);
     await hide(1);

@@ -3,7 +3,8 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { VerdictInput } from '$lib/domain/verdict';
 import type { Actor } from '$lib/server/auth/permissions';
 import { database } from '$lib/server/database/connection';
-import { statements } from '$lib/server/database/migrations/0002-review-together';
+import { statements as together } from '$lib/server/database/migrations/0002-review-together';
+import { statements as trust } from '$lib/server/database/migrations/0007-review-trust';
 import { standingVerdict } from '$lib/server/database/queries/verdicts';
 import { listMeasurements } from '$lib/server/ingest/list-measurements';
 import { listQueue } from '$lib/server/review/list-queue';
@@ -158,7 +159,10 @@ describe('listQueue', () => {
   });
 });
 
-describe('the migration', () => {
+describe.each([
+  ['of looks together', together],
+  ['of trust', trust],
+])('the migration %s', (_, statements) => {
   it('can be run again after a kill, and loses nothing', async () => {
     await recordVerdict(ines, spectra[0], { ...accept, lookSeconds: 4.2 });
     for (const statement of [...statements, ...statements]) await database().query(statement);

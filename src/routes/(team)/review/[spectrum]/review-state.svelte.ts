@@ -43,8 +43,6 @@ interface View {
 export class ReviewState {
   readonly id: string;
   readonly measurement: Measurement;
-  /** When the pixels came before the person's eyes, ms on the page's own clock. */
-  shownAt: number | null = null;
 
   pixels = $state.raw<ReviewSpectrum | null>(null);
   /** Why the pixels could not be had. */
@@ -125,7 +123,6 @@ export class ReviewState {
 
   receive(pixels: ReviewSpectrum): void {
     this.pixels = pixels;
-    this.shownAt ??= performance.now();
     this.view = this.whole;
   }
 
