@@ -124,6 +124,9 @@ export const ABSORPTION_FAMILIES: readonly AbsorptionFamily[] = [
   },
 ];
 
+/** No galaxy's stars move more slowly. */
+const LEAST_GALAXY_SIGMA_KMS = 150;
+
 /** Absorption features for the scan over redshift. */
 export const ABSORPTION_SCAN_LINES: readonly ScanLine[] = [
   ...ABSORPTION_FAMILIES[0].features.map(([rest, strength]) => ({
@@ -177,7 +180,7 @@ export function absorptionEvidence(
     if (family.starOnly && !star) continue;
     const bank = family.wide ? banks.bands : banks.lines;
     for (const filter of bank.filters) {
-      if (!family.wide && filter.sigmaKms < 150) continue;
+      if (!star && filter.sigmaKms < LEAST_GALAXY_SIGMA_KMS) continue;
       const rescale = (filter.noiseFactor / (family.wide ? noiseFactors.bands : noiseFactors.lines)) ** 2;
       const right: number[] = [];
       const information: number[] = [];

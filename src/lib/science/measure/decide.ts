@@ -73,7 +73,10 @@ export function decide(
     refit0.wholeLogScale = wholeRedshift(hypotheses.asQuasar, top.emission.fit.logScale);
   }
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;
-  const group = top && evidence ? groupOf(top, evidence, leavesFeatures(hypotheses, top)) : 'none';
+  const leftover = top !== undefined && leavesFeatures(hypotheses, top);
+  // Two peaks of Lyman-alpha look like the pair of [O II]: beside a feature left over, a doublet alone settles nothing.
+  if (evidence && leftover && evidence.independentLines < 2) evidence.unknownIdentity = true;
+  const group = top && evidence ? groupOf(top, evidence, leftover) : 'none';
   const signal = top ? signalOf(top, refit0) : 0;
   const probability = top && evidence ? Math.min(ceilingOf(evidence), calibrate(top.probability, group, signal)) : 0;
   const rest = top && top.probability < 1 ? (1 - probability) / (1 - top.probability) : 1;

@@ -4,8 +4,8 @@ import { Scratch } from './scratch';
 
 /** Intrinsic velocity sigmas of the narrow kernels, km/s (FWHM 70 to 820). */
 export const NARROW_SIGMAS_KMS: readonly number[] = [30, 90, 180, 350];
-/** Velocity sigmas of stellar absorption lines, km/s. */
-export const ABSORPTION_SIGMAS_KMS: readonly number[] = [180, 350];
+/** Velocity sigmas of stellar absorption lines, km/s: those of single stars, then those of galaxies. */
+export const ABSORPTION_SIGMAS_KMS: readonly number[] = [80, 180, 350];
 /** Intrinsic velocity sigmas of the broad kernels, km/s (FWHM 2,100 to 8,500). */
 export const BROAD_SIGMAS_KMS: readonly number[] = [900, 1800, 3600];
 

@@ -42,7 +42,7 @@ export function evidenceOf(
       resolvedDoublet: false,
       unmistakableProfile: false,
       unknownIdentity: false,
-      absorptionFeatures: top.absorption?.strongFeatures ?? 0,
+      absorptionFeatures: rivalled(top, hypotheses) ? 0 : (top.absorption?.strongFeatures ?? 0),
     };
   }
   const data = prepared.working;
@@ -72,6 +72,13 @@ export function evidenceOf(
     unknownIdentity,
     absorptionFeatures: null,
   };
+}
+
+/** Share of an absorption redshift's log evidence from which on a star at rest is a rival: both then see the same dips. */
+const STAR_RIVALS = 0.4;
+
+function rivalled({ absorption }: Entry, { star }: Hypotheses): boolean {
+  return absorption !== null && star.logEvidence > STAR_RIVALS * absorption.logEvidence;
 }
 
 /** Whether the evidence settles which redshift the features stand for. */
