@@ -9,15 +9,19 @@ import { describeColumns, needsAssignment } from '$lib/formats/describe-columns'
 import { readSpectra } from '$lib/formats/read-spectra';
 import { checkSkyLines } from '$lib/science/frames/sky-lines';
 import { toSpectrum } from '$lib/science/frames/to-spectrum';
+import { selectInPlace } from '$lib/science/measure/order-statistics';
 
 /** Median of flux / sigma over usable pixels; null where there is none or the file gives no variance. */
 function medianSignalToNoise(spectrum: Spectrum): number | null {
   if (!spectrum.varianceKnown) return null;
-  const ratios = spectrum.flux
-    .map((flux, i) => (spectrum.mask[i] === 0 ? flux / Math.sqrt(spectrum.variance[i]) : NaN))
-    .filter(Number.isFinite)
-    .sort();
-  return ratios.length ? ratios[ratios.length >> 1] : null;
+  const { flux, variance, mask } = spectrum;
+  const ratios = new Float64Array(flux.length);
+  let used = 0;
+  for (let i = 0; i < flux.length; i++) {
+    const ratio = mask[i] === 0 ? flux[i] / Math.sqrt(variance[i]) : NaN;
+    if (Number.isFinite(ratio)) ratios[used++] = ratio;
+  }
+  return used > 0 ? selectInPlace(ratios, used, used >> 1) : null;
 }
 
 /**

@@ -10,7 +10,7 @@ import { wishFor } from '../queue/outbox';
 import { objects } from '../storage/storage';
 
 /** Files read by one job: enough to write their rows together, few enough that progress is seen. */
-const FILES_PER_JOB = 8;
+const FILES_PER_JOB = 12;
 
 export interface NightAdmitted {
   id: string;

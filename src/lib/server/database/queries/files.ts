@@ -91,16 +91,27 @@ export async function storeFileContents(entries: Entry[], transaction: Transacti
     }
     await linkCombinations(where.fileId, transaction);
     await linkExposures([...new Set(placed.map(({ targetId }) => targetId))], transaction);
-    for (const { file, content } of group) {
-      const unread = content.shape ? 'needs assignment' : 'failed';
-      const state = content.spectra.length ? 'read' : unread;
-      const shape = content.shape ?? null;
-      await SpectrumFile.update({ state, shape, problems: content.problems }, { where: { id: file.id }, transaction });
-    }
+    await settleFiles(group, transaction);
   }
   return entries.map(({ file, content }) =>
     content.spectra.map(({ extension, row }) => ids.get(key(file.id, extension, row))!),
   );
+}
+
+/** Writes the files' states: in one statement for all that were read without a word, one by one for the others. */
+async function settleFiles(group: Entry[], transaction: Transaction): Promise<void> {
+  const isPlain = ({ content }: Entry) => content.spectra.length > 0 && !content.shape && content.problems.length === 0;
+  const plain = group.filter(isPlain).map(({ file }) => file.id);
+  if (plain.length) {
+    const settled = { state: 'read' as const, shape: null, problems: [] };
+    await SpectrumFile.update(settled, { where: { id: plain }, transaction });
+  }
+  for (const { file, content } of group.filter((entry) => !isPlain(entry))) {
+    const unread = content.shape ? 'needs assignment' : 'failed';
+    const state = content.spectra.length ? 'read' : unread;
+    const shape = content.shape ?? null;
+    await SpectrumFile.update({ state, shape, problems: content.problems }, { where: { id: file.id }, transaction });
+  }
 }
 
 /** True where the header counts more than one exposure in it (common practice, no source). */
