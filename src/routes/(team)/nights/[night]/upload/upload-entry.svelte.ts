@@ -16,6 +16,7 @@ export class UploadEntry {
   readonly file: File;
   readonly path: string;
   readonly name: string;
+  readonly sizeBytes: number;
   state = $state<EntryState>('waiting');
   what = $state('');
   mend = $state('');
@@ -35,16 +36,14 @@ export class UploadEntry {
     this.file = file;
     this.path = path;
     this.name = path.split('/').pop() || file.name;
+    // Read once: the browser asks the disk at the first time, and answers slowly at every other.
+    this.sizeBytes = file.size;
     this.alone = this.isLarge;
-  }
-
-  get sizeBytes(): number {
-    return this.file.size;
   }
 
   /** Goes up in chunks, and goes on where it was after a break. */
   get isLarge(): boolean {
-    return this.file.size >= CHUNKED_FROM_BYTES;
+    return this.sizeBytes >= CHUNKED_FROM_BYTES;
   }
 
   /** The name it is announced by. */

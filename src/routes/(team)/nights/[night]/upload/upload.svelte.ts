@@ -17,6 +17,8 @@ const REQUESTS = 3;
 const AGAIN_AFTER_MS = [1_000, 3_000, 8_000];
 /** A pause ends by itself after this long, for those who sleep; a person may end it at once. */
 const PAUSE_MS = 15_000;
+/** Files whose size is asked for before the page may draw again. */
+const TAKEN_AT_ONCE = 50;
 /** Answers that leave a file out before it is given up. */
 const UNNAMED = 3;
 
@@ -50,23 +52,18 @@ export class Upload {
     private readonly checker: Checker | null = null,
   ) {}
 
-  /** One whose derived values outlive the page that asked first. */
-  static lasting(nightId: string, checker: Checker): Upload {
-    let upload: Upload | undefined;
-    $effect.root(() => {
-      upload = new Upload(nightId, checker);
-    });
-    return upload!;
-  }
-
-  add({ found, hidden, unreadable }: Collected): void {
-    const added = found.map(({ file, path }) => new UploadEntry(file, path));
-    this.leftOut = {
-      hidden: this.leftOut.hidden + hidden,
-      unreadable: [...this.leftOut.unreadable, ...unreadable],
-    };
-    this.entries = [...this.entries, ...added];
-    this.prepare(added);
+  /** Takes files in, some at a time: the browser asks the disk for the size of each, and the page must not wait. */
+  async add({ found, hidden, unreadable }: Collected): Promise<void> {
+    const { leftOut } = this;
+    this.leftOut = { hidden: leftOut.hidden + hidden, unreadable: [...leftOut.unreadable, ...unreadable] };
+    const added: UploadEntry[] = [];
+    for (let at = 0; at < found.length; at += TAKEN_AT_ONCE) {
+      if (at > 0) await new Promise((resolve) => setTimeout(resolve));
+      const some = found.slice(at, at + TAKEN_AT_ONCE).map(({ file, path }) => new UploadEntry(file, path));
+      added.push(...some);
+      this.entries = [...this.entries, ...some];
+    }
+    this.prepare(added.filter(({ state }) => state === 'waiting'));
   }
 
   /** Stops sending. What is on its way may still arrive; sending it again does no harm. */
