@@ -69,7 +69,7 @@ export function decide(
   const refit0 = top?.emission
     ? finalFit(prepared.working, prepared.continuum, hypotheses.context.noiseFactor, top.emission, 12)
     : null;
-  if (refit0 && top.emission?.kind === 'broad') {
+  if (refit0 && hypotheses.asQuasar && top.emission?.kind === 'broad') {
     refit0.wholeLogScale = wholeRedshift(hypotheses.asQuasar, top.emission.fit.logScale);
   }
   const evidence = top ? evidenceOf(prepared, hypotheses, top, refit0) : null;

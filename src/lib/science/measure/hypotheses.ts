@@ -10,7 +10,7 @@ import type { PreparedSpectrum } from './prepare';
 import { coarsen } from './quasar/coarse-spectrum';
 import { compareQuasars } from './quasar/compare-quasars';
 import { quasarLikelihood, type QuasarLikelihood } from './quasar/quasar-likelihood';
-import { quasarSuspects } from './quasar/quasar-suspects';
+import { broadFeatures, quasarSuspects } from './quasar/quasar-suspects';
 import { NARROW_SCAN_LINES, scanRedshifts } from './scan';
 import type { MeasureSettings } from './settings';
 import { identitiesOf, lymanCovered, shortlist } from './shortlist';
@@ -35,8 +35,8 @@ export interface Hypotheses {
   star: AbsorptionCandidate;
   banks: { lines: FilterBank; bands: FilterBank };
   relativeResolution: number;
-  /** Weighs the whole spectrum as a quasar's. */
-  asQuasar: QuasarLikelihood;
+  /** Weighs the whole spectrum as a quasar's; null where nothing broad stands out. */
+  asQuasar: QuasarLikelihood | null;
 }
 
 const IDENTITIES = [
@@ -93,8 +93,18 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     noiseFactor: lines.filters[0].noiseFactor,
     logNoiseFlux: typicalLogNoise(lines),
   };
-  const asQuasar = quasarLikelihood(coarsen(working, context.noiseFactor));
-  const suspects = suspectsOf(lines, bands, features, relativeResolution, context.logNoiseFlux, settings, asQuasar);
+  const bumps = broadFeatures(bands);
+  const asQuasar = bumps.length > 0 ? quasarLikelihood(coarsen(working, context.noiseFactor)) : null;
+  const suspects = suspectsOf(
+    lines,
+    bands,
+    features,
+    relativeResolution,
+    context.logNoiseFlux,
+    settings,
+    asQuasar,
+    bumps,
+  );
   const tried = suspects
     .map((suspect) => fitCandidate(context, suspect, FIRST_STEPS))
     .filter((fitted): fitted is FittedCandidate => fitted !== null);
@@ -191,7 +201,8 @@ function suspectsOf(
   relativeResolution: number,
   logNoiseFlux: number,
   settings: MeasureSettings,
-  asQuasar: QuasarLikelihood,
+  asQuasar: QuasarLikelihood | null,
+  bumps: readonly number[],
 ): Suspect[] {
   const range = [settings.redshiftMinimum, settings.redshiftMaximum] as const;
   const narrowPeaks = scanRedshifts(lines, NARROW_SCAN_LINES, range, 18, 300);
@@ -203,10 +214,10 @@ function suspectsOf(
     logNoiseFlux,
     settings.candidatesFitted + 2,
   );
-  const broad = quasarSuspects(bands, asQuasar, range, QUASARS_FITTED);
+  const broad = asQuasar ? quasarSuspects(bands, bumps, asQuasar, range, QUASARS_FITTED) : [];
   const suspects = [...narrow, ...broad];
   // A quasar's narrow lines may give its redshift away before its broad ones do, and the other way round.
-  for (const suspect of narrow.slice(0, 2)) {
+  for (const suspect of asQuasar ? narrow.slice(0, 2) : []) {
     if (suspect.kind === 'narrow') suspects.push({ ...suspect, kind: 'broad', sigmaKms: 1800 });
   }
   // The strongest feature as Lyman-alpha is always heard.

@@ -20,10 +20,10 @@ const INFORMATION = 300;
  */
 export function compareQuasars(
   candidates: readonly FittedCandidate[],
-  weigh: QuasarLikelihood,
+  weigh: QuasarLikelihood | null,
 ): (logEvidence: number) => number {
   const broad = candidates.filter((candidate) => candidate.kind === 'broad');
-  if (broad.length === 0) return (logEvidence) => logEvidence;
+  if (!weigh || broad.length === 0) return (logEvidence) => logEvidence;
   const whole = broad.map(({ fit }) =>
     Math.max(
       ...OFFSETS.flatMap((offset) => SIGMAS_KMS.map((sigma) => weigh(fit.logScale + offset, sigma).logEvidence)),

@@ -27,15 +27,18 @@ const APART = 3000 / SPEED_OF_LIGHT_KMS;
 /**
  * Redshifts at which the whole spectrum looks most like a quasar's, best first: those where the filters see broad lines
  * add up, and every identity of the strongest broad features, weighed on the whole spectrum.
+ *
+ * @param bumps see `broadFeatures`
  */
 export function quasarSuspects(
   bands: FilterBank,
+  bumps: readonly number[],
   weigh: QuasarLikelihood,
   redshiftRange: readonly [number, number],
   limit: number,
 ): Suspect[] {
   const peaks = scanRedshifts(bands, BROAD_SCAN_LINES, redshiftRange, SCAN_PEAKS, 3000).map((peak) => peak.logScale);
-  for (const logWavelength of broadFeatures(bands)) {
+  for (const logWavelength of bumps) {
     for (const name of IDENTITIES) {
       const logScale = logWavelength - Math.log(lineByName(name).wavelengthVacuum);
       const inRange = Math.expm1(logScale) >= redshiftRange[0] && Math.expm1(logScale) <= redshiftRange[1];
@@ -64,8 +67,8 @@ function distinct(sorted: readonly QuasarFit[], limit: number): QuasarFit[] {
   return kept;
 }
 
-/** ln(wavelength) of the strongest bumps that the broad filters see, strongest first. */
-function broadFeatures({ filters, count, start, step }: FilterBank): number[] {
+/** ln(wavelength) of the strongest bumps that the broad filters see, strongest first; without any there is no quasar. */
+export function broadFeatures({ filters, count, start, step }: FilterBank): number[] {
   const height = (k: number) => Math.max(...filters.map((filter) => filter.significance[k]));
   const maxima: { k: number; value: number }[] = [];
   let last = height(0);
