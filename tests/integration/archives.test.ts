@@ -1,5 +1,5 @@
 import { execFileSync, type ChildProcess } from 'node:child_process';
-import { createReadStream, readdirSync, readFileSync } from 'node:fs';
+import { createReadStream, mkdtempSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '$lib/server/auth/permissions';
@@ -141,6 +141,32 @@ describe('an archive', () => {
     await unpackArchive(archives[0].id, 'x');
     expect((await readUpload(observer, night, archives[0].id)).state).toBe('failed');
     expect((await readNight(observer, night)).problems[0].code).toBe('unpacker-fault');
+  });
+
+  it('whose unpacking is killed in the middle is unpacked whole by the next worker, no member twice', async () => {
+    const folder = mkdtempSync(join(installation.env.STORAGE_DIR, 'many-'));
+    for (let i = 0; i < 600; i++) writeFileSync(join(folder, `${i}.csv`), `wavelength,flux\n${i},1\n`.repeat(200));
+    const archive = join(installation.env.STORAGE_DIR, 'many.tar');
+    execFileSync('tar', ['-cf', archive, '-C', folder, '.']);
+    const form = new FormData();
+    form.append('file', new Blob([new Uint8Array(readFileSync(archive))]), 'many.tar');
+    worker = startWorker(installation.env);
+    await receiveUpload(observer, night, new Request('http://localhost/', { method: 'POST', body: form }));
+    await until('some members', async () => (await readNight(observer, night)).files.total > 60);
+    worker.kill('SIGKILL');
+    await worker.gone;
+    const between = (await readNight(observer, night)).files.total;
+    expect(between).toBeLessThan(600);
+    worker = startWorker(installation.env);
+    const snapshot = await until(
+      'the end of unpacking',
+      async () => ((n) => n.archives[0].state !== 'unpacking' && n)(await readNight(observer, night)),
+      50_000,
+    );
+    expect(snapshot.files.total).toBe(600);
+    expect(snapshot.archives).toMatchObject([{ state: 'done', unpacked: { refused: 0 } }]);
+    worker.kill('SIGKILL');
+    await worker.gone;
   });
 
   it('of the whole sample night goes up in chunks and is all read and measured, right names', async () => {
