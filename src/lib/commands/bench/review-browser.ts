@@ -80,14 +80,18 @@ interface BenchWindow {
 }
 declare const window: BenchWindow & Window;
 
-/** Processor time that the page's own thread has used so far (script, style, layout, paint), ms. */
-export type ProcessorTime = () => Promise<number>;
+/** Processor time that the page's own thread has used so far, ms: in all, painting included, and less painting. */
+export type ProcessorTime = () => Promise<{ whole: number; unpainted: number }>;
+
+const UNPAINTED = ['ScriptDuration', 'RecalcStyleDuration', 'LayoutDuration'];
 
 export async function processorTimeOf(session: CDPSession): Promise<ProcessorTime> {
   await session.send('Performance.enable', { timeDomain: 'threadTicks' });
   return async () => {
     const { metrics } = await session.send('Performance.getMetrics');
-    return 1000 * (metrics.find(({ name }) => name === 'TaskDuration')?.value ?? NaN);
+    const total = (names: string[]) =>
+      metrics.reduce((sum, { name, value }) => sum + (names.includes(name) ? 1000 * value : 0), 0);
+    return { whole: total(['TaskDuration']), unpainted: total(UNPAINTED) };
   };
 }
 
@@ -109,7 +113,7 @@ export async function timeNext(
     const time = await page.evaluate(() => window.benchPressed!);
     if (i < warmUp) continue;
     times.clock.push(time);
-    times.processor.push((await processor()) - before);
+    times.processor.push((await processor()).whole - before.whole);
   }
   return times;
 }
@@ -118,7 +122,11 @@ export async function timeNext(
  * Redraws as an arrow key moves the redshift, a frame each: script and layout of every one by the clock, and the
  * processor time of the page's own thread a redraw, painting included.
  */
-export async function timeRedraws(page: Page, processor: ProcessorTime, count: number): Promise<PressTimes> {
+export async function timeRedraws(
+  page: Page,
+  processor: ProcessorTime,
+  count: number,
+): Promise<{ clock: number[]; whole: number; unpainted: number }> {
   const redraw = (times: number) =>
     page.evaluate(async (left) => {
       const clock: number[] = [];
@@ -131,7 +139,12 @@ export async function timeRedraws(page: Page, processor: ProcessorTime, count: n
   await redraw(10);
   const before = await processor();
   const clock = await redraw(count);
-  return { clock, processor: [((await processor()) - before) / count] };
+  const after = await processor();
+  return {
+    clock,
+    whole: (after.whole - before.whole) / count,
+    unpainted: (after.unpainted - before.unpainted) / count,
+  };
 }
 
 /** Times between frames while the redshift is dragged through the spectrum, ms. */
