@@ -104,7 +104,7 @@ describe('a target list', () => {
     );
     expect(report).toMatchObject({ rows: 4, known: 2, problems: [], awaited: { count: 1, names: ['L-3'] } });
     expect(report.duplicates).toEqual([{ rows: [1, 4], names: ['L-1'] }]);
-    expect(report.notListed.names).toContain('spelling 0');
+    expect(report.notListed.names.some((name) => /^spelling \d$/.test(name))).toBe(true);
     expect(await listed('L-1')).toMatchObject({ id: (await targetOf(byPlace)).id, priority: 3, ra: 300.0001 });
     expect(await listed('l −2')).toMatchObject({ id: (await targetOf(byName)).id, priority: 9, ra: 300.1 });
     expect(JSON.stringify((await listed('L-1')).magnitudes)).toContain('21.5');

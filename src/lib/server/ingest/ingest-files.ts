@@ -6,6 +6,7 @@ import { inTransaction, type Transaction } from '../database/in-transaction';
 import {
   countTry,
   findWaitingFiles,
+  knowTargets,
   markFilesFailed,
   storeFileContents,
   type StoredFile,
@@ -67,6 +68,8 @@ export async function ingestFiles(fileIds: string[], jobId: string, take: TakeFi
   if (again && files.length === 1) throw new Error(`reading failed; it is tried again (${jobId})`);
 
   const start = performance.now();
+  // Targets first and alone: making them holds the programme's register, which the long transaction would keep.
+  await inTransaction((transaction) => knowTargets(contentsOf(read), transaction));
   const nights = await inTransaction(async (transaction) => {
     await store(read, transaction);
     if (again) await wishForSingles(failed, transaction);
@@ -88,11 +91,11 @@ export async function ingestFiles(fileIds: string[], jobId: string, take: TakeFi
   nudge('outbox');
 }
 
+const contentsOf = (read: { file: StoredFile; taken: TakenFile }[]) =>
+  read.map(({ file, taken }) => ({ file, content: taken.content }));
+
 async function store(read: { file: StoredFile; taken: TakenFile }[], transaction: Transaction): Promise<void> {
-  const ids = await storeFileContents(
-    read.map(({ file, taken }) => ({ file, content: taken.content })),
-    transaction,
-  );
+  const ids = await storeFileContents(contentsOf(read), transaction);
   const results = new Map<string, MeasureResult>();
   const instruments = new Map<string, string | null>();
   const waiting: string[] = [];

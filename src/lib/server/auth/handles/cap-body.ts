@@ -6,7 +6,7 @@ import { Refusal } from '$lib/domain/refusal';
 const ORDINARY_BODY_BYTES = 1024 * 1024;
 /** Target lists: 100,000 rows of a VOTable. */
 const LIST_BODY_BYTES = 24 * 1024 * 1024;
-const LISTS = /^\/targets$/;
+const LISTS = /^\/targets$|^\/api\/v1\/programmes\/[^/]+\/target-lists$/;
 const STREAMED = /^\/api\/v1\/nights\/[^/]+\/(files|uploads(\/[^/]+)?)$/;
 
 /** Refuses bodies over 1 MiB (24 MiB for a target list), and bodies of undeclared length, everywhere but on the upload routes. */

@@ -58,10 +58,13 @@ async function supersede(
 ): Promise<void> {
   const fileOf = new Map(exposures.map(({ id, fileId }) => [id, fileId]));
   for (const [old, newest] of replaced) {
-    await database().query('UPDATE spectra SET superseded_by = :newest WHERE id = :old', {
-      replacements: { old, newest },
-      transaction,
-    });
+    await database().query(
+      // The pages of its nights are told by their revision, once.
+      `UPDATE spectra s JOIN night_files nf ON nf.file_id = s.file_id JOIN nights n ON n.id = nf.night_id
+        SET n.revision = n.revision + 1, s.superseded_by = :newest
+        WHERE s.id = :old AND (s.superseded_by IS NULL OR s.superseded_by <> :newest)`,
+      { replacements: { old, newest }, transaction },
+    );
     // A file is superseded once every spectrum in it is.
     await database().query(
       `UPDATE files f SET f.superseded_by = :newFile WHERE f.id = :oldFile

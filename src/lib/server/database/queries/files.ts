@@ -114,6 +114,11 @@ async function settleFiles(group: Entry[], transaction: Transaction): Promise<vo
   }
 }
 
+/** Makes the targets that these files show and that are not there yet; `storeFileContents` finds them then. */
+export async function knowTargets(entries: Entry[], transaction: Transaction): Promise<void> {
+  for (const group of byProgramme(entries)) await placeSpectra(group, transaction);
+}
+
 /** True where the header counts more than one exposure in it (common practice, no source). */
 const isStack = (header: Record<string, unknown>) => Number(header.NEXPOSUR ?? header.NCOMBINE ?? 1) > 1;
 
