@@ -139,6 +139,9 @@ export const ABSORPTION_SCAN_LINES: readonly ScanLine[] = [
   })),
 ];
 
+/** Strong features from which on absorption settles a redshift; fewer may be a quasar's troughs. */
+export const SETTLED_FEATURES = 4;
+
 /** What absorption says of one redshift. */
 export interface AbsorptionEvidence {
   /** Log evidence against a featureless continuum at this redshift, not integrated over redshift. */

@@ -1,6 +1,6 @@
 import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
-import { absorptionEvidence, ABSORPTION_SCAN_LINES, type AbsorptionEvidence } from './absorption';
+import { absorptionEvidence, ABSORPTION_SCAN_LINES, SETTLED_FEATURES, type AbsorptionEvidence } from './absorption';
 import { allowForArtefacts, fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
 import { findFeatures, type Feature } from './features';
@@ -146,6 +146,9 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const absorption = peaks
     .filter((peak) => Math.abs(peak.logScale) > starLimit)
     .map((peak) => absorptionAt(peak.logScale, false))
+    .map((one) =>
+      one.strongFeatures < SETTLED_FEATURES ? { ...one, logEvidence: besideQuasars(one.logEvidence) } : one,
+    )
     .sort((a, b) => b.logEvidence - a.logEvidence);
   const star = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
     .map((logScale) => absorptionAt(logScale, true))

@@ -21,7 +21,7 @@ export const DEFAULT_SETTINGS: Readonly<MeasureSettings> = Object.freeze({
 });
 
 /** Version of the engine; raise it with any change that can change an answer. */
-export const ENGINE_VERSION = '0.1.0';
+export const ENGINE_VERSION = '0.2.0';
 
 /**
  * A short hash of the settings and the calibration map's version: FNV-1a, 32 bit, hexadecimal.

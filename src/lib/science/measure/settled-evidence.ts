@@ -1,3 +1,4 @@
+import { SETTLED_FEATURES } from './absorption';
 import type { FittedCandidate } from './candidate-fit';
 import type { ConfidenceInput } from './confidence';
 import { doubletAdvantage } from './doublet-test';
@@ -23,8 +24,9 @@ const UNRELIABLE_CEILING = 0.95;
 const LEFTOVER_SIGNIFICANCE = 6;
 /** Broad lines this wide (sigma, km/s) sit at the limit of the fit and may be continuum. */
 const WIDEST_KMS = 4200;
-/** The same of narrow lines, which then describe something broad. */
+/** The same of narrow lines, which then describe something broad, unless they are many. */
 const WIDEST_NARROW_KMS = 435;
+const MANY_LINES = 6;
 
 /** What the confidence word is decided from besides probabilities. */
 export type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy' | 'lacksBalmer'>;
@@ -64,7 +66,7 @@ export function evidenceOf(
   const broad = top.emission.kind === 'broad';
   const unknownIdentity = broad
     ? !support.some(reliable) || (slim === 0 && support.length < 3) || refit.fit.sigmaKms[1] > WIDEST_KMS
-    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS;
+    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS && support.length < MANY_LINES;
   return {
     independentLines,
     resolvedDoublet,
@@ -83,7 +85,7 @@ function rivalled({ absorption }: Entry, { star }: Hypotheses): boolean {
 
 /** Whether the evidence settles which redshift the features stand for. */
 export function isSettled(evidence: Evidence): boolean {
-  if (evidence.absorptionFeatures !== null) return evidence.absorptionFeatures >= 4;
+  if (evidence.absorptionFeatures !== null) return evidence.absorptionFeatures >= SETTLED_FEATURES;
   return evidence.independentLines >= 2 || evidence.resolvedDoublet || evidence.unmistakableProfile;
 }
 
