@@ -24,9 +24,8 @@ const UNRELIABLE_CEILING = 0.95;
 const LEFTOVER_SIGNIFICANCE = 6;
 /** Broad lines this wide (sigma, km/s) sit at the limit of the fit and may be continuum. */
 const WIDEST_KMS = 4200;
-/** The same of narrow lines, which then describe something broad, unless they are many. */
+/** The same of narrow lines, which then describe something broad. */
 const WIDEST_NARROW_KMS = 435;
-const MANY_LINES = 6;
 
 /** What the confidence word is decided from besides probabilities. */
 export type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy' | 'lacksBalmer'>;
@@ -66,7 +65,7 @@ export function evidenceOf(
   const broad = top.emission.kind === 'broad';
   const unknownIdentity = broad
     ? !support.some(reliable) || (slim === 0 && support.length < 3) || refit.fit.sigmaKms[1] > WIDEST_KMS
-    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS && support.length < MANY_LINES;
+    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS;
   return {
     independentLines,
     resolvedDoublet,
