@@ -79,7 +79,8 @@ export async function nightsAtRest(now: Date, quietSeconds: number, sinceSeconds
         AND NOT EXISTS (SELECT 1 FROM night_files nf JOIN files f ON f.id = nf.file_id
           WHERE nf.night_id = n.id AND f.state = 'waiting')
         AND NOT EXISTS (SELECT 1 FROM night_files nf JOIN spectra s ON s.file_id = nf.file_id
-          WHERE nf.night_id = n.id AND s.state = 'waiting')`,
+          WHERE nf.night_id = n.id AND s.state = 'waiting')
+        AND NOT EXISTS (SELECT 1 FROM uploads u WHERE u.night_id = n.id AND u.state = 'unpacking')`,
     { replacements: { now, quietSeconds, sinceSeconds }, ...select },
   );
   return rows.map(({ description, ...row }) => ({ ...row, instrument: parsed<Instrument>(description) }));
