@@ -27,7 +27,8 @@ const GOAL_RATIO = 1.8;
 const ALONE_SPECTRA = 300;
 const WARM_UP = 60;
 const MADE_TOGETHER = 50;
-const FOLLOW_EVERY_MS = 500;
+/** The night page hears of changes a few times a second at most; every look at the whole night costs the database. */
+const FOLLOW_EVERY_MS = 1_000;
 const MEASURED_WITHIN_MS = 30 * 60_000;
 
 interface Mark {
