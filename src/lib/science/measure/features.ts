@@ -101,6 +101,18 @@ export function findFeatures(
   return features;
 }
 
+/** How far from a bump a deeper dip makes it a shoulder, in ln(wavelength): 2,500 km/s. */
+const SHOULDER_REACH = 0.0083;
+
+/** Whether a bump is only what deep absorption beside it leaves of the continuum: the dip stands out more than the bump. */
+export function isShoulder(feature: Feature, { start, step, count, filters }: FilterBank): boolean {
+  const { significance } = filters[feature.filter];
+  const from = Math.max(0, Math.floor((feature.logWavelength - SHOULDER_REACH - start) / step));
+  const to = Math.min(count - 1, Math.ceil((feature.logWavelength + SHOULDER_REACH - start) / step));
+  for (let k = from; k <= to; k++) if (significance[k] < -feature.significance) return true;
+  return false;
+}
+
 /**
  * Log odds that something that is no line made a bump of a given significance, against nothing there: a height
  * log-uniform over a factor of 1,000, times the rate of such bumps.

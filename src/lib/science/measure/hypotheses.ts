@@ -3,7 +3,7 @@ import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, SETTLED_FEATURES, type AbsorptionEvidence } from './absorption';
 import { allowForArtefacts, fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
-import { findFeatures, type Feature } from './features';
+import { findFeatures, isShoulder, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
 import { lowerBound } from './noise';
 import type { PreparedSpectrum } from './prepare';
@@ -74,7 +74,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const bands = filterBank({ ...working, residual: stiffResidual }, BROAD_SIGMAS_KMS, 1e-3, settings.noiseCheck);
   const features = findFeatures(working, residual, continuum, lines, 4);
   const dark = filterBank(
-    { ...grid, weight: withoutEmission(working, features) },
+    { ...grid, weight: withoutEmission(working, features, lines) },
     ABSORPTION_SIGMAS_KMS,
     step,
     settings.noiseCheck,
@@ -143,23 +143,21 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   const range = [settings.redshiftMinimum, Math.min(settings.redshiftMaximum, ABSORPTION_REDSHIFT_LIMIT)] as const;
   const peaks = scanRedshifts(dark, ABSORPTION_SCAN_LINES, range, 6, 1000, -1);
   const starLimit = STAR_KMS / SPEED_OF_LIGHT_KMS;
+  const beside = (one: AbsorptionCandidate): AbsorptionCandidate =>
+    one.wide || one.strongFeatures < SETTLED_FEATURES ? { ...one, logEvidence: besideQuasars(one.logEvidence) } : one;
   const absorption = peaks
     .filter((peak) => Math.abs(peak.logScale) > starLimit)
-    .map((peak) => absorptionAt(peak.logScale, false))
-    .map((one) =>
-      one.strongFeatures < SETTLED_FEATURES ? { ...one, logEvidence: besideQuasars(one.logEvidence) } : one,
-    )
+    .map((peak) => beside(absorptionAt(peak.logScale, false)))
     .sort((a, b) => b.logEvidence - a.logEvidence);
-  const star = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
-    .map((logScale) => absorptionAt(logScale, true))
-    .sort((a, b) => b.logEvidence - a.logEvidence)[0];
-  if (star.wide) star.logEvidence = besideQuasars(star.logEvidence);
+  const stars = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
+    .map((logScale) => beside(absorptionAt(logScale, true)))
+    .sort((a, b) => b.logEvidence - a.logEvidence);
   return {
     context,
     features,
     candidates: distinct(candidates, relativeResolution),
     absorption,
-    star,
+    star: stars[0],
     banks: { lines, bands },
     relativeResolution,
     asQuasar,
@@ -170,11 +168,10 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
  * Weights for the search of absorption: nothing under emission features, which drag their surroundings down, and nothing
  * in telluric bands, which absorb whatever the object.
  */
-function withoutEmission(working: WorkingSpectrum, features: readonly Feature[]): Float64Array {
+function withoutEmission(working: WorkingSpectrum, features: readonly Feature[], lines: FilterBank): Float64Array {
   const weight = withoutTelluric(working);
   for (const feature of features) {
-    // Where dips are as common as bumps, a bump is what deep absorption leaves of the continuum beside it.
-    if (feature.rough) continue;
+    if (isShoulder(feature, lines)) continue;
     const pixel = Math.min(working.count - 1, lowerBound(working.wavelength, feature.wavelength));
     const sigma = Math.hypot(working.lsfSigma[pixel], (feature.wavelength * feature.sigmaKms) / SPEED_OF_LIGHT_KMS);
     const end = lowerBound(working.wavelength, feature.wavelength + 3 * sigma);
