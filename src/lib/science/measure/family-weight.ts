@@ -1,6 +1,7 @@
 import { continuumFault } from './continuum-fault';
 import { familyEvidence, openReference, type FluxLikelihood } from './evidence';
 import { RATIO_PRIORS } from './fit/components';
+import { WIDEST_NARROW_KMS } from './suspect';
 import { invertPositiveDefinite } from './fit/solve';
 import type { WeighContext } from './weigh-context';
 import type { JointFit } from './fit/joint-fit';
@@ -48,7 +49,11 @@ export function evidenceOfFamily(
     if (fit.amplitude[i] > 0) (component.width === 0 ? narrow : broad).push(i);
   });
   const wide = evidenceOfRows(fit, rowsOf(fit, family, 1, 0, context), narrow, context, scale);
-  const slim = evidenceOfRows(fit, rowsOf(fit, NARROW_NUCLEUS, 0, 0, context), broad, context, scale);
+  // At the limit of their width narrow lines are cores of the broad ones.
+  const slim =
+    fit.sigmaKms[0] < WIDEST_NARROW_KMS
+      ? evidenceOfRows(fit, rowsOf(fit, NARROW_NUCLEUS, 0, 0, context), broad, context, scale)
+      : 0;
   // Without broad lines that stand on their own the narrow hypothesis says all there is to say.
   return { logEvidence: wide > LEAST_BROAD_EVIDENCE ? wide + Math.max(0, slim) : -Infinity, broad: wide };
 }

@@ -6,6 +6,7 @@ import { supportingLines, type FinalFit, type LineSupport } from './final-fit';
 import type { AbsorptionCandidate, Hypotheses } from './hypotheses';
 import { breakLogRatio } from './lyman-alpha';
 import type { PreparedSpectrum } from './prepare';
+import { WIDEST_NARROW_KMS } from './suspect';
 
 /** One possible answer: an emission redshift or an absorption redshift, with its posterior. */
 export type Entry =
@@ -24,8 +25,6 @@ const UNRELIABLE_CEILING = 0.95;
 const LEFTOVER_SIGNIFICANCE = 6;
 /** Broad lines this wide (sigma, km/s) sit at the limit of the fit and may be continuum. */
 const WIDEST_KMS = 4200;
-/** The same of narrow lines, which then describe something broad. */
-const WIDEST_NARROW_KMS = 435;
 
 /** What the confidence word is decided from besides probabilities. */
 export type Evidence = Omit<ConfidenceInput, 'probability' | 'probabilityOfNoGalaxy' | 'lacksBalmer'>;

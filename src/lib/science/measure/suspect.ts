@@ -9,3 +9,6 @@ export interface Suspect {
   /** Log evidence against "no lines", before any joint fit. */
   score: number;
 }
+
+/** Narrow lines this wide (sigma, km/s) sit at the limit of the fit and describe something broad. */
+export const WIDEST_NARROW_KMS = 435;
