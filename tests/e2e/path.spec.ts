@@ -87,6 +87,13 @@ test('a night goes in, redshifts come out, a catalogue answers', async ({ page, 
     await page.getByText('New draft').click();
     await page.getByRole('button', { name: 'Make the draft' }).click();
     await expect(page).toHaveURL(/\/drafts\/halloran-lines\/[0-9a-f-]{36}$/);
+    await ready(page);
+    // The demo leaves a question open, which stands against signing until its target is left out.
+    await page
+      .getByRole('button', { name: /^Leave .* out$/ })
+      .first()
+      .click();
+    await expect(page.getByText('nothing stands against signing')).toBeVisible();
     const draft = page.url();
     await expect(page.getByRole('button', { name: 'Sign and freeze' })).toBeDisabled();
     await signIn(page, 'Felix');
