@@ -22,6 +22,8 @@ export interface FittedCandidate {
   ownEvidence: number;
   /** Of a quasar's, the part that its broad lines bring. */
   broadEvidence: number;
+  /** Of a quasar's, the log evidence of the whole spectrum (see `compareQuasars`). */
+  wholeEvidence: number;
   /** What its lines bring on every feature. */
   onFeatures: FeatureShares;
   /** Indices of the features its lines explain. */
@@ -130,6 +132,7 @@ export function weighFit(
     logEvidence: ownEvidence,
     ownEvidence,
     broadEvidence,
+    wholeEvidence: 0,
     onFeatures,
     explained,
     noiseFactor: errorScale,
@@ -140,18 +143,27 @@ export function weighFit(
 /**
  * Takes from every candidate what artefacts would explain of the features it explains: as much as the filter saw there,
  * so that a poorer description of the same feature pays for its poverty; in rough spectra all that it gains. Quasars are
- * compared on the whole spectrum, where a feature left over has cost its own: all of them pay what the best one does.
+ * compared on the whole spectrum, where a feature left over has cost its own: all of them pay what the best one does, and
+ * the less, the surer the whole spectrum is, since artefacts are not that broad.
  */
 export function allowForArtefacts(context: WeighContext, candidates: readonly FittedCandidate[]): void {
   let best: FittedCandidate | null = null;
   for (const candidate of candidates) {
     if (candidate.kind === 'broad' && candidate.ownEvidence > (best?.ownEvidence ?? -Infinity)) best = candidate;
   }
-  const ofQuasars = best ? artefactsOf(context, best) : 0;
+  const ofQuasars = best ? artefactShare(best.wholeEvidence) * artefactsOf(context, best) : 0;
   for (const candidate of candidates) {
     const artefacts = candidate.kind === 'broad' ? ofQuasars : artefactsOf(context, candidate);
     candidate.logEvidence = candidate.ownEvidence - artefacts;
   }
+}
+
+/** Log evidences of the whole spectrum between which artefacts cease to explain a quasar's lines. */
+const ARTEFACTS_CEASE = [100, 300] as const;
+
+function artefactShare(wholeEvidence: number): number {
+  const [from, to] = ARTEFACTS_CEASE;
+  return Math.min(1, Math.max(0, (to - wholeEvidence) / (to - from)));
 }
 
 /**

@@ -64,7 +64,7 @@ export function evidenceOf(
   const broad = top.emission.kind === 'broad';
   const unknownIdentity = broad
     ? !support.some(reliable) || (slim === 0 && support.length < 3) || refit.fit.sigmaKms[1] > WIDEST_KMS
-    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS;
+    : refit.fit.sigmaKms[0] > WIDEST_NARROW_KMS || onUltraviolet(top.emission, support);
   return {
     independentLines,
     resolvedDoublet,
@@ -79,6 +79,13 @@ const STAR_RIVALS = 0.4;
 
 function rivalled({ absorption }: Entry, { star }: Hypotheses): boolean {
   return absorption !== null && star.logEvidence > STAR_RIVALS * absorption.logEvidence;
+}
+
+/** Narrow lines of the ultraviolet, which few galaxies show without Lyman-alpha or [O II]. */
+const ULTRAVIOLET = ['C IV', 'He II 1640', '[C III]', 'C III]', 'Mg II'];
+
+function onUltraviolet({ kind }: FittedCandidate, support: readonly LineSupport[]): boolean {
+  return kind === 'narrow' && support.every((line) => ULTRAVIOLET.some((name) => line.name.startsWith(name)));
 }
 
 /** Whether the evidence settles which redshift the features stand for. */

@@ -37,6 +37,7 @@ export function compareQuasars(
   const anchor = Math.min(best.broadEvidence, most / temper);
   broad.forEach((candidate, i) => {
     candidate.ownEvidence += anchor - candidate.broadEvidence - (most - whole[i]) / temper;
+    candidate.wholeEvidence = whole[i];
     candidate.broadEvidence = anchor - (most - whole[i]) / temper;
     candidate.logEvidence = candidate.ownEvidence;
   });
