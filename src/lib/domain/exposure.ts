@@ -35,12 +35,19 @@ const inOneArm = (a: Exposure, b: Exposure) =>
  */
 export function newerReductions(exposures: readonly Exposure[]): Map<string, string> {
   const replaced = new Map<string, string>();
-  for (const old of exposures) {
-    const newer = exposures.filter(
-      (other) => old.key !== null && other.key === old.key && other.fileId > old.fileId && inOneArm(old, other),
-    );
-    const newest = newer.sort((a, b) => (a.fileId < b.fileId ? 1 : -1)).at(0);
-    if (newest) replaced.set(old.id, newest.id);
+  const byKey = new Map<string, Exposure[]>();
+  for (const exposure of exposures) {
+    if (exposure.key === null) continue;
+    const same = byKey.get(exposure.key);
+    if (same) same.push(exposure);
+    else byKey.set(exposure.key, [exposure]);
+  }
+  for (const same of byKey.values()) {
+    same.sort((a, b) => (a.fileId < b.fileId ? 1 : a.fileId > b.fileId ? -1 : 0));
+    for (const old of same) {
+      const newest = same.find((other) => other.fileId <= old.fileId || inOneArm(old, other));
+      if (newest && newest.fileId > old.fileId) replaced.set(old.id, newest.id);
+    }
   }
   return replaced;
 }
@@ -53,7 +60,11 @@ export function newerReductions(exposures: readonly Exposure[]): Map<string, str
  */
 export function stacksAndParts(exposures: readonly Exposure[]): { whole: string; part: string }[] {
   const pairs: { whole: string; part: string }[] = [];
+  const seconds = exposures.flatMap(({ exposureSeconds }) => (exposureSeconds === null ? [] : [exposureSeconds]));
+  const shortest = seconds.reduce((least, value) => Math.min(least, value), Infinity);
   for (const whole of exposures) {
+    // Where a star was taken a thousand times alike, nothing is compared.
+    if (whole.exposureSeconds === null || whole.exposureSeconds < STACK_FACTOR * shortest) continue;
     for (const part of exposures) {
       if (whole.id === part.id || whole.instrument !== part.instrument || !inOneArm(whole, part)) continue;
       if (whole.exposureSeconds === null || part.exposureSeconds === null) continue;
