@@ -60,6 +60,9 @@ export const COMPONENTS_OF_KIND: Record<SuspectKind, readonly LineComponent[]> =
   lyman: LYMAN_COMPONENTS,
 };
 
+/** What local continua hide of lines counts up to this share of what stands on features: the rest is noise of wide lines. */
+const HIDDEN_SHARE = 0.35;
+
 /** Natural logarithm of the redshift range in ln(1+z) over which the prior is flat. */
 const LOG_REDSHIFT_RANGE = Math.log(Math.log(8.5 / 0.997));
 
@@ -123,7 +126,10 @@ export function weighFit(
   const explained = features.map((_, index) => index).filter((index) => onFeatures.significance[index] > 2.5);
   const peakWidth = Math.log(2.5066 * Math.min(0.01, errors.logScale * errorScale)) - LOG_REDSHIFT_RANGE;
   const broken = kind === 'lyman' ? breakLogRatio(context.data, Math.expm1(fit.logScale)).logRatio : 0;
-  const ownEvidence = best + peakWidth + broken + equivalentWidthPrior(context, fit);
+  // Hypotheses cut windows of different widths: all are weighed against the one continuum that passes under their lines.
+  const seen = explained.reduce((sum, j) => sum + onFeatures.gain[j], 0);
+  const hidden = kind === 'broad' ? 0 : Math.min(0.5 * fit.hidden, HIDDEN_SHARE * seen) / errorScale ** 2;
+  const ownEvidence = best + hidden + peakWidth + broken + equivalentWidthPrior(context, fit);
   return {
     fit,
     errors,
@@ -179,7 +185,8 @@ function artefactsOf({ features }: WeighContext, candidate: FittedCandidate): nu
     const rough = features[j].rough && !inForest;
     const seen = rough ? onFeatures.significance[j] : features[j].bounded;
     const odds = artefactLogOdds(features[j], seen / noiseFactor);
-    artefacts += rough ? odds : Math.min(odds, onFeatures.gain[j] / noiseFactor ** 2);
+    const whole = kind === 'broad' ? 1 : 1 + Math.min(HIDDEN_SHARE, fit.hidden / fit.gain);
+    artefacts += rough ? odds : Math.min(odds, (whole * onFeatures.gain[j]) / noiseFactor ** 2);
   }
   return artefacts;
 }

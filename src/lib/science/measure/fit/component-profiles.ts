@@ -102,6 +102,7 @@ export function buildProfiles(
         }
         if (component.fixedSigmaKms !== undefined) byWidth.fill(0, offset, offset + size);
       }
+      onBasis.fill(0, slot * BASIS_LIMIT, (slot + 1) * BASIS_LIMIT);
       for (let k = 0; k < window.basis.length; k++) {
         const row = window.weightedBasis[k];
         const shift = offset - low;
@@ -144,4 +145,23 @@ function rangeOf(
     high = Math.max(high, Math.min(window.to, pixelOf(data.edges, centre + reach) + 1));
   }
   return high > low ? [low, high] : [window.from, window.from];
+}
+
+/** Power of the fitted lines on the bases of their windows' continua. */
+export function hiddenPower(
+  { windowSlots, component, onBasis }: ComponentProfiles,
+  windows: number,
+  amplitude: Float64Array,
+): number {
+  let power = 0;
+  for (let w = 0; w < windows; w++) {
+    for (let k = 0; k < BASIS_LIMIT; k++) {
+      let sum = 0;
+      for (let s = windowSlots[w]; s < windowSlots[w + 1]; s++) {
+        sum += amplitude[component[s]] * onBasis[s * BASIS_LIMIT + k];
+      }
+      power += sum * sum;
+    }
+  }
+  return power;
 }

@@ -1,5 +1,5 @@
 import { choleskyInPlace, choleskySolve, nonNegativeSolve } from './solve';
-import { BASIS_LIMIT, buildProfiles, type ComponentProfiles } from './component-profiles';
+import { BASIS_LIMIT, buildProfiles, hiddenPower, type ComponentProfiles } from './component-profiles';
 import type { LineComponent } from './components';
 import { cutWindows, type FitData, type FitWindow } from './fit-windows';
 import { addRatioPriors } from './ratio-priors';
@@ -27,6 +27,8 @@ export interface JointFit {
   right: Float64Array;
   /** Drop of chi-square against the local continua alone. */
   gain: number;
+  /** Chi-square of the lines that the local continua would follow if there were no lines: the narrower a window, the more. */
+  hidden: number;
   chiSquare: number;
   degreesOfFreedom: number;
   /** Information on (ln(1+z), ln sigma narrow, ln sigma broad) after the amplitudes are eliminated, 3 by 3. */
@@ -188,6 +190,7 @@ function solveAt(
     gram,
     right,
     gain,
+    hidden: hiddenPower(profiles, windows.length, amplitude),
     chiSquare: power - gain,
     degreesOfFreedom: Math.max(1, usable - parameters),
     shapeInformation: shape.information,
