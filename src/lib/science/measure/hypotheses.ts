@@ -1,9 +1,9 @@
-import { MASK } from '$lib/domain/spectrum';
 import { SPEED_OF_LIGHT_KMS } from '../constants/physical';
 import { absorptionEvidence, ABSORPTION_SCAN_LINES, SETTLED_FEATURES, type AbsorptionEvidence } from './absorption';
 import { allowForArtefacts, fitCandidate, refineCandidate, weighFit, type FittedCandidate } from './candidate-fit';
 import { ABSORPTION_SIGMAS_KMS, BROAD_SIGMAS_KMS, filterBank, NARROW_SIGMAS_KMS, type FilterBank } from './detect';
-import { findFeatures, isShoulder, type Feature } from './features';
+import { withoutEmission, withoutTelluric } from './absorption-weights';
+import { findFeatures, type Feature } from './features';
 import { medianInPlace } from './order-statistics';
 import { lowerBound } from './noise';
 import type { PreparedSpectrum } from './prepare';
@@ -16,7 +16,6 @@ import type { MeasureSettings } from './settings';
 import { identitiesOf, lymanCovered, shortlist } from './shortlist';
 import type { Suspect } from './suspect';
 import type { WeighContext } from './weigh-context';
-import type { WorkingSpectrum } from './working-spectrum';
 
 /** An absorption redshift. */
 export interface AbsorptionCandidate extends AbsorptionEvidence {
@@ -151,6 +150,7 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     .sort((a, b) => b.logEvidence - a.logEvidence);
   const stars = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
     .map((logScale) => beside(absorptionAt(logScale, true)))
+    .map((star) => withBands(star, asQuasar, besideQuasars))
     .sort((a, b) => b.logEvidence - a.logEvidence);
   return {
     context,
@@ -164,26 +164,14 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
   };
 }
 
-/**
- * Weights for the search of absorption: nothing under emission features, which drag their surroundings down, and nothing
- * in telluric bands, which absorb whatever the object.
- */
-function withoutEmission(working: WorkingSpectrum, features: readonly Feature[], lines: FilterBank): Float64Array {
-  const weight = withoutTelluric(working);
-  for (const feature of features) {
-    if (isShoulder(feature, lines)) continue;
-    const pixel = Math.min(working.count - 1, lowerBound(working.wavelength, feature.wavelength));
-    const sigma = Math.hypot(working.lsfSigma[pixel], (feature.wavelength * feature.sigmaKms) / SPEED_OF_LIGHT_KMS);
-    const end = lowerBound(working.wavelength, feature.wavelength + 3 * sigma);
-    for (let i = lowerBound(working.wavelength, feature.wavelength - 3 * sigma); i < end; i++) weight[i] = 0;
-  }
-  return weight;
-}
-
-function withoutTelluric(working: WorkingSpectrum): Float64Array {
-  const weight = Float64Array.from(working.weight);
-  for (let i = 0; i < working.count; i++) if (working.mask[i] & MASK.telluric) weight[i] = 0;
-  return weight;
+/** A star with the bands of a cool one, where the whole spectrum shows them. */
+function withBands(
+  star: AbsorptionCandidate,
+  asQuasar: QuasarLikelihood | null,
+  besideQuasars: (logEvidence: number) => number,
+): AbsorptionCandidate {
+  const bands = asQuasar ? besideQuasars(asQuasar.coolStar()) : -Infinity;
+  return bands > star.logEvidence ? { ...star, family: 'cool star', logEvidence: bands } : star;
 }
 
 function typicalLogNoise(bank: FilterBank): number {

@@ -55,6 +55,7 @@ export function evidenceOf(
     support.length < 2 &&
     oxygen >= 0 &&
     refit.fit.amplitude[oxygen] > 4 * refit.errors.amplitude[oxygen] &&
+    !lymanRivals(hypotheses, top.emission) &&
     doubletAdvantage(data, refit.fit.logScale, refit.fit.sigmaKms[0], refit.errorScale) >= RESOLVED_DOUBLET;
   const broken = breakLogRatio(data, Math.expm1(refit.logScale));
   const unmistakableProfile =
@@ -79,6 +80,13 @@ const STAR_RIVALS = 0.4;
 
 function rivalled({ absorption }: Entry, { star }: Hypotheses): boolean {
   return absorption !== null && star.logEvidence > STAR_RIVALS * absorption.logEvidence;
+}
+
+/** Log evidence by which a doublet must beat every Lyman-alpha line, whose two peaks may look like one. */
+const LYMAN_BEATEN = 25;
+
+function lymanRivals({ candidates }: Hypotheses, top: FittedCandidate): boolean {
+  return candidates.some((other) => other.kind === 'lyman' && other.logEvidence > top.logEvidence - LYMAN_BEATEN);
 }
 
 /** Narrow lines of the ultraviolet, which few galaxies show without Lyman-alpha or [O II]. */

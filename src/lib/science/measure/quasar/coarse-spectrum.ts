@@ -76,3 +76,15 @@ function runningLevel(flux: Float64Array, count: number): Float64Array {
   }
   return level;
 }
+
+/** First index of an increasing array whose value is not below `x`; its length where none is. */
+export function firstAt(values: Float64Array, x: number): number {
+  let low = 0;
+  let high = values.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (values[middle] < x) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}

@@ -1,8 +1,9 @@
 import { SPEED_OF_LIGHT_KMS } from '../../constants/physical';
 import { familyEvidence } from '../evidence';
 import { forwardArrow } from './arrow-matrix';
-import type { CoarseSpectrum } from './coarse-spectrum';
+import { firstAt, type CoarseSpectrum } from './coarse-spectrum';
 import { QUASAR_FEATURES } from './composite';
+import { BAND_SIGMA, fillBand, TITANIUM_OXIDE_BANDS } from './titanium-oxide';
 
 /** Equivalent widths of one quasar are larger or smaller than the composite's together, scatter in ln. */
 const STRENGTH_SIGMA = 0.4;
@@ -34,34 +35,56 @@ const FEATURES = QUASAR_FEATURES.map((feature) => ({
   logStrength: Math.log(feature.equivalentWidth),
 }));
 
+/** Features to weigh: log-normal strengths, and what writes the shape of one for unit strength. */
+interface FeatureSet {
+  features: readonly { logStrength: number; scatter: number }[];
+  /** Scatter in ln by which all are stronger or weaker together. */
+  together: number;
+  /** Writes into `values` at `offset` and returns the bins that the feature reaches. */
+  fill(f: number, values: Float64Array, offset: number): { from: number; to: number };
+}
+
 /** Working memory of one weighing, a column a feature; written before it is read. */
 const work = { values: new Float64Array(0), solved: new Float64Array(0) };
+const MOST_FEATURES = Math.max(FEATURES.length, TITANIUM_OXIDE_BANDS.length);
 const column = {
-  feature: new Int32Array(FEATURES.length),
-  from: new Int32Array(FEATURES.length),
-  to: new Int32Array(FEATURES.length),
-  firstKnot: new Int32Array(FEATURES.length),
+  feature: new Int32Array(MOST_FEATURES),
+  from: new Int32Array(MOST_FEATURES),
+  to: new Int32Array(MOST_FEATURES),
+  firstKnot: new Int32Array(MOST_FEATURES),
 };
 
-/**
- * Log evidence of the composite's features over a solved continuum, at ln(1+z) and a velocity sigma of the broad lines:
- * the continuum is integrated exactly, the features as in `familyEvidence`. -Infinity where none is covered.
- */
+/** Log evidence of the composite's features over a solved continuum, at ln(1+z) and a velocity sigma of the broad lines. */
 export function evidenceOfLines(
   coarse: CoarseSpectrum,
   continuum: Continuum,
   logScale: number,
   sigmaKms: number,
 ): number {
+  const fill: FeatureSet['fill'] = (f, values, offset) => fillColumn(coarse, f, logScale, sigmaKms, values, offset);
+  return evidenceOf(coarse, continuum, { features: FEATURES, together: STRENGTH_SIGMA, fill });
+}
+
+/** Log evidence of a cool star's bands at rest over a solved continuum. */
+export function evidenceOfBands(coarse: CoarseSpectrum, continuum: Continuum): number {
+  const fill: FeatureSet['fill'] = (f, values, offset) => fillBand(coarse, TITANIUM_OXIDE_BANDS[f], values, offset);
+  return evidenceOf(coarse, continuum, { features: TITANIUM_OXIDE_BANDS, together: BAND_SIGMA, fill });
+}
+
+/**
+ * Log evidence of a set of features over a solved continuum: the continuum is integrated exactly, the features as in
+ * `familyEvidence`. -Infinity where none is covered.
+ */
+function evidenceOf(coarse: CoarseSpectrum, continuum: Continuum, { features, together, fill }: FeatureSet): number {
   const { count: n, flux } = coarse;
   const { weight, step, basis, firstKnot, matrix, solution, knots, used, size } = continuum;
-  if (work.values.length < FEATURES.length * n) work.values = new Float64Array(FEATURES.length * n);
-  if (work.solved.length < FEATURES.length * size) work.solved = new Float64Array(FEATURES.length * size);
+  if (work.values.length < MOST_FEATURES * n) work.values = new Float64Array(MOST_FEATURES * n);
+  if (work.solved.length < MOST_FEATURES * size) work.solved = new Float64Array(MOST_FEATURES * size);
   const { values, solved } = work;
-  const right = new Float64Array(FEATURES.length);
+  const right = new Float64Array(MOST_FEATURES);
   let m = 0;
-  for (let f = 0; f < FEATURES.length; f++) {
-    const { from, to } = fillColumn(coarse, f, logScale, sigmaKms, values, m * n);
+  for (let f = 0; f < features.length; f++) {
+    const { from, to } = fill(f, values, m * n);
     if (to - from < 3) continue;
     const at = m * size;
     const shift = m * n - from;
@@ -104,13 +127,13 @@ export function evidenceOfLines(
   const logRatio = new Float64Array(m);
   const scatter = new Float64Array(m);
   for (let a = 0; a < m; a++) {
-    logRatio[a] = FEATURES[column.feature[a]].logStrength;
-    scatter[a] = FEATURES[column.feature[a]].scatter;
+    logRatio[a] = features[column.feature[a]].logStrength;
+    scatter[a] = features[column.feature[a]].scatter;
   }
   return familyEvidence(
     { count: m, gram, right: right.subarray(0, m) },
     { logRatio, scatter },
-    { mean: 0, sigma: STRENGTH_SIGMA },
+    { mean: 0, sigma: together },
   ).logEvidence;
 }
 
@@ -154,15 +177,4 @@ function fillColumn(
     }
   }
   return { from, to };
-}
-
-function firstAt(values: Float64Array, x: number): number {
-  let low = 0;
-  let high = values.length;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    if (values[middle] < x) low = middle + 1;
-    else high = middle;
-  }
-  return low;
 }

@@ -1,6 +1,6 @@
 import { choleskySolve } from '../fit/solve';
 import type { CoarseSpectrum } from './coarse-spectrum';
-import { evidenceOfLines, type Continuum } from './evidence-of-lines';
+import { evidenceOfBands, evidenceOfLines, type Continuum } from './evidence-of-lines';
 import { factorArrow } from './arrow-matrix';
 
 /** Distance of the continuum's knots in ln(wavelength): 10,500 km/s, so that it cannot follow most broad lines. */
@@ -23,7 +23,11 @@ export interface QuasarFit {
 }
 
 /** Weighs a quasar at ln(1+z) with a velocity sigma of its broad lines, km/s. */
-export type QuasarLikelihood = (logScale: number, sigmaKms: number) => QuasarFit;
+export interface QuasarLikelihood {
+  (logScale: number, sigmaKms: number): QuasarFit;
+  /** Log evidence of a cool star's bands against the same smooth continuum. */
+  coolStar(): number;
+}
 
 /**
  * Likelihood of the whole spectrum as a quasar's: a smooth continuum with a Gaussian prior, the mean absorption of the
@@ -116,7 +120,7 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
   // Candidates are compared again after some of them were refined: what was weighed is not weighed twice.
   const known = new Map<number, QuasarFit[]>();
 
-  return function weigh(logScale: number, sigmaKms: number): QuasarFit {
+  function weigh(logScale: number, sigmaKms: number): QuasarFit {
     let fits = known.get(logScale);
     if (!fits) known.set(logScale, (fits = []));
     let fit = fits.find((other) => other.sigmaKms === sigmaKms);
@@ -128,7 +132,8 @@ export function quasarLikelihood(coarse: CoarseSpectrum): QuasarLikelihood {
       fits.push(fit);
     }
     return fit;
-  };
+  }
+  return Object.assign(weigh, { coolStar: () => evidenceOfBands(coarse, plain) });
 }
 
 /** Values of the four cubic B-splines that reach over a knot interval, times `scale`. */
