@@ -147,9 +147,8 @@ export function weighFit(
 }
 
 /**
- * Takes from every candidate what artefacts would explain of the features it explains: as much as the filter saw there,
- * so that a poorer description of the same feature pays for its poverty; in rough spectra all that it gains. Quasars are
- * compared on the whole spectrum, where a feature left over has cost its own: all of them pay what the best one does, and
+ * Takes from every candidate what artefacts would explain of the features it explains: as much as the filters saw there,
+ * but no more than the candidate gained; in rough spectra by what it gained itself. Quasars are compared on the whole spectrum, where a feature left over has cost its own: all of them pay what the best one does, and
  * the less, the surer the whole spectrum is, since artefacts are not that broad.
  */
 export function allowForArtefacts(context: WeighContext, candidates: readonly FittedCandidate[]): void {
