@@ -14,7 +14,7 @@ function errorNumber(error: unknown): number | undefined {
 
 /**
  * Runs `work` in one READ COMMITTED transaction and commits it; any throw rolls back.
- * A deadlock runs the whole of `work` again, up to five times, so `work` does no file or Redis I/O.
+ * A deadlock runs the whole of `work` again, a little later, up to five times, so `work` does no file or Redis I/O.
  */
 export async function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
   for (let attempt = 1; ; attempt++) {
@@ -22,6 +22,8 @@ export async function inTransaction<T>(work: (transaction: Transaction) => Promi
       return await database().transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, work);
     } catch (error) {
       if (attempt >= TRIES || !RETRIED.has(errorNumber(error) ?? 0)) throw error;
+      // Those who met in a deadlock come back at different moments.
+      await new Promise((resolve) => setTimeout(resolve, 20 * attempt * (1 + Math.random())));
     }
   }
 }

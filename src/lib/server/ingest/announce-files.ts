@@ -3,7 +3,7 @@ import type { Actor } from '../auth/permissions';
 import { inTransaction } from '../database/in-transaction';
 import { insertExpected, removeExpected } from '../database/queries/expected-files';
 import { knownDigests } from '../database/queries/known-digests';
-import { touchNights } from '../database/queries/nights';
+import { holdNight, touchNights } from '../database/queries/nights';
 import { archivesHere } from '../database/queries/uploads';
 import { nudge } from '../queue/nudge';
 import { refuseSize } from './largest-upload';
@@ -37,6 +37,7 @@ export async function announceFiles(
     files.filter((_, i) => wanted(answers[i].state)).map(({ path }) => path);
   const expected = new Set(pathsOf((state) => state === 'expected'));
   await inTransaction(async (transaction) => {
+    await holdNight(night.id, transaction);
     await removeExpected(night.id, { paths: pathsOf((state) => state !== 'expected') }, transaction);
     await insertExpected(
       night.id,

@@ -52,6 +52,17 @@ export async function touchNights(nightIds: string[], transaction: Transaction):
   });
 }
 
+/**
+ * Holds a night's row before rows that refer to it go in: they take a shared lock on it, and two who then both raise its
+ * revision would wait for each other.
+ */
+export async function holdNight(nightId: string, transaction: Transaction): Promise<void> {
+  await database().query('SELECT id FROM nights WHERE id = :nightId FOR UPDATE', {
+    replacements: { nightId },
+    transaction,
+  });
+}
+
 export interface AddedFile {
   id: string;
   /** The bytes were never here, or their reading failed before and is worth a new try. */
@@ -70,6 +81,7 @@ export async function addFilesToNight(
   transaction: Transaction,
 ): Promise<AddedFile[]> {
   const { programmeId, instrumentId, id: nightId } = night;
+  await holdNight(nightId, transaction);
   const bySha = new Map(inputs.map((input) => [input.sha256, input]));
   const shas = [...bySha.keys()].sort();
   const made = shas.map((sha256) => {
