@@ -42,4 +42,38 @@ describe('snapRedshift', () => {
   it('goes to the nearest maximum of the likelihood', () => {
     expect(Math.abs(snapRedshift(input, 0.2008, 400) - 0.2)).toBeLessThan(1e-4);
   });
+
+  it('goes to the nearer of two objects, not to the brighter', () => {
+    const apart = 1.2 * (500 / 299792.458);
+    const bright = testSpectrum({ redshift: 0.2 + apart, lines: GALAXY_LINES, noise: 0, continuum: 0 });
+    const fainter = Object.fromEntries(Object.entries(GALAXY_LINES).map(([name, flux]) => [name, 0.85 * flux]));
+    const faint = testSpectrum({ redshift: 0.2, lines: fainter, seed: 7 });
+    const both = { ...faint, flux: faint.flux.map((value, i) => value + bright.flux[i]) };
+    const two = { ...both, continuum: estimateContinuum(both) };
+    expect(Math.abs(snapRedshift(two, 0.2 + 0.2 * apart, 600) - 0.2)).toBeLessThan(2e-4);
+    expect(Math.abs(snapRedshift(two, 0.2 + 0.8 * apart, 600) - 0.2 - apart)).toBeLessThan(2e-4);
+  });
+
+  it('passes over maxima that are noise, or one line in the place of another', () => {
+    for (const seed of [1, 2, 3, 4, 5, 6]) {
+      const noisy = testSpectrum({ redshift: 0.2, lines: GALAXY_LINES, noise: 2, seed });
+      const given = { ...noisy, continuum: estimateContinuum(noisy) };
+      for (const kms of [-550, 550]) {
+        const from = 1.2 * (1 + kms / 299792.458) - 1;
+        expect(Math.abs(snapRedshift(given, from, 600) - 0.2), `seed ${seed}, ${kms} km/s`).toBeLessThan(3e-4);
+      }
+    }
+  });
+
+  it('takes the highest likelihood where no maximum is significant', () => {
+    const weak = testSpectrum({ redshift: 0.2, lines: { 'H-alpha 6565': 11 }, seed: 3 });
+    const given = { ...weak, continuum: estimateContinuum(weak) };
+    const snapped = snapRedshift(given, 0.2004, 400);
+    const gain = (redshift: number) => fitAtRedshift(given, redshift, { fwhmKms: 200 }).gain;
+    expect(gain(snapped)).toBeGreaterThan(gain(0.2004));
+  });
+
+  it('returns the given redshift where nothing is covered', () => {
+    expect(snapRedshift({ ...input, variance: spectrum.variance.map(() => Infinity) }, 0.2, 600)).toBe(0.2);
+  });
 });
