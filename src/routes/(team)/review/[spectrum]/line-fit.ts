@@ -14,7 +14,7 @@ const SNAP_KMS = 600;
 export interface LineFitter {
   /** @param fwhmKms intrinsic width of the lines, held */
   at(redshift: number, fwhmKms: number): { lines: FittedLine[]; model: Float64Array; continuum: Float64Array };
-  /** The best fit within 600 km/s, with its 1-sigma error; null error where no line is seen there. */
+  /** The nearest significant maximum within 600 km/s, with its 1-sigma error; null error where no line is seen there. */
   snap(redshift: number, fwhmKms: number): { redshift: number; redshiftError: number | null };
 }
 
