@@ -33,6 +33,16 @@ function membersOf(name: string): AsyncGenerator<ArchiveMember> {
   };
   return readZip(access, name, inflate);
 }
+/** A header block of a tar and the padded bytes behind it: POSIX.1-2017, pax, ustar Header Block. */
+function tarEntry(type: string, body: string): [Buffer, Buffer] {
+  const header = Buffer.alloc(512);
+  header.write('short');
+  header.write(body.length.toString(8).padStart(11, '0'), 124);
+  header.write(`        ${type}`, 148);
+  const sum = header.reduce((total, byte) => total + byte, 0);
+  header.write(`${sum.toString(8).padStart(6, '0')}\0`, 148);
+  return [header, Buffer.alloc(Math.ceil(body.length / 512) * 512).fill(body, 0, body.length)];
+}
 /** Text of each member by path, or the code of why there is none; `''` stands for the archive's own fault. */
 async function unpack(name: string): Promise<Record<string, string>> {
   const found: Record<string, string> = {};
@@ -97,6 +107,20 @@ describe('readZip and readTar', () => {
     ],
   ])('refuse what is wrong in %s, member by member, and go on', async (name, expected) => {
     expect(await unpack(name)).toEqual(expected);
+  });
+
+  it.each([
+    [1024, 'taken'],
+    [1025, 'archive-name'],
+  ])('hold a member whose name has %i characters to be %s', async (length, expected) => {
+    const name = 'n'.repeat(length);
+    const tar = Buffer.concat([...tarEntry('L', `${name}\0`), ...tarEntry('0', 'bytes'), Buffer.alloc(1024)]);
+    const found: string[] = [];
+    for await (const member of readTar(pieces(tar), 'long.tar')) {
+      expect(member.path).toBe(name);
+      found.push('refused' in member ? member.refused.code : 'taken');
+    }
+    expect(found).toEqual([expected]);
   });
 
   it('refuse encrypted members of a zip', async () => {

@@ -6,6 +6,9 @@ export type ArchiveMember =
 /** More members than this are not taken from one archive. */
 export const MAX_MEMBERS = 20_000;
 
+/** Longer names than any system has paths, which an archive of a few megabytes could hold by the gigabyte. */
+const MAX_NAME_CHARACTERS = 1024;
+
 const packAgain = 'Pack the archive again from inside its folder, with plain relative names.';
 
 /**
@@ -15,6 +18,10 @@ const packAgain = 'Pack the archive again from inside its folder, with plain rel
 export function refuseName(path: string): { code: string; what: string; mend: string } | null {
   if (path === '' || path.includes('\0')) {
     return { code: 'archive-name', what: 'This member has no usable name.', mend: packAgain };
+  }
+  if (path.length > MAX_NAME_CHARACTERS) {
+    const what = `This member’s name is longer than ${MAX_NAME_CHARACTERS} characters.`;
+    return { code: 'archive-name', what, mend: packAgain };
   }
   if (/^[/\\]|^[A-Za-z]:/.test(path)) {
     return { code: 'archive-absolute', what: 'This member has an absolute path.', mend: packAgain };

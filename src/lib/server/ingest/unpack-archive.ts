@@ -19,6 +19,8 @@ const TRIES = 3;
 const MEMBERS_PER_TRANSACTION = 32;
 /** Refused members told one by one; the rest as a number. */
 const PROBLEMS_TOLD = 200;
+/** Of a refused member's name, characters that are told: its length is what may be wrong with it. */
+const MOST_OF_NAME = 300;
 /** An archive with more bombs than this is one itself: each costs the unpacking of some megabytes. */
 const BOMBS = 3;
 
@@ -102,7 +104,7 @@ class Unpacking {
 
   private refuse(path: string, { code, what, mend }: { code: string; what: string; mend: string }): void {
     this.tally.refused++;
-    this.tell({ code, what, mend, where: `${this.upload.name}, ${path}` });
+    this.tell({ code, what, mend, where: `${this.upload.name}, ${path.slice(0, MOST_OF_NAME)}` });
   }
 
   private async take(member: ArchiveMember): Promise<void> {
