@@ -14,5 +14,8 @@ export interface ListColumn {
   ucd: string | null;
 }
 
+/** Characters of a heading that are looked at: a longer one is a slip of quotes, and patterns take their time over it. */
+export const MAX_HEADING_CHARACTERS = 200;
+
 /** Rows that a list may have. */
 export const MAX_TARGETS = 100_000;

@@ -5,6 +5,8 @@ import type { ListColumn } from './list-table';
 export type AngleUnit = 'degrees' | 'hours' | 'radians';
 
 const SEXAGESIMAL = /^([+-]?)\s*(\d{1,3})\s*[:hd°\s]\s*(\d{1,2})\s*[:m'′\s]\s*(\d{1,2}(?:\.\d*)?)\s*[s"″]?$/i;
+/** Longer than any angle is written; the pattern's time grows with more than the length. */
+const MAX_CHARACTERS = 64;
 const UNITS: [RegExp, AngleUnit][] = [
   [/^(h|hr|hours?|hourangle|"?h:m:s"?)$/i, 'hours'],
   [/^(d|deg|degrees?|"?d:m:s"?)$/i, 'degrees'],
@@ -19,6 +21,7 @@ const SUFFIX: [RegExp, AngleUnit][] = [
 /** A cell as a number in the column's own unit: `12.5`, `10:31:22.1`, `10h31m22.1s`; undefined where it is neither. */
 export function angleOf(cell: string): { value: number; isSexagesimal: boolean } | undefined {
   const text = cell.replace(/[\u2212\u2013]/g, '-').trim();
+  if (text.length > MAX_CHARACTERS) return undefined;
   const parts = SEXAGESIMAL.exec(text);
   if (parts) {
     if (Number(parts[3]) >= 60 || Number(parts[4]) >= 60) return undefined;

@@ -1,7 +1,7 @@
 import { parse } from 'csv-parse/sync';
 import { problemAt } from '../place';
 import { parseUnit } from '../units/parse-unit';
-import type { ListColumn, ListTable } from './list-table';
+import { MAX_HEADING_CHARACTERS, type ListColumn, type ListTable } from './list-table';
 
 const HEADING = /^(.*?)\s*(?:[([]\s*([^)\]]*?)\s*[)\]])?\s*$/;
 /** Units of angles, which the units of spectra do not know. */
@@ -10,7 +10,7 @@ const ANGLE =
 
 /** A heading as name and unit: `ra (deg)`, `RA [h]`; `ra_deg` is left to whoever looks at the names. */
 function readHeading(text: string): ListColumn {
-  const [, name, unit] = HEADING.exec(text.trim())!;
+  const [, name, unit] = HEADING.exec(text.trim().slice(0, MAX_HEADING_CHARACTERS).trim())!;
   return { name, unit: unit ?? null, ucd: null };
 }
 

@@ -80,6 +80,13 @@ describe('readTargetList of CSV', () => {
     expect(list.problems[0].mend).toBe('Write 2026-09-14T03:00:00Z if it is UTC.');
   });
 
+  it('looks at no more of a heading or an angle than either can have', () => {
+    const list = read(`name,ra (deg),dec,fibre${'x'.repeat(5000)}\nA,63,-31,1\nB,63${' '.repeat(5000)}1,-31,1`);
+    expect(list.ignored).toEqual([`fibre${'x'.repeat(195)}`]);
+    expect(list.rows.map(({ name }) => name)).toEqual(['A']);
+    expect(list.problems.map(({ code }) => code)).toEqual(['angle-odd']);
+  });
+
   it('names a target without a name by its place, brought into 0 to 360 degrees', () => {
     expect(read('ra (deg),dec (deg)\n-0.5,10').rows[0]).toMatchObject({
       name: '359.50000 +10.00000',

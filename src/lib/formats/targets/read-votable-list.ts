@@ -1,6 +1,6 @@
 import { XMLParser } from 'fast-xml-parser';
 import { problemAt } from '../place';
-import type { ListTable } from './list-table';
+import { MAX_HEADING_CHARACTERS, type ListTable } from './list-table';
 
 type Element = Record<string, unknown>;
 const LISTS = new Set(['RESOURCE', 'TABLE', 'FIELD', 'TR', 'TD', 'COOSYS']);
@@ -74,7 +74,7 @@ export function readVotableList(text: string, file: string): ListTable {
   const rows = ((typeof tableData === 'object' ? tableData.TR : undefined) as Element[] | undefined) ?? [];
   return {
     columns: fields.map((field) => ({
-      name: attribute(field, 'name') ?? '',
+      name: (attribute(field, 'name') ?? '').slice(0, MAX_HEADING_CHARACTERS),
       unit: attribute(field, 'unit'),
       ucd: attribute(field, 'ucd'),
     })),
