@@ -41,7 +41,9 @@ export async function appendUpload(
     clearInterval(alive);
     await endWriting(id, writer);
   }
-  return describeUpload((await findUpload(id))!);
+  const stands = await findUpload(id);
+  if (!stands) throw new Refusal('not-found', 'This upload was given up meanwhile.', 'Open one with POST.');
+  return describeUpload(stands);
 }
 
 async function explain(id: string, offset: number): Promise<Refusal> {
