@@ -25,7 +25,7 @@ export function drawSkyLines(
   }
 }
 
-/** Telluric bands as a hatch at the foot, and at the top where `atTop` pixels are given. */
+/** Telluric bands as a hatch at the foot, and at the top where `topHeight` is more than 0. */
 export function drawTelluric(
   context: CanvasRenderingContext2D,
   style: PlotStyle,

@@ -15,7 +15,7 @@ export const listMeasurementsSchema = z.object({
   detail: z.enum(['full', 'table']).default('full'),
 });
 
-/** A page of a night's spectra with their newest measurement, in the order of submission. */
+/** A page of a night's spectra with their current measurement, in the order of submission. */
 export async function listMeasurements(
   actor: Actor | null,
   nightId: string,

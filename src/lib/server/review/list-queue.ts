@@ -10,7 +10,7 @@ import { sightOf } from './sees-verdicts';
 
 type Ruling = Awaited<ReturnType<typeof standingRulings>>[number];
 
-/** The whole queue of a filter, with what was said of it; only `list-queue` and `read-waiting` make what they send from it. */
+/** The whole queue of a filter, with what was said of it; only `list-queue` and `count-waiting` make what is sent from it. */
 export interface GatheredQueue {
   rows: PlacedRow[];
   verdicts: Map<string, LookRow[]>;

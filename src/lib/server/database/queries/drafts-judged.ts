@@ -4,7 +4,7 @@ import { CURRENT_MEASUREMENT } from './night-snapshot';
 import { CURRENT_REDUCTION } from './observed';
 import { NOT_PLANTED } from './planted';
 
-/** A spectrum of a programme with its newest measurement. */
+/** A spectrum of a programme with its current measurement. */
 export interface MeasuredSpectrumRow {
   spectrumId: string;
   targetId: string;

@@ -33,9 +33,9 @@ const NO_ANSWER = {
 };
 
 /**
- * Spectra of a night after an id, in the order of ids, with the newest measurement and the newest verdict, or the
- * ruling that had the last word. For a reader who may judge, it shows only where they gave one of their own: looks are blind. `full` adds all that the engine
- * said: candidates, lines, reasons.
+ * Spectra of a night after an id, in the order of ids, with the current measurement and the newest verdict, or the
+ * ruling that had the last word. For a reader who may judge, it shows only where they gave one of their own: looks are
+ * blind. `full` adds all that the engine said: candidates, lines, reasons.
  */
 export async function nightMeasurementRows(
   nightId: string,

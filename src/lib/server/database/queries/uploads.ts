@@ -139,7 +139,7 @@ export async function settleAsArchive(
 /** Archives of a night, latest first. */
 export async function archivesOfNight(nightId: string): Promise<NightSnapshot['archives']> {
   const rows = await database().query<UploadRow>(
-    `SELECT ${COLUMNS} FROM uploads WHERE night_id = :nightId AND archive_kind IS NOT NULL 
+    `SELECT ${COLUMNS} FROM uploads WHERE night_id = :nightId AND archive_kind IS NOT NULL
       ORDER BY state = 'unpacking' DESC, id DESC LIMIT 20`,
     { replacements: { nightId }, ...select },
   );
