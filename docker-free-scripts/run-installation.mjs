@@ -47,7 +47,7 @@ function lock(dataDir) {
 }
 
 /**
- * A worker's engine threads keep every core busy: helpers of the garbage collector would only wait for one another there,
+ * A worker's engine threads keep every core busy: the garbage collector's own threads would only wait for one another there,
  * and took as much processor time as the fits did.
  */
 const WORKER_FLAGS = ['--single-threaded-gc'];
