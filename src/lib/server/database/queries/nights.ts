@@ -59,6 +59,7 @@ export async function touchNights(nightIds: string[], transaction: Transaction):
 export async function holdNight(nightId: string, transaction: Transaction): Promise<void> {
   await database().query('SELECT id FROM nights WHERE id = :nightId FOR UPDATE', {
     replacements: { nightId },
+    type: QueryTypes.SELECT,
     transaction,
   });
 }
