@@ -27,6 +27,12 @@ const figures = (page: Page) =>
     .locator('[data-rung]')
     .evaluateAll((rungs) => rungs.map((rung) => Number(/S\/N ([\d.]+)/.exec(rung.getAttribute('aria-label')!)?.[1])));
 
+/** A key pressed before the dialog is gone belongs to the dialog. */
+async function closeDialog(page: Page): Promise<void> {
+  await page.keyboard.press('Escape');
+  await expect(page.locator('dialog[open]')).toHaveCount(0);
+}
+
 async function noViolations(page: Page, what: string): Promise<void> {
   const { violations } = await new AxeBuilder({ page }).analyze();
   expect(
@@ -81,7 +87,7 @@ test('masks by brush and by numbers are fitted around, undone, stored with the v
     await dialog.getByLabel('because of').selectOption('cosmic ray');
     await dialog.getByRole('button', { name: 'Mask it' }).click();
     await expect(dialog.getByRole('row', { name: rowOf(masked) })).toBeVisible();
-    await page.keyboard.press('Escape');
+    await closeDialog(page);
   });
 
   await test.step('a second redshift is kept while the first is settled', async () => {
@@ -104,7 +110,7 @@ test('masks by brush and by numbers are fitted around, undone, stored with the v
     await expect(page.getByText(/^Your verdict: .*probable and/)).toBeVisible();
     await page.keyboard.press('k');
     await expect(page.getByRole('row', { name: rowOf(masked) })).toBeVisible();
-    await page.keyboard.press('Escape');
+    await closeDialog(page);
     await page.keyboard.press('u');
     await expect(page.getByText(/^Your verdict/)).toHaveCount(0);
   });
@@ -139,8 +145,7 @@ test('scales, residuals, frame and smoothing follow keys and fields, without an 
       await page.keyboard.press(key);
       await expect(page.locator('dialog[open]')).toBeVisible();
       await noViolations(page, `dialog of ${key} in ${theme}`);
-      await page.keyboard.press('Escape');
-      await expect(page.locator('dialog[open]')).toHaveCount(0);
+      await closeDialog(page);
     }
   }
 });
