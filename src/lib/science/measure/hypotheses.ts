@@ -49,6 +49,8 @@ const IDENTITIES = [
 ];
 /** Quasar redshifts that get a joint fit. */
 const QUASARS_FITTED = 4;
+/** Log evidence of the whole spectrum that a quasar must have for its costly fit to be worth while. */
+const LEAST_QUASAR_EVIDENCE = 8;
 /** Levenberg-Marquardt steps for every suspect, and then for the best. */
 const FIRST_STEPS = 2;
 const MORE_STEPS = 3;
@@ -202,10 +204,12 @@ function suspectsOf(
     logNoiseFlux,
     settings.candidatesFitted + 2,
   );
-  const broad = asQuasar ? quasarSuspects(bands, bumps, asQuasar, range, QUASARS_FITTED) : [];
+  const broad = (asQuasar ? quasarSuspects(bands, bumps, asQuasar, range, QUASARS_FITTED) : []).filter(
+    (suspect) => suspect.score > LEAST_QUASAR_EVIDENCE,
+  );
   const suspects = [...narrow, ...broad];
   // A quasar's narrow lines may give its redshift away before its broad ones do, and the other way round.
-  for (const suspect of asQuasar ? narrow.slice(0, 2) : []) {
+  for (const suspect of broad.length > 0 ? narrow.slice(0, 2) : []) {
     if (suspect.kind === 'narrow') suspects.push({ ...suspect, kind: 'broad', sigmaKms: 1800 });
   }
   // The strongest feature as Lyman-alpha is always heard.

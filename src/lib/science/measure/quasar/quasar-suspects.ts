@@ -16,7 +16,7 @@ const IDENTITIES = [
   'H-alpha 6565',
 ];
 const FEATURES = 4;
-const LEAST_SIGNIFICANCE = 4;
+const LEAST_SIGNIFICANCE = 4.5;
 const SCAN_PEAKS = 14;
 /** Velocity sigmas tried, km/s, and distances from where the filters see a redshift, in ln(1+z). */
 const SIGMAS_KMS = [1000, 1800, 3200];
