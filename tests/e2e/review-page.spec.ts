@@ -31,6 +31,7 @@ const figures = (page: Page) =>
 async function closeDialog(page: Page): Promise<void> {
   await page.keyboard.press('Escape');
   await expect(page.locator('dialog[open]')).toHaveCount(0);
+  await expect(page.locator('dialog :focus')).toHaveCount(0);
 }
 
 async function noViolations(page: Page, what: string): Promise<void> {
@@ -111,7 +112,7 @@ test('masks by brush and by numbers are fitted around, undone, stored with the v
     await page.keyboard.press('k');
     await expect(page.getByRole('row', { name: rowOf(masked) })).toBeVisible();
     await closeDialog(page);
-    await page.keyboard.press('u');
+    await page.locator('button[form="undo-verdict"]').click();
     await expect(page.getByText(/^Your verdict/)).toHaveCount(0);
   });
 });
