@@ -150,9 +150,11 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     .filter((peak) => Math.abs(peak.logScale) > starLimit)
     .map((peak) => beside(absorptionAt(peak.logScale, false)))
     .sort((a, b) => b.logEvidence - a.logEvidence);
+  // A cool star's bands, where the whole spectrum shows them, are the same wherever its lines stand.
+  const coolStar = asQuasar ? besideQuasars(asQuasar.coolStar()) : -Infinity;
   const stars = [0, ...peaks.map((peak) => peak.logScale).filter((log) => Math.abs(log) <= starLimit)]
     .map((logScale) => beside(absorptionAt(logScale, true)))
-    .map((star) => withBands(star, asQuasar, besideQuasars))
+    .map((star) => (coolStar > star.logEvidence ? { ...star, family: 'cool star', logEvidence: coolStar } : star))
     .sort((a, b) => b.logEvidence - a.logEvidence);
   return {
     context,
@@ -164,16 +166,6 @@ export function weighHypotheses(prepared: PreparedSpectrum, settings: MeasureSet
     relativeResolution,
     asQuasar,
   };
-}
-
-/** A star with the bands of a cool one, where the whole spectrum shows them. */
-function withBands(
-  star: AbsorptionCandidate,
-  asQuasar: QuasarLikelihood | null,
-  besideQuasars: (logEvidence: number) => number,
-): AbsorptionCandidate {
-  const bands = asQuasar ? besideQuasars(asQuasar.coolStar()) : -Infinity;
-  return bands > star.logEvidence ? { ...star, family: 'cool star', logEvidence: bands } : star;
 }
 
 function typicalLogNoise(bank: FilterBank): number {
